@@ -1,0 +1,91 @@
+package render
+
+import (
+	"strings"
+
+	"cavitywright/render/letter"
+	"cavitywright/sim/figure"
+)
+
+// Draw draws a figure into a box of the canvas, on paper. It is the one switch
+// over the kinds of figure.
+func Draw(c Canvas, f figure.Figure, box Box, look Look) {
+	c.Fill(box.Path(), look.Paper)
+	switch f := f.(type) {
+	case figure.Dots:
+		p := LayoutDots(f, box, look)
+		drawFrame(c, f, p, look)
+		DrawDots(c, f, p, look)
+		DrawMarks(c, f, p, look)
+	case figure.Paths:
+		drawPaths(c, f, box, look)
+	case figure.Series:
+		drawSeries(c, f, LayoutSeries(f, box, look), look)
+	case figure.Scalars:
+		drawScalars(c, f, box, look)
+	default:
+		panic("render: a figure of an unknown kind")
+	}
+}
+
+// Height is the height, in canvas units, at which a figure of the given width
+// looks its best: what an export uses where nobody asked for another.
+func Height(f figure.Figure, width float64, look Look) float64 {
+	switch f := f.(type) {
+	case figure.Dots:
+		return 0.62*width + captionHeight(f.Caption, width, look)
+	case figure.Series:
+		return 0.62*width + captionHeight(f.Caption, width, look)
+	case figure.Paths:
+		e := Bounds(f)
+		edge := 2 * (look.Margin + look.Wall)
+		aspect := min((e.Y1-e.Y0)/(e.X1-e.X0), 1.4)
+		if !finite(aspect) {
+			aspect = 1
+		}
+		free := NewBox(0, 0, width, 0)
+		_, _, used := pathsRoom(f, free, look)
+		return (width-edge)*aspect + edge + used
+	case figure.Scalars:
+		return scalarsHeight(f, width, look)
+	}
+	panic("render: a figure of an unknown kind")
+}
+
+// captionHeight is the height of a wrapped caption with the gap above it.
+func captionHeight(caption []string, width float64, look Look) float64 {
+	n := len(wrap(caption, width-2*look.Margin, look.Small))
+	if n == 0 {
+		return 0
+	}
+	return (captionGap + float64(n)*lineHeight) * look.Small
+}
+
+// drawCaption sets lines of small type, the last one's descenders on bottom.
+func drawCaption(c Canvas, lines []string, left, bottom float64, look Look) {
+	for i, line := range lines {
+		up := float64(len(lines)-1-i)*lineHeight + letter.Descent
+		c.Text(Text{At: Point{left, bottom - up*look.Small}, Size: look.Small, String: line, Color: look.Ink})
+	}
+}
+
+// wrap breaks lines at spaces so that none is wider than width at the type
+// size; a single word that is wider stays whole.
+func wrap(lines []string, width, size float64) []string {
+	var out []string
+	for _, line := range lines {
+		row := ""
+		for _, word := range strings.Fields(line) {
+			longer := strings.TrimSpace(row + " " + word)
+			if row != "" && size*letter.Width(longer, letter.Regular) > width {
+				out = append(out, row)
+				longer = word
+			}
+			row = longer
+		}
+		if row != "" {
+			out = append(out, row)
+		}
+	}
+	return out
+}

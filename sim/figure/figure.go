@@ -1,0 +1,140 @@
+// Package figure holds what a measurement may yield: plain values that render
+// can draw and export can write. It knows no colour, no pixel and no file; it
+// says what is shown, with axes, units and the places that carry a name.
+//
+// Every Figure is complete in itself: whoever has it needs no table to draw it.
+package figure
+
+// Figure is one of Dots, Paths, Series or Scalars. The set is closed: render
+// switches over it once.
+type Figure interface{ isFigure() }
+
+// Axis is one axis of a plot. Lo and Hi are the ends shown, in Unit; Lo > Hi
+// draws the axis reversed. Marks are named places on it, the joints of a wall
+// for example. An axis with Log set has decades as ticks; Lo and Hi are then
+// the values, not their logarithms.
+type Axis struct {
+	Label  string // the symbol or name, "s" or "p = sin χ"
+	Unit   string // "" where the quantity is a pure number
+	Lo, Hi float64
+	Marks  []Mark
+	Scale  Scale
+}
+
+// Scale says how values are laid along an axis.
+type Scale uint8
+
+// The scales of an axis.
+const (
+	Linear Scale = iota
+	Log
+)
+
+// Mark is a named place on an axis. Kind says what stands there.
+type Mark struct {
+	At   float64
+	Kind MarkKind
+	Name string // "" for a tick without a word
+}
+
+// MarkKind tells the marks of an axis apart.
+type MarkKind uint8
+
+// The kinds of mark.
+const (
+	Joint     MarkKind = iota // two sides of the wall meet here
+	LoopStart                 // a loop of the wall begins here
+	Critical                  // p = ±1/n
+)
+
+// Dots is a scatter of points in sets, each set one orbit: the Birkhoff
+// portrait. Where Strip is set the X axis is arclength and wears the colour
+// scale of the wall below it: a colour for the fraction (x - StripLo) /
+// (StripHi - StripLo).
+type Dots struct {
+	X, Y             Axis
+	Sets             []DotSet
+	Strip            bool
+	StripLo, StripHi float64
+	Caption          []string // one line each: what was computed, with units
+}
+
+// DotSet is one orbit's points, X and Y of equal length, in axis units. Hue is
+// the index of the orbit's colour in the orbit palette; a negative Hue is the
+// sea (ink).
+type DotSet struct {
+	Name string
+	Hue  int
+	X, Y []float64
+}
+
+// Paths is a drawing in the plane at equal scale on both axes: a table with
+// its rays.
+type Paths struct {
+	Unit    string // unit of length of all points
+	Lines   []Line
+	Caption []string
+}
+
+// Line is one polyline of a drawing. At gives, for a wall, the fraction s/L in
+// [0, 1] at each point, so that the wall can wear its colour; for all else it
+// is nil.
+type Line struct {
+	Role   Role
+	Hue    int
+	Closed bool
+	X, Y   []float64
+	At     []float64
+}
+
+// Role says what a line of a drawing is.
+type Role uint8
+
+// The roles of a line.
+const (
+	Wall      Role = iota // the table's wall, painted by s
+	Ray                   // an orbit
+	Ball                  // a single point: where an orbit stands
+	Construct             // construction, drawn faint and dashed
+	JointMark             // a short stroke across the wall at a joint
+	Floor                 // closed outline filled as the inside of the table (even-odd over all Floor lines)
+)
+
+// Series is one or more curves over a common X axis with optional error band
+// (Err nil where there is none; one standard error).
+type Series struct {
+	X, Y    Axis
+	Curves  []Curve
+	Caption []string
+}
+
+// Curve is one curve of a Series: X, Y and, where estimated, Err of equal
+// length.
+type Curve struct {
+	Name      string
+	Hue       int
+	X, Y, Err []float64
+}
+
+// Scalars is a list of readings.
+type Scalars struct {
+	Rows []Scalar
+}
+
+// Scalar is one reading: a value with its unit, its standard error (0 where it
+// is exact), the number of bounces it was measured on (0 where none), the seed
+// and what has to be said about it.
+type Scalar struct {
+	Name    string  `json:"name"`
+	Value   float64 `json:"value"`
+	StdErr  float64 `json:"stderr"`
+	Unit    string  `json:"unit"`
+	Bounces int64   `json:"bounces"`
+	Seed    uint64  `json:"seed"`
+	Note    string  `json:"note"`
+}
+
+func (Dots) isFigure()    {}
+func (Paths) isFigure()   {}
+func (Series) isFigure()  {}
+func (Scalars) isFigure() {}

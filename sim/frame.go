@@ -1,0 +1,61 @@
+package sim
+
+import (
+	"math"
+
+	"cavitywright/table/curve"
+	"cavitywright/table/plane"
+
+	"gonum.org/v1/gonum/spatial/r2"
+)
+
+// frame is the wall at a hit, with the arclength from the span's start and the
+// span's parameter there.
+func (s *span) frame(h *hit) (f curve.Frame, x, t float64) {
+	switch s.kind {
+	case curve.Segment:
+		return curve.Frame{Point: h.at, Tangent: s.tanA}, h.t, h.t
+	case curve.Circle:
+		n := r2.Scale(s.sense/s.radius, r2.Sub(h.at, s.centre))
+		t = s.param(h.at, h.t)
+		return curve.Frame{Point: h.at, Tangent: plane.Left(n), Curvature: s.kappa}, s.clip(math.Abs(t-s.t0) * s.radius), t
+	case curve.Oval:
+		t = s.param(h.at, h.t)
+		f = s.src.FrameAt(t)
+		f.Point = h.at
+		return f, s.clip(s.src.S(t)), t
+	}
+	return s.src.FrameAt(h.t), s.clip(s.src.S(h.t)), h.t
+}
+
+// clip holds an arclength to the span, from which rounding may have moved it.
+func (s *span) clip(x float64) float64 { return min(max(x, 0), s.length) }
+
+// param is the span's private parameter at a point of it; t where that is
+// known. For arcs it is the angle, brought into the span's own turn.
+func (s *span) param(at r2.Vec, t float64) float64 {
+	switch s.kind {
+	case curve.Circle:
+		q := r2.Sub(at, s.centre)
+		t = math.Atan2(plane.Cross(s.axis, q), plane.Dot(q, s.axis))
+	case curve.Oval:
+	default:
+		return t
+	}
+	// Into [lo, lo + 2 pi), nearest to the span where it lies outside by
+	// rounding.
+	lo, width := s.t0, s.t1-s.t0
+	if width < 0 {
+		lo, width = s.t1, -width
+	}
+	x := math.Mod(t-lo, 2*math.Pi)
+	if x < 0 {
+		x += 2 * math.Pi
+	}
+	if x > width && x-width > 2*math.Pi-x {
+		x = 0
+	} else if x > width {
+		x = width
+	}
+	return lo + x
+}

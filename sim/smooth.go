@@ -1,0 +1,142 @@
+package sim
+
+import (
+	"math"
+
+	"cavitywright/table/plane"
+
+	"gonum.org/v1/gonum/spatial/r2"
+)
+
+// distance is the signed distance of the wall from the ray's line at the
+// parameter t of the span, with its derivative by t.
+func (s *span) distance(t float64, r *ray) (f, slope float64) {
+	c, d1, _ := s.src.Jet(t)
+	f = float64(r.d.X*(c.Y-r.p.Y)) - float64(r.d.Y*(c.X-r.p.X))
+	return f, float64(r.d.X*d1.Y) - float64(r.d.Y*d1.X)
+}
+
+// slope is the derivative of distance by t, with its own derivative.
+func (s *span) slope(t float64, r *ray) (g, bend float64) {
+	_, d1, d2 := s.src.Jet(t)
+	return float64(r.d.X*d1.Y) - float64(r.d.Y*d1.X), float64(r.d.X*d2.Y) - float64(r.d.Y*d2.X)
+}
+
+// crossing is the zero of distance between lo and hi, where it has the signs
+// loLeft and its opposite (true: positive): Newton's method held to the
+// bracket, from the guess t.
+func (s *span) crossing(lo, hi, t float64, loLeft bool, r *ray) float64 {
+	for range newtonSteps {
+		f, slope := s.distance(t, r)
+		if (f >= 0) == loLeft {
+			lo = t
+		} else {
+			hi = t
+		}
+		next := t - f/slope
+		if !between(next, lo, hi) {
+			next = 0.5 * (lo + hi)
+		}
+		if math.Abs(next-t) <= lastBit*math.Abs(hi-lo)+lastBit*math.Abs(t) {
+			return next
+		}
+		t = next
+	}
+	return t
+}
+
+// extremum is the zero of slope between lo and hi, where it has different
+// signs, with the sign loLeft at lo.
+func (s *span) extremum(lo, hi float64, loLeft bool, r *ray) float64 {
+	t := 0.5 * (lo + hi)
+	for range newtonSteps {
+		g, bend := s.slope(t, r)
+		if (g >= 0) == loLeft {
+			lo = t
+		} else {
+			hi = t
+		}
+		next := t - g/bend
+		if !between(next, lo, hi) {
+			next = 0.5 * (lo + hi)
+		}
+		if math.Abs(next-t) <= lastBit*math.Abs(t) || next == t {
+			return next
+		}
+		t = next
+	}
+	return t
+}
+
+const (
+	// newtonSteps ends an iteration that rounding keeps from settling; halving
+	// alone exhausts a double in 60.
+	newtonSteps = 100
+	lastBit     = 0x1p-52
+)
+
+// between reports whether x lies strictly between lo and hi, in either order.
+func between(x, lo, hi float64) bool { return x > lo && x < hi || x < lo && x > hi }
+
+// meetSmooth: the span lies in the triangle of its ends and its apex. With the
+// ends on different sides of the line it is crossed once. With all three on one
+// side, never. Else the distance has one extremum, and it decides.
+func (tr *Tracer) meetSmooth(k int, s *span, sa, sb bool, r *ray, h *hit) {
+	if sa != sb {
+		fa, _ := r.side(s.a)
+		fb, _ := r.side(s.b)
+		guess := 0.5
+		if fa != fb {
+			guess = math.Min(math.Max(fa/(fa-fb), 0.01), 0.99)
+		}
+		t := s.crossing(s.t0, s.t1, s.t0+guess*(s.t1-s.t0), sa, r)
+		h.take(k, t, s.at(t), r)
+		return
+	}
+	if v, sv := r.side(s.apex); sv == sa && math.Abs(v) > passTol*tr.size {
+		return
+	}
+	ga := plane.Cross(r.d, s.tanA)
+	gb := plane.Cross(r.d, s.tanB)
+	if (ga >= 0) == (gb >= 0) {
+		return
+	}
+	te := s.extremum(s.t0, s.t1, (ga >= 0) == (s.sense > 0), r)
+	f, _ := s.distance(te, r)
+	if math.Abs(f) < passTol*tr.size {
+		h.graze(plane.Dot(r.d, r2.Sub(s.at(te), r.p)))
+		return
+	}
+	if (f >= 0) == sa {
+		return
+	}
+	t := s.crossing(s.t0, te, 0.5*(s.t0+te), sa, r)
+	h.take(k, t, s.at(t), r)
+	t = s.crossing(te, s.t1, 0.5*(s.t1+te), !sa, r)
+	h.take(k, t, s.at(t), r)
+}
+
+// leaveSmooth is the other crossing with the smooth span that the ray leaves:
+// beyond the extremum of the distance, which lies between it and the point
+// left (Rolle), so that the point left is not in the bracket.
+func (tr *Tracer) leaveSmooth(k int, s *span, ahead bool, r *ray, h *hit) {
+	// Along increasing s the distance falls at the point left.
+	end, endLeft := s.t0, false
+	if ahead {
+		end, endLeft = s.t1, true
+	}
+	// slope by t: negative times sense at the point left.
+	te := s.extremum(r.t, end, s.sense < 0, r)
+	guess := 2*te - r.t
+	if !between(guess, te, end) {
+		guess = 0.5 * (te + end)
+	}
+	t := s.crossing(te, end, guess, !endLeft, r)
+	h.take(k, t, s.at(t), r)
+}
+
+// at is the point at the parameter t.
+func (s *span) at(t float64) r2.Vec {
+	p, _, _ := s.src.Jet(t)
+	return p
+}
