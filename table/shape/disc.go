@@ -12,12 +12,10 @@ import (
 var disc = Kind{
 	Name: "disc", Title: "Disc",
 	About:   "Integrable: p is conserved at every bounce.",
-	Formula: "x² + y² = R²",
-	Specs: []param.Spec{
-		{Name: "radius", Unit: param.Length, Lo: 1e-6, Hi: 1e6, Default: 1, Description: "radius R"},
-	},
-	Loops: func(v param.Values) ([]Loop, error) {
-		return ring(curve.NewArc(r2.Vec{}, v[0], 0, fullTurn)), nil
+	Formula: "x² + y² = R²; s starts at the rightmost point",
+	Specs:   []param.Spec{length("radius", 1, "radius R")},
+	Loops: func(v param.Values) []Loop {
+		return ring(curve.NewArc(r2.Vec{}, v[0], 0, fullTurn))
 	},
 	Grips: func(v param.Values) []Handle {
 		return []Handle{{At: r2.Vec{X: v[0]}, Name: "radius", Of: -1}}

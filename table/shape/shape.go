@@ -9,6 +9,7 @@ import (
 
 	"cavitywright/table/curve"
 	"cavitywright/table/param"
+	"cavitywright/table/plane"
 
 	"gonum.org/v1/gonum/spatial/r2"
 )
@@ -60,7 +61,7 @@ type HandleRole uint8
 // The roles of a handle.
 const (
 	Grip    HandleRole = iota // changes a parameter
-	Node                      // a node of a free wall
+	Anchor                    // a node of a free wall
 	Tangent                   // the end of a node's tangent handle
 	Bow                       // the middle of an arc span
 )
@@ -79,12 +80,15 @@ type Kind struct {
 	// Formula says how its wall is given.
 	Name, Title, About, Formula string
 	Specs                       []param.Spec
-	// Loops builds the loops for values within the ranges of Specs.
-	Loops func(v param.Values) ([]Loop, error)
+	// Fits returns a *Fault for values that are each within the range of their
+	// Spec but do not go together; nil where the ranges say all.
+	Fits func(v param.Values) error
+	// Loops builds the loops for values within the ranges that Fits accepts.
+	Loops func(v param.Values) []Loop
 	// Grips are the handles, at most one a parameter.
 	Grips func(v param.Values) []Handle
-	// Pull is the values after grip i was dragged to a place. They are
-	// clamped to their ranges afterwards.
+	// Pull is the values after grip i was dragged to a place; it may write to
+	// v. They are held to their ranges, and to what Fits accepts, afterwards.
 	Pull func(v param.Values, i int, to r2.Vec) param.Values
 }
 
@@ -129,26 +133,54 @@ func (f Figure) With(i int, x float64) (Figure, error) {
 	return f, nil
 }
 
-// Loops are the figure's loops.
-func (f Figure) Loops() ([]Loop, error) { return f.kind.Loops(f.values) }
+// Loops are the figure's loops. The error is a *Fault.
+func (f Figure) Loops() ([]Loop, error) {
+	if f.kind.Fits != nil {
+		if err := f.kind.Fits(f.values); err != nil {
+			return nil, err
+		}
+	}
+	return f.kind.Loops(f.values), nil
+}
 
 // Handles are the figure's grips.
 func (f Figure) Handles() []Handle { return f.kind.Grips(f.values) }
 
-// Moved pulls grip i.
+// Moved pulls grip i. A place that is no number changes nothing.
 func (f Figure) Moved(i int, to r2.Vec) Shape {
-	v := f.kind.Pull(append(param.Values(nil), f.values...), i, to)
-	for k, s := range f.kind.Specs {
-		v[k] = s.Clamp(v[k])
+	if !plane.Finite(to) || to == f.kind.Grips(f.values)[i].At {
+		return f
 	}
-	f.values = v
+	v := f.kind.Pull(append(param.Values(nil), f.values...), i, to)
+	f.values = f.kind.nearest(f.values, f.kind.clamp(v))
 	return f
 }
 
-// ring is the single counter-clockwise loop of the curves.
-func ring(c ...curve.Curve) []Loop { return []Loop{{Side: Outer, Curves: c}} }
+func (k *Kind) clamp(v param.Values) param.Values {
+	for i, s := range k.Specs {
+		v[i] = s.Clamp(v[i])
+	}
+	return v
+}
 
-// post is the clockwise loop of a disc-shaped obstacle.
-func post(centre r2.Vec, radius float64) Loop {
-	return Loop{Side: Obstacle, Curves: []curve.Curve{curve.NewArc(centre, radius, fullTurn, -fullTurn)}}
+// nearest is the last of the values on the way from one set that fits to
+// another that does, or the other where neither does.
+func (k *Kind) nearest(from, to param.Values) param.Values {
+	if k.Fits == nil || k.Fits(to) == nil || k.Fits(from) != nil {
+		return to
+	}
+	last, lo, hi := from, 0.0, 1.0
+	for range 53 { // the bits of the way
+		mid := 0.5 * (lo + hi)
+		v := make(param.Values, len(from))
+		for i := range v {
+			v[i] = from[i]*(1-mid) + to[i]*mid
+		}
+		if k.clamp(v); k.Fits(v) == nil {
+			last, lo = v, mid
+		} else {
+			hi = mid
+		}
+	}
+	return last
 }
