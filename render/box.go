@@ -50,9 +50,10 @@ func (b Box) Path() Path {
 	return p
 }
 
-// Clip gives the part of the straight segment from a to b that lies in the box
-// (Liang and Barsky 1984), and whether there is any. A segment with an end that
-// is not finite has none.
+// Clip gives the part of the straight segment from p to q that lies in the box,
+// and whether there is any; it cuts at one side of the box after the other, as
+// Cohen and Sutherland did, so that an end that is cut off lies exactly on a
+// side. A segment with an end that is not finite has no part.
 func (b Box) Clip(p, q Point) (Point, Point, bool) {
 	if !p.finite() || !q.finite() {
 		return p, q, false
@@ -60,40 +61,53 @@ func (b Box) Clip(p, q Point) (Point, Point, bool) {
 	if b.Contains(p) && b.Contains(q) {
 		return p, q, true
 	}
+	for side := range sides {
+		dp, dq := b.depth(side, p), b.depth(side, q)
+		switch {
+		case dp < 0 && dq < 0:
+			return p, q, false
+		case dp < 0:
+			p = b.crossing(side, p, q)
+		case dq < 0:
+			q = b.crossing(side, p, q)
+		}
+	}
+	return p, q, true
+}
+
+// sides is the number of sides of a box: 0 left, 1 right, 2 top, 3 bottom.
+const sides = 4
+
+// depth is how far inside one side of the box a point lies, negative outside.
+func (b Box) depth(side int, p Point) float64 {
+	switch side {
+	case 0:
+		return p.X - b.Min.X
+	case 1:
+		return b.Max.X - p.X
+	case 2:
+		return p.Y - b.Min.Y
+	}
+	return b.Max.Y - p.Y
+}
+
+// crossing is where the segment from p to q, one of them outside, crosses the
+// line of one side of the box.
+func (b Box) crossing(side int, p, q Point) Point {
 	// Halved before they are subtracted: the difference of two finite
 	// coordinates may overflow, that of their halves cannot.
-	dx, dy := q.X/2-p.X/2, q.Y/2-p.Y/2
-	t0, t1 := 0.0, 2.0
-	ok := cut(-dx, p.X-b.Min.X, &t0, &t1) && cut(dx, b.Max.X-p.X, &t0, &t1) &&
-		cut(-dy, p.Y-b.Min.Y, &t0, &t1) && cut(dy, b.Max.Y-p.Y, &t0, &t1)
-	if !ok {
-		return p, q, false
-	}
-	from, to := p, q
-	if t0 > 0 {
-		from = b.clamped(Point{p.X + t0*dx, p.Y + t0*dy})
-	}
-	if t1 < 2 {
-		to = b.clamped(Point{p.X + t1*dx, p.Y + t1*dy})
-	}
-	return from, to, true
-}
-
-// cut narrows the range [t0, t1] to where t*d <= room, and says whether
-// anything of it is left.
-func cut(d, room float64, t0, t1 *float64) bool {
-	switch {
-	case d == 0:
-		return room >= 0
-	case d < 0:
-		*t0 = max(*t0, room/d)
+	dp, dq := b.depth(side, p)/2, b.depth(side, q)/2
+	t := dp / (dp - dq)
+	m := Point{p.X + 2*t*(q.X/2-p.X/2), p.Y + 2*t*(q.Y/2-p.Y/2)}
+	switch side {
+	case 0:
+		m.X = b.Min.X
+	case 1:
+		m.X = b.Max.X
+	case 2:
+		m.Y = b.Min.Y
 	default:
-		*t1 = min(*t1, room/d)
+		m.Y = b.Max.Y
 	}
-	return *t0 <= *t1
-}
-
-// clamped puts a computed point of the edge onto it.
-func (b Box) clamped(p Point) Point {
-	return Point{min(max(p.X, b.Min.X), b.Max.X), min(max(p.Y, b.Min.Y), b.Max.Y)}
+	return m
 }

@@ -48,7 +48,7 @@ func ClipFill(p Path, box Box, tol float64) Path {
 			return
 		}
 		poly = append(poly[:0], points...)
-		for side := range 4 {
+		for side := range sides {
 			next = cutSide(next[:0], poly, box, side)
 			poly, next = next, poly
 		}
@@ -60,18 +60,13 @@ func ClipFill(p Path, box Box, tol float64) Path {
 }
 
 // cutSide appends to out the part of the polygon on the inner side of one side
-// of the box: 0 left, 1 right, 2 top, 3 bottom.
+// of the box.
 func cutSide(out, poly []Point, box Box, side int) []Point {
-	depth := func(p Point) float64 {
-		return [...]float64{p.X - box.Min.X, box.Max.X - p.X, p.Y - box.Min.Y, box.Max.Y - p.Y}[side]
-	}
 	for i, b := range poly {
 		a := poly[(i+len(poly)-1)%len(poly)]
-		da, db := depth(a), depth(b)
+		da, db := box.depth(side, a), box.depth(side, b)
 		if (da < 0) != (db < 0) {
-			// Halves, as in Box.Clip: the whole may overflow.
-			t := (da / 2) / (da/2 - db/2)
-			out = append(out, Point{a.X + 2*t*(b.X/2-a.X/2), a.Y + 2*t*(b.Y/2-a.Y/2)})
+			out = append(out, box.crossing(side, a, b))
 		}
 		if db >= 0 {
 			out = append(out, b)

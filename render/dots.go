@@ -224,8 +224,12 @@ func (p Plot) numbersTop(look Look) float64 {
 // drawTitles sets the axis labels, each centred on its axis.
 func drawTitles(c Canvas, p Plot, look Look) {
 	mid := p.Frame.Center()
-	c.Text(Text{At: Point{mid.X, p.numbersTop(look) + (letter.CapHeight+titleGap)*look.Small},
-		Size: look.Text, String: p.xTitle, H: Center, V: Top, Color: look.Ink})
-	c.Text(Text{At: Point{p.Box.Min.X + look.Margin + letter.Ascent*look.Text - letter.Descent*look.Text, mid.Y},
-		Size: look.Text, String: p.yTitle, H: Center, Turn: Upward, Color: look.Ink})
+	if p.xTitle != "" {
+		y := p.numbersTop(look) + (letter.CapHeight+titleGap)*look.Small
+		c.Text(Text{At: Point{mid.X, y}, Size: look.Text, String: p.xTitle, H: Center, V: Top, Color: look.Ink})
+	}
+	if p.yTitle != "" {
+		x := p.Box.Min.X + look.Margin + (letter.Ascent-letter.Descent)*look.Text
+		c.Text(Text{At: Point{x, mid.Y}, Size: look.Text, String: p.yTitle, H: Center, Turn: Upward, Color: look.Ink})
+	}
 }

@@ -2,6 +2,7 @@ package render
 
 import (
 	"strings"
+	"unicode/utf8"
 
 	"cavitywright/render/letter"
 	"cavitywright/sim/figure"
@@ -70,12 +71,13 @@ func drawCaption(c Canvas, lines []string, left, bottom float64, look Look) {
 }
 
 // wrap breaks lines at spaces so that none is wider than width at the type
-// size; a single word that is wider stays whole.
+// size; a single word that is wider stays whole. A number keeps the short word
+// after it, its unit or its next three digits, on the same line.
 func wrap(lines []string, width, size float64) []string {
 	var out []string
 	for _, line := range lines {
 		row := ""
-		for _, word := range strings.Fields(line) {
+		for _, word := range unbroken(strings.Fields(line)) {
 			longer := strings.TrimSpace(row + " " + word)
 			if row != "" && size*letter.Width(longer, letter.Regular) > width {
 				out = append(out, row)
@@ -89,3 +91,22 @@ func wrap(lines []string, width, size float64) []string {
 	}
 	return out
 }
+
+// longestUnit is the length, in letters, of a word that is taken for a unit.
+const longestUnit = 4
+
+// unbroken joins the words that must not be parted.
+func unbroken(words []string) []string {
+	var out []string
+	for _, word := range words {
+		n := len(out)
+		if n > 0 && endsInDigit(out[n-1]) && utf8.RuneCountInString(word) <= longestUnit {
+			out[n-1] += " " + word
+			continue
+		}
+		out = append(out, word)
+	}
+	return out
+}
+
+func endsInDigit(s string) bool { return s[len(s)-1] >= '0' && s[len(s)-1] <= '9' }

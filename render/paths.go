@@ -84,7 +84,7 @@ func drawLine(c Canvas, l figure.Line, v View, look Look) {
 }
 
 // ballRadius is the radius of a ball in widths of a ray.
-const ballRadius = 2.6
+const ballRadius = 3
 
 // drawBall draws the place of an orbit, with an edge of floor around it that
 // parts it from its own ray.
@@ -118,8 +118,7 @@ func appendLine(p *Path, l figure.Line, v View) {
 // DrawScaleBar draws a bar of round length with its number and unit at the
 // left of a box, and to the right of it nothing.
 func DrawScaleBar(c Canvas, unit string, v View, box Box, look Look) {
-	most := box.W() / 4
-	s := stepAtLeast(most / v.Scale / 2.5000001)
+	s := stepAtMost(box.W() / 4 / v.Scale)
 	length := s.times(1) * v.Scale
 	if !finite(length) || length <= 0 || length > box.W() {
 		return
@@ -151,13 +150,14 @@ type wallPoint struct {
 	at float64
 }
 
-// wallPoints is a wall on the canvas without repeated points, its places
-// rising even across the start of the loop.
+// wallPoints is a wall on the canvas without repeated points and without those
+// that have no place in [0, 1]; its places rise even across the start of the
+// loop, beyond 1.
 func wallPoints(l figure.Line, v View) []wallPoint {
 	n := min(len(l.X), len(l.Y), len(l.At))
 	pts := make([]wallPoint, 0, n+1)
 	put := func(q Point, at float64) {
-		if !q.finite() || !finite(at) {
+		if !q.finite() || !(at >= 0 && at <= 2) {
 			return
 		}
 		if k := len(pts); k > 0 {
@@ -180,7 +180,7 @@ func wallPoints(l figure.Line, v View) []wallPoint {
 		a, b := pts[len(pts)-2], pts[len(pts)-1]
 		pace := (b.at - a.at) / math.Hypot(b.X-a.X, b.Y-a.Y)
 		first := pts[0]
-		put(first.Point, b.at+pace*math.Hypot(first.X-b.X, first.Y-b.Y))
+		put(first.Point, b.at+min(pace*math.Hypot(first.X-b.X, first.Y-b.Y), 1))
 	}
 	return pts
 }

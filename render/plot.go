@@ -184,7 +184,8 @@ func layoutAt(d detail, x, y figure.Axis, strip bool, caption []string, box Box,
 	p.Frame = frame
 	p.y = newRule(y, frame.Max.Y, frame.Min.Y)
 	if strip {
-		p.Strip = NewBox(frame.Min.X, look.floor(frame.Max.Y+look.Tick), frame.W(), look.ceil(look.Strip))
+		top := look.floor(frame.Max.Y + look.Tick)
+		p.Strip = Box{Point{frame.Min.X, top}, Point{frame.Max.X, top + look.ceil(look.Strip)}}
 	}
 	p.xTitle, p.yTitle = title(x, p.X.Exp), title(y, p.Y.Exp)
 	return p

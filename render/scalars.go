@@ -2,6 +2,7 @@ package render
 
 import (
 	"strconv"
+	"strings"
 
 	"cavitywright/render/letter"
 	"cavitywright/sim/figure"
@@ -9,15 +10,15 @@ import (
 
 // scalarRow is one reading as it is written in the table.
 type scalarRow struct {
-	name, value, err, unit string
-	note                   []string
+	name, value, err string // err with the unit
+	note             []string
 }
 
 // columns is the left edges of a table of readings, in canvas units from the
 // left; values end at value.
 type columns struct {
-	value, err, unit, note, right float64
-	noteBelow                     bool
+	value, err, note, right float64
+	noteBelow               bool
 }
 
 // rowGap is the height from one reading to the next, beyond its lines, in
@@ -34,26 +35,25 @@ const leastNote = 14
 // scalarRows writes the readings and finds the columns they need.
 func scalarRows(f figure.Scalars, width float64, look Look) ([]scalarRow, columns) {
 	rows := make([]scalarRow, len(f.Rows))
-	var name, value, err, unit float64
+	var name, value, err float64
 	size := look.Small
 	for i, s := range f.Rows {
 		w := Written(s)
-		r := scalarRow{name: s.Name, value: w.Value, unit: s.Unit}
+		r := scalarRow{name: s.Name, value: w.Value}
 		if w.Error != "" {
 			r.err = "± " + w.Error
 		}
+		r.err = strings.TrimSpace(r.err + " " + s.Unit)
 		rows[i] = r
 		name = max(name, size*letter.Width(r.name, letter.Bold))
 		value = max(value, size*letter.Width(r.value, letter.Regular))
 		err = max(err, size*letter.Width(r.err, letter.Regular))
-		unit = max(unit, size*letter.Width(r.unit, letter.Regular))
 	}
 	var c columns
 	c.right = width - look.Margin
 	c.value = look.Margin + name + cellGap*size + value
 	c.err = c.value + 0.3*size
-	c.unit = c.err + err + 0.4*size
-	c.note = c.unit + unit + cellGap*size
+	c.note = c.err + err + cellGap*size
 	if c.right-c.note < leastNote*size {
 		c.note, c.noteBelow = look.Margin+cellGap*size, true
 	}
@@ -103,7 +103,7 @@ func scalarsHeight(f figure.Scalars, width float64, look Look) float64 {
 }
 
 // drawScalars draws readings as a plain table between two lines: name, value
-// and error, unit, and what has to be said about it. Rows that the box has no
+// and error with their unit, and what has to be said about it. Rows that the box has no
 // room for are left out, and their number is said.
 func drawScalars(c Canvas, f figure.Scalars, box Box, look Look) {
 	rows, col := scalarRows(f, box.W(), look)
@@ -143,7 +143,6 @@ func drawScalar(c Canvas, r scalarRow, col columns, from Point, look Look) {
 	set(look.Margin, 0, r.name, Left, letter.Bold)
 	set(col.value, 0, r.value, Right, letter.Regular)
 	set(col.err, 0, r.err, Left, letter.Regular)
-	set(col.unit, 0, r.unit, Left, letter.Regular)
 	first := 0.0
 	if col.noteBelow {
 		first = 1

@@ -71,15 +71,26 @@ func stepAtLeast(raw float64) step {
 	return step{1, exp + 1}
 }
 
+// stepAtMost is the largest step that is not above raw.
+func stepAtMost(raw float64) step {
+	exp := int(math.Floor(math.Log10(raw)))
+	for _, mant := range [...]int64{5, 2, 1} {
+		if s := (step{mant, exp}); s.times(1) <= raw*(1+slack) {
+			return s
+		}
+	}
+	return step{5, exp - 1}
+}
+
 func linearTicks(lo, hi float64, most int) Ladder {
 	s := stepAtLeast((hi - lo) / float64(most))
 	size := s.times(1)
 	first, last := math.Ceil(lo/size-slack), math.Floor(hi/size+slack)
-	if size == 0 || !(math.Abs(first) < maxTickIndex) || !(math.Abs(last) < maxTickIndex) {
+	farthest := max(math.Abs(first), math.Abs(last), 1)
+	if size == 0 || !(farthest < maxTickIndex) || !finite(farthest*size) {
 		return Ladder{}
 	}
-	var l Ladder
-	l.Exp = sharedExp(max(math.Abs(first*size), math.Abs(last*size)))
+	l := Ladder{Exp: sharedExp(farthest * size)}
 	for k := int64(first); k <= int64(last); k++ {
 		l.Major = append(l.Major, Tick{s.times(k), decimal(k*s.mant, s.exp-l.Exp)})
 	}

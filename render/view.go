@@ -65,8 +65,8 @@ func Fit(e Extent, box Box, look Look) View {
 	return View{box, scale, Point{c.X - scale*(e.X0+e.X1)/2, c.Y + scale*(e.Y0+e.Y1)/2}}
 }
 
-// Bounds is the extent of a drawing: of its walls and floor where it has any,
-// since a ray may leave them for good; else of all its lines. A drawing of
+// Bounds is the extent of a drawing: of its walls, floor and joint marks where
+// it has any, since a ray may leave them for good; else of all its lines. A drawing of
 // nothing has a unit square about the origin.
 func Bounds(f figure.Paths) Extent {
 	e := Extent{math.Inf(1), math.Inf(1), math.Inf(-1), math.Inf(-1)}
@@ -82,7 +82,7 @@ func Bounds(f figure.Paths) Extent {
 			}
 		}
 	}
-	grow(func(r figure.Role) bool { return r == figure.Wall || r == figure.Floor })
+	grow(func(r figure.Role) bool { return r == figure.Wall || r == figure.Floor || r == figure.JointMark })
 	if e.X0 > e.X1 {
 		grow(func(figure.Role) bool { return true })
 	}

@@ -21,9 +21,7 @@ func (s *span) frame(h *hit) (f curve.Frame, x, t float64) {
 		return curve.Frame{Point: h.at, Tangent: plane.Left(n), Curvature: s.kappa}, s.clip(math.Abs(t-s.t0) * s.radius), t
 	case curve.Oval:
 		t = s.param(h.at, h.t)
-		f = s.src.FrameAt(t)
-		f.Point = h.at
-		return f, s.clip(s.src.S(t)), t
+		return s.ovalFrame(h.at), s.clip(s.src.S(t)), t
 	}
 	return s.src.FrameAt(h.t), s.clip(s.src.S(h.t)), h.t
 }
@@ -58,4 +56,24 @@ func (s *span) param(at r2.Vec, t float64) float64 {
 		x = width
 	}
 	return lo + x
+}
+
+// ovalFrame is the frame at a point of the ellipse, from its coordinates: the
+// angle would add its own rounding.
+func (s *span) ovalFrame(at r2.Vec) curve.Frame {
+	q := r2.Sub(at, s.centre)
+	x, y := plane.Dot(q, s.axis), plane.Cross(s.axis, q)
+	a2, b2 := s.radius*s.radius, s.minor*s.minor
+	// The tangent is (-a^2 y, b^2 x); the curvature 1/(a^2 b^2 h^3) with
+	// h^2 = x^2/a^4 + y^2/b^4.
+	tx, ty := -a2*y*s.sense, b2*x*s.sense
+	n := 1 / math.Sqrt(float64(tx*tx)+float64(ty*ty))
+	tx, ty = tx*n, ty*n
+	gx, gy := x/a2, y/b2
+	h := math.Sqrt(float64(gx*gx) + float64(gy*gy))
+	return curve.Frame{
+		Point:     at,
+		Tangent:   r2.Vec{X: float64(tx*s.axis.X) - float64(ty*s.axis.Y), Y: float64(tx*s.axis.Y) + float64(ty*s.axis.X)},
+		Curvature: s.sense / (a2 * b2 * h * h * h),
+	}
 }

@@ -12,8 +12,6 @@ import (
 	"math"
 
 	"cavitywright/render"
-
-	"golang.org/x/image/vector"
 )
 
 // Canvas is a render.Canvas over a picture. It is for one goroutine. Geometry
@@ -23,12 +21,12 @@ type Canvas struct {
 	img    *image.RGBA
 	bounds render.Box
 
-	raster vector.Rasterizer
-	part   image.Alpha // coverage of one contour
-	cover  image.Alpha // coverage of a whole path
+	cover  coverage
 	line   outline
+	whole  render.Path // a polygon before it is cut
 	faces  map[faceKey]*face
 	stamps map[int]*stamp
+	ready  [phases * phases][]wash // the stamp in use, in the colour in use
 }
 
 // New is a canvas over a picture.
@@ -66,95 +64,38 @@ func (c *Canvas) Clear(col color.RGBA) {
 }
 
 // flatness is the distance, in pixels, within which chords stand for a curve.
-const flatness = 0.1
+const flatness = 0.03
 
-// Fill paints the inside of a path, even-odd over its contours. Each contour
-// is taken by itself with the rule that what it winds around is inside, and
-// the contours are then combined: where it crosses itself, a contour counts as
-// one area.
+// Fill paints the inside of a path, even-odd.
 func (c *Canvas) Fill(p render.Path, col color.RGBA) {
 	if c.img == nil {
 		return
 	}
 	p = render.ClipFill(p, c.bounds, flatness)
-	all := pixelBounds(p.Points, c.img.Rect)
-	if all.Empty() {
+	area := pixelBounds(p.Points, c.img.Rect)
+	if area.Empty() {
 		return
 	}
-	if simple := rectangle(p); simple {
+	if rectangle(p) {
 		c.fillRect(p.Points[0], p.Points[2], col)
 		return
 	}
-	clear(sized(&c.cover, all).Pix)
-	p.Contours(flatness, func(points []render.Point, _ bool) {
-		r := pixelBounds(points, all)
-		if r.Empty() {
-			return
-		}
-		c.begin(r)
-		c.contour(points, r.Min)
-		c.end(&c.part, r)
-		combine(&c.cover, &c.part)
-	})
-	c.paint(&c.cover, col)
+	c.cover.begin(area)
+	p.Contours(flatness, func(points []render.Point, _ bool) { c.cover.add(points) })
+	c.paint(evenOdd, col)
 }
 
-// begin readies the rasteriser for an area of the picture.
-func (c *Canvas) begin(r image.Rectangle) { c.raster.Reset(r.Dx(), r.Dy()) }
-
-// contour adds a closed polygon to the rasteriser.
-func (c *Canvas) contour(points []render.Point, origin image.Point) {
-	dx, dy := float64(origin.X), float64(origin.Y)
-	for i, q := range points {
-		x, y := float32(q.X-dx), float32(q.Y-dy)
-		if i == 0 {
-			c.raster.MoveTo(x, y)
-		} else {
-			c.raster.LineTo(x, y)
-		}
-	}
-	c.raster.ClosePath()
-}
-
-// end writes the coverage of what was added to a mask over the area.
-func (c *Canvas) end(mask *image.Alpha, r image.Rectangle) {
-	sized(mask, r)
-	c.raster.DrawOp = 1 // draw.Src: the mask's old content does not matter
-	c.raster.Draw(mask, r, image.Opaque, image.Point{})
-}
-
-// combine puts the coverage of one more contour over a mask, even-odd: inside
-// is what one of the two covers and the other does not.
-func combine(all, part *image.Alpha) {
-	for y := part.Rect.Min.Y; y < part.Rect.Max.Y; y++ {
-		from := part.Pix[part.PixOffset(part.Rect.Min.X, y):][:part.Rect.Dx()]
-		to := all.Pix[all.PixOffset(part.Rect.Min.X, y):][:len(from)]
-		for i, a := range from {
-			switch b := to[i]; {
-			case a == 0:
-			case b == 0:
-				to[i] = a
-			default:
-				a, b := uint32(a), uint32(b)
-				to[i] = uint8(a + b - (2*a*b+127)/255)
-			}
-		}
-	}
-}
-
-// paint lays a colour over the picture through a mask.
-func (c *Canvas) paint(mask *image.Alpha, col color.RGBA) {
+// paint lays a colour over the picture where the coverage says.
+func (c *Canvas) paint(r rule, col color.RGBA) {
 	src := newSource(col)
-	r := mask.Rect.Intersect(c.img.Rect)
-	for y := r.Min.Y; y < r.Max.Y; y++ {
-		row := mask.Pix[mask.PixOffset(r.Min.X, y):][:r.Dx()]
-		o := c.img.PixOffset(r.Min.X, y)
-		for i, a := range row {
-			if a != 0 {
-				src.over(c.img.Pix[o+4*i:][:4], uint32(a)+uint32(a)>>7)
+	c.cover.finish(r, func(y, x int, cover []uint16) {
+		row := c.img.Pix[c.img.PixOffset(x, y):c.img.PixOffset(0, y+1)]
+		for i, a := range cover {
+			if a != 0 && 4*i < len(row) {
+				src.over(row[4*i:][:4], uint32(a))
 			}
 		}
-	}
+	})
 }
 
 // rectangle says whether a path is one upright rectangle, as Box.Path makes.

@@ -16,65 +16,103 @@ const one = 1 << 16
 // (1991, "An efficient antialiasing technique") does for two pixels, with the
 // true extent. Ends are cut across the axis.
 func (c *Canvas) hairline(p, q render.Point, w float64, src *source) {
-	reach := 2 * w
-	p, q, ok := c.bounds.Inset(-reach-1).Clip(p, q)
-	if !ok {
+	p, q, ok := c.bounds.Inset(-2*w-1).Clip(p, q)
+	if !ok || p == q {
 		return
 	}
 	dx, dy := q.X-p.X, q.Y-p.Y
+	size := c.img.Rect.Size()
 	if math.Abs(dx) >= math.Abs(dy) {
 		if dx < 0 {
 			p, q = q, p
 		}
-		if dx == 0 {
-			return
-		}
-		c.walk(walk{p.X, q.X, p.Y, dy / dx, w, 4, c.img.Stride, c.img.Rect.Dx(), c.img.Rect.Dy()}, src)
+		k := walk{slope: dy / dx, du: 4, dv: c.img.Stride, nv: size.Y}
+		k.along(c.img.Pix, p.X, q.X, p.Y, w, size.X, src)
 		return
 	}
 	if dy < 0 {
 		p, q = q, p
 	}
-	c.walk(walk{p.Y, q.Y, p.X, dx / dy, w, c.img.Stride, 4, c.img.Rect.Dy(), c.img.Rect.Dx()}, src)
+	k := walk{slope: dx / dy, du: c.img.Stride, dv: 4, nv: size.X}
+	k.along(c.img.Pix, p.Y, q.Y, p.X, w, size.Y, src)
 }
 
-// walk is a line along one axis of the picture: from u0 to u1, at v0 across,
-// rising by slope. du and dv are the steps in bytes along and across; nu and nv
-// the pixels there are.
+// walk is a way along one axis of the picture, u, rising by slope across it,
+// v. du and dv are the steps in bytes along and across; nv the pixels there
+// are across.
 type walk struct {
-	u0, u1, v0, slope, width float64
-	du, dv, nu, nv           int
+	slope      float64
+	du, dv, nv int
 }
 
-func (c *Canvas) walk(k walk, src *source) {
-	thick := k.width * math.Sqrt(1+k.slope*k.slope)
+// along draws the line from u0 to u1, at v0 across, over nu pixels.
+func (k *walk) along(pix []uint8, u0, u1, v0, width float64, nu int, src *source) {
+	thick := width * math.Sqrt(1+k.slope*k.slope)
 	t := int(thick*one + 0.5)
-	first, last := max(int(math.Floor(k.u0)), 0), min(int(math.Floor(k.u1)), k.nu-1)
-	v := int(math.Floor((k.v0+(float64(first)+0.5-k.u0)*k.slope-thick/2)*one + 0.5))
 	rise := int(math.Floor(k.slope*one + 0.5))
-	for u := first; u <= last; u++ {
-		share := uint32(256)
-		if u == first || u == last {
-			along := min(k.u1, float64(u+1)) - max(k.u0, float64(u))
-			share = uint32(256*max(along, 0) + 0.5)
+	first, last := max(int(math.Floor(u0)), 0), min(int(math.Floor(u1)), nu-1)
+	// edge is where the line's lower edge stands in the middle of pixel u.
+	edge := func(u int) int {
+		return int(math.Floor((v0+(float64(u)+0.5-u0)*k.slope-thick/2)*one + 0.5))
+	}
+	// An end that lies within its pixel covers a part of it, about the middle
+	// of that part.
+	end := func(u int) {
+		lo, hi := max(u0, float64(u)), min(u1, float64(u+1))
+		if hi > lo {
+			v := edge(u) + int((lo+hi-2*float64(u)-1)/2*k.slope*one)
+			k.across(pix, u*k.du, v, t, uint32(256*(hi-lo)+0.5), src)
 		}
-		c.across(u*k.du, v, t, share, k, src)
+	}
+	if first > last {
+		return
+	}
+	end(first)
+	if last > first {
+		end(last)
+	}
+	k.middle(pix, (first+1)*k.du, last-first-1, edge(first+1), rise, t, src)
+}
+
+// middle covers n whole pixels along the walk: the inner loop of all live
+// drawing, written out for that.
+func (k *walk) middle(pix []uint8, o, n, v, rise, t int, src *source) {
+	rb, ga, alpha, dv, nv := src.rb, src.ga, src.alpha, k.dv, uint(k.nv)
+	for ; n > 0; n-- {
+		at := v >> 16
+		cover := one - v&(one-1)
+		rest := t - cover
+		if rest < 0 {
+			cover, rest = t, 0
+		}
+		i := o + at*dv
+		if uint(at) < nv {
+			mix(pix[i:i+4:i+4], rb, ga, (uint32(cover)>>8*alpha+128)>>8)
+		}
+		for ; rest > one; rest -= one {
+			at++
+			i += dv
+			if uint(at) < nv {
+				mix(pix[i:i+4:i+4], rb, ga, alpha)
+			}
+		}
+		if at++; uint(at) < nv {
+			i += dv
+			mix(pix[i:i+4:i+4], rb, ga, (uint32(rest)>>8*alpha+128)>>8)
+		}
+		o += k.du
 		v += rise
 	}
 }
 
 // across covers the pixels from v to v+t across the walk at byte offset o.
-func (c *Canvas) across(o, v, t int, share uint32, k walk, src *source) {
-	at := v >> 16
-	cover := min(one-v&(one-1), t)
-	for {
+func (k *walk) across(pix []uint8, o, v, t int, share uint32, src *source) {
+	for at := v >> 16; t > 0; at++ {
+		cover := min(one-v&(one-1), t)
 		if uint(at) < uint(k.nv) {
-			src.over(c.img.Pix[o+at*k.dv:][:4], uint32(cover)>>8*share>>8)
+			src.over(pix[o+at*k.dv:][:4], uint32(cover)>>8*share>>8)
 		}
-		if t -= cover; t <= 0 {
-			return
-		}
-		cover = min(t, one)
-		at++
+		t -= cover
+		v += cover
 	}
 }

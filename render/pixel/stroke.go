@@ -62,20 +62,31 @@ func (c *Canvas) strokeHair(p render.Path, pen render.Pen) {
 
 // strokeWide fills the outline of the stroke.
 func (c *Canvas) strokeWide(p render.Path, pen render.Pen) {
-	c.line.reset(pen.Width/2, pen.Cap)
+	// No wider than to cover the picture from anywhere near it.
+	width := min(pen.Width, 4*(c.bounds.W()+c.bounds.H()))
+	c.line.reset(width/2, pen.Cap)
 	p.Contours(flatness, c.line.add)
-	area := pixelBounds(c.line.points, c.img.Rect)
+	c.whole.Reset()
+	from := 0
+	for _, to := range c.line.ends {
+		for i, q := range c.line.points[from:to] {
+			if i == 0 {
+				c.whole.MoveTo(q.X, q.Y)
+			} else {
+				c.whole.LineTo(q.X, q.Y)
+			}
+		}
+		c.whole.Close()
+		from = to
+	}
+	p = render.ClipFill(c.whole, c.bounds, flatness)
+	area := pixelBounds(p.Points, c.img.Rect)
 	if area.Empty() {
 		return
 	}
-	c.begin(area)
-	from := 0
-	for _, to := range c.line.ends {
-		c.contour(c.line.points[from:to], area.Min)
-		from = to
-	}
-	c.end(&c.cover, area)
-	c.paint(&c.cover, pen.Color)
+	c.cover.begin(area)
+	p.Contours(flatness, func(points []render.Point, _ bool) { c.cover.add(points) })
+	c.paint(around, pen.Color)
 }
 
 // outline collects the outline of strokes: closed contours that all wind the

@@ -24,7 +24,9 @@ var harmonics = Kind{
 	Specs:   harmonicSpecs(),
 	Fits: func(v param.Values) error {
 		cos, sin := coefficients(v)
-		if phi, sinks := sink(waveForm(1, cos, sin)); sinks {
+		f := waveForm(1, cos, sin)
+		f.Mean -= slack
+		if phi, sinks := sink(f); sinks {
 			return misfit("the wall reaches its centre at %.1f deg; make the harmonics smaller", phi*180/math.Pi)
 		}
 		return nil
@@ -86,8 +88,8 @@ func harmonicRadius(v param.Values, phi float64) float64 {
 // formula r is below 1e-11 of its mean there.
 const sinkWidth = 1e-7
 
-// sink looks for a place where r is not positive. None is missed: by
-// Bernstein's inequality |r”| is at most the sum of m² |a_m|, m² |b_m|.
+// sink looks for a place where r is not positive. None is missed: |r”| is at
+// most the sum of m² |a_m| and m² |b_m|.
 func sink(f *curve.Form) (phi float64, sinks bool) {
 	bend := 0.0
 	for i := range f.Cos {

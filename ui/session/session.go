@@ -7,6 +7,7 @@
 package session
 
 import (
+	"cavitywright/render"
 	"cavitywright/table"
 	"cavitywright/table/edit"
 
@@ -20,7 +21,7 @@ type Session struct {
 	path    string
 
 	Selection Selection
-	Editor    View         // what the editor shows; the zero View fits the table
+	Editor    render.View  // what the editor shows; one of no Scale fits the table
 	Section   table.Region // what the portrait shows
 	Settings  Settings
 	Refusal   error // why the last command was refused; nil after one that was not
@@ -50,7 +51,7 @@ func (s *Session) OnChange(f func()) { s.changed = f }
 // Open replaces the document. The history begins anew.
 func (s *Session) Open(t *table.Table, path string) {
 	s.history, s.saved, s.path = edit.NewHistory(t), t, path
-	s.Selection, s.Editor, s.Section, s.Refusal = Selection{0, -1}, View{}, table.WholeSection(), nil
+	s.Selection, s.Editor, s.Section, s.Refusal = Selection{0, -1}, render.View{}, table.WholeSection(), nil
 	s.Touch()
 }
 

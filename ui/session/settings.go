@@ -59,17 +59,17 @@ const (
 func DefaultSettings() Settings {
 	return Settings{
 		Bundle: Bundle{Count: 9, SpreadDeg: 12, Width: 0.2},
-		Pace:   0.6, Drawn: 40, SeedAll: 60,
+		Pace:   0.6, Drawn: 24, SeedAll: 60,
 	}
 }
 
-// GridStep is the distance of the grid's lines in table units at the view:
-// 1, 2 or 5 times a power of ten, at least minPx pixels apart.
-func GridStep(v View, minPx float64) float64 {
-	if !(v.PixelsPerUnit > 0) {
+// GridStep is the distance of the grid's lines in table units where a unit is
+// scalePx pixels: 1, 2 or 5 times a power of ten, at least minPx pixels apart.
+func GridStep(scalePx, minPx float64) float64 {
+	if !(scalePx > 0) {
 		return 1
 	}
-	least := minPx / v.PixelsPerUnit
+	least := minPx / scalePx
 	ten := math.Pow(10, math.Floor(math.Log10(least)))
 	for _, m := range []float64{1, 2, 5} {
 		if m*ten >= least*(1-1e-12) {

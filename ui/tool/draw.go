@@ -2,6 +2,7 @@ package tool
 
 import (
 	"fmt"
+	"slices"
 
 	"cavitywright/table"
 	"cavitywright/table/curve"
@@ -95,15 +96,15 @@ func between(a, b shape.Node) []r2.Vec {
 	return pts
 }
 
-// CloseChain makes the nodes set so far a wall.
+// CloseChain makes the nodes set so far a wall. Where they make none, they
+// stay.
 func (e *Editor) CloseChain() error {
-	nodes := e.chain.nodes
-	e.held, e.chain = holdsNothing, chain{}
+	nodes := slices.Clone(e.chain.nodes)
+	e.held = holdsNothing
 	if len(nodes) == 0 {
 		return nil
 	}
 	if len(nodes) < 2 {
-		e.s.Touch()
 		return fmt.Errorf("a wall needs two nodes at least; click for more before closing it")
 	}
 	for i := range nodes {
@@ -119,7 +120,11 @@ func (e *Editor) CloseChain() error {
 			}
 		}
 	}
-	return e.put(shape.NewFreeform(nodes))
+	if err := e.put(shape.NewFreeform(nodes)); err != nil {
+		return err // the nodes stay, to be set right
+	}
+	e.chain = chain{}
+	return nil
 }
 
 // strokeTolerance is how far, as a fraction of a stroke's size, the fitted wall

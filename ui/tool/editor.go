@@ -193,7 +193,7 @@ func (e *Editor) Delete() error {
 	}
 	it := e.s.Table().Design().Items[sel.Item]
 	if f, ok := it.Shape.(shape.Freeform); ok && sel.Handle >= 0 {
-		if h := f.Handles()[sel.Handle]; h.Role == shape.Node {
+		if h := f.Handles()[sel.Handle]; h.Role == shape.Anchor {
 			return e.s.Do(edit.Reshape{Item: sel.Item, Shape: f.DeleteNode(h.Of), Name: "delete a node"})
 		}
 	}

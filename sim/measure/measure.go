@@ -1,0 +1,43 @@
+// Package measure holds one measurement a file: what is launched, how long it
+// is followed, and what is kept of its bounces. A measurement knows neither
+// workers nor clocks; sim/run carries it out, and its result depends on the
+// measurement and the seed alone.
+package measure
+
+import (
+	"cavitywright/sim"
+)
+
+// Measurement says which orbits to follow and makes the tallies that keep what
+// is wanted of them.
+type Measurement interface {
+	// Orbits is the number of orbits, Bounces the greatest number of bounces
+	// of each.
+	Orbits() int
+	Bounces() int
+	// Start is where orbit i opens. uniform draws from [0, 1).
+	Start(i int, uniform func() float64) sim.Start
+	// Tally is an empty tally.
+	Tally() Tally
+}
+
+// Tally keeps what a measurement wants of a block of orbits. One goroutine uses
+// it.
+type Tally interface {
+	// Open announces that the bounces that follow are orbit i's.
+	Open(i int)
+	// Add takes one bounce, the opening one (N = 0) included.
+	Add(b *sim.Bounce)
+	// Close ends the orbit.
+	Close()
+	// Merge takes the tally of the orbits that come next in order. The other
+	// tally is not used afterwards.
+	Merge(next Tally)
+}
+
+// Stops counts how orbits ended.
+type Stops [sim.Stops]int64
+
+// Undecided is the number of orbits that ended at a corner or a grazing
+// tangent.
+func (s Stops) Undecided() int64 { return s[sim.Corner] + s[sim.Grazing] }

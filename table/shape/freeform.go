@@ -1,0 +1,107 @@
+package shape
+
+import (
+	"math"
+
+	"cavitywright/table/curve"
+	"cavitywright/table/plane"
+
+	"gonum.org/v1/gonum/spatial/r2"
+)
+
+// Freeform is a wall drawn freely: a closed chain of nodes, joined by lines,
+// arcs and cubics. It is one Outer loop; side i of it is the span that leaves
+// node i, and s starts at node 0.
+type Freeform struct {
+	nodes nodes
+}
+
+// NewFreeform is the wall through the nodes, which are held to what their
+// joints promise and turned to run counter-clockwise, from the same first node.
+// What cannot be built is reported by Loops.
+func NewFreeform(list []Node) Freeform {
+	n := settled(list)
+	if n.fault() == nil && n.area() < 0 {
+		n = settled(n.reversed())
+	}
+	return Freeform{nodes: n}
+}
+
+// NewPolygonal is the wall of straight sides through the points.
+func NewPolygonal(points []r2.Vec) Freeform {
+	list := make(nodes, len(points))
+	for i, p := range points {
+		list[i].At = p
+	}
+	return NewFreeform(list)
+}
+
+// Kind is "freeform".
+func (f Freeform) Kind() string { return "freeform" }
+
+// Nodes are the nodes in their order; they must not be changed.
+func (f Freeform) Nodes() []Node { return f.nodes }
+
+// Loops is the one loop of the wall. The error is a *Fault. Where a drag has
+// turned the nodes clockwise, the loop runs against their order.
+func (f Freeform) Loops() ([]Loop, error) {
+	if err := f.nodes.fault(); err != nil {
+		return nil, err
+	}
+	curves := f.nodes.curves()
+	area, size := sweptBy(curves)
+	if math.Abs(area) <= noArea*size*size {
+		return nil, misfit("it encloses no area; move its nodes apart")
+	}
+	if area < 0 {
+		curves = f.nodes.reversed().curves()
+	}
+	return ring(curves...), nil
+}
+
+// noArea is the enclosed area, relative to the square of the wall's size, that
+// counts as none: far above the rounding of the sum, below any wall.
+const noArea = 1e-12
+
+// curves are the spans from node 0 on.
+func (n nodes) curves() []curve.Curve {
+	c := make([]curve.Curve, len(n))
+	for i := range n {
+		a, b := n.at(i), n.at(i+1)
+		switch a.Span {
+		case Bowed:
+			c[i] = curve.ArcThrough(a.At, b.At, a.Bulge)
+		case Curved:
+			c[i] = curve.NewCubic(n.controls(i))
+		default:
+			c[i] = curve.NewLine(a.At, b.At)
+		}
+	}
+	return c
+}
+
+// controls are the control points of the Curved span i.
+func (n nodes) controls(i int) [4]r2.Vec {
+	a, b := n.at(i), n.at(i+1)
+	return [4]r2.Vec{a.At, r2.Add(a.At, a.Out), r2.Add(b.At, b.In), b.At}
+}
+
+// area is the signed area that the spans enclose, positive when they run
+// counter-clockwise.
+func (n nodes) area() float64 {
+	area, _ := sweptBy(n.curves())
+	return area
+}
+
+func sweptBy(curves []curve.Curve) (area, size float64) {
+	origin := curves[0].Spans()[0].A
+	box := plane.Around()
+	for _, c := range curves {
+		spans := c.Spans()
+		for i := range spans {
+			area += spans[i].Swept(origin)
+		}
+		box = plane.Join(box, curve.Bounds(spans))
+	}
+	return area, plane.Diagonal(box)
+}

@@ -1,0 +1,24 @@
+package pane
+
+import (
+	"cavitywright/render"
+	"cavitywright/ui/live"
+	"cavitywright/ui/session"
+)
+
+// Desk is what the panes share: the session, the engine, the look, and the
+// place that the pointer is at. The window owns it.
+type Desk struct {
+	Session *session.Session
+	Engine  *live.Engine
+	Look    render.Look
+	// Hint writes what the pointer would do; Note writes the numbers of the
+	// place it is at; Say writes one sentence that stays until the next.
+	Hint func(string)
+	Note func(string)
+	Say  func(string)
+	// Point shows a place in all panes.
+	Point func(Place)
+	// Changed asks for new pictures: a size, a view or a setting changed.
+	Changed func()
+}

@@ -1,0 +1,180 @@
+package pane
+
+import (
+	"fmt"
+	"math"
+	"strconv"
+	"strings"
+
+	"cavitywright/table"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/widget"
+)
+
+// number is an entry for one value: the wheel nudges it, Enter takes it, and
+// leaving it takes it too.
+type number struct {
+	widget.Entry
+	nudge   func(k float64)
+	focused bool
+	before  string
+}
+
+func newNumber() *number {
+	n := &number{nudge: func(float64) {}}
+	n.ExtendBaseWidget(n)
+	return n
+}
+
+// FocusGained remembers the text.
+func (n *number) FocusGained() {
+	n.focused, n.before = true, n.Text
+	n.Entry.FocusGained()
+}
+
+// FocusLost takes what was typed.
+func (n *number) FocusLost() {
+	n.focused = false
+	n.Entry.FocusLost()
+	if n.Text != n.before && n.OnSubmitted != nil {
+		n.OnSubmitted(n.Text)
+	}
+}
+
+// TypedKey nudges on Up and Down and gives up on Escape.
+func (n *number) TypedKey(e *fyne.KeyEvent) {
+	switch e.Name {
+	case fyne.KeyUp:
+		n.nudge(1)
+	case fyne.KeyDown:
+		n.nudge(-1)
+	case fyne.KeyEscape:
+		n.SetText(n.before)
+	case fyne.KeyReturn, fyne.KeyEnter:
+		n.before = n.Text
+		n.Entry.TypedKey(e)
+	default:
+		n.Entry.TypedKey(e)
+	}
+}
+
+// Scrolled nudges by notches.
+func (n *number) Scrolled(e *fyne.ScrollEvent) {
+	n.nudge(math.Copysign(1, float64(e.Scrolled.DY+e.Scrolled.DX)))
+}
+
+// Evaluate reads a typed value: numbers with + - * / and brackets, each number
+// with a unit of length, "deg" or "°" behind it where that is wanted. A length
+// without a unit is in the given one.
+func Evaluate(text string, unit table.Unit) (float64, error) {
+	p := sum{text: strings.NewReplacer("−", "-", "·", "*", "×", "*", ",", ".").Replace(text), unit: unit}
+	v, ok := p.sum()
+	p.space()
+	if !ok || p.at != len(p.text) || math.IsNaN(v) || math.IsInf(v, 0) {
+		return 0, fmt.Errorf("%q is not a number; type a value such as 1.5, 3 mm or 10/3", strings.TrimSpace(text))
+	}
+	return v, nil
+}
+
+// sum reads sums of products by recursive descent.
+type sum struct {
+	text string
+	at   int
+	unit table.Unit
+}
+
+func (p *sum) space() {
+	for p.at < len(p.text) && p.text[p.at] == ' ' {
+		p.at++
+	}
+}
+
+func (p *sum) next(set string) byte {
+	p.space()
+	if p.at < len(p.text) && strings.IndexByte(set, p.text[p.at]) >= 0 {
+		p.at++
+		return p.text[p.at-1]
+	}
+	return 0
+}
+
+func (p *sum) sum() (float64, bool) {
+	v, ok := p.product()
+	for ok {
+		op := p.next("+-")
+		if op == 0 {
+			return v, true
+		}
+		w, good := p.product()
+		if op == '-' {
+			w = -w
+		}
+		v, ok = v+w, good
+	}
+	return v, false
+}
+
+func (p *sum) product() (float64, bool) {
+	v, ok := p.factor()
+	for ok {
+		op := p.next("*/")
+		if op == 0 {
+			return v, true
+		}
+		w, good := p.factor()
+		if op == '/' {
+			w = 1 / w
+		}
+		v, ok = v*w, good
+	}
+	return v, false
+}
+
+func (p *sum) factor() (float64, bool) {
+	switch p.next("+-(") {
+	case '-':
+		v, ok := p.factor()
+		return -v, ok
+	case '+':
+		return p.factor()
+	case '(':
+		v, ok := p.sum()
+		return v, ok && p.next(")") == ')'
+	}
+	p.space()
+	end := p.at
+	for end < len(p.text) && (strings.IndexByte("0123456789.", p.text[end]) >= 0 ||
+		(p.text[end] == 'e' || p.text[end] == 'E') && end+1 < len(p.text) && strings.IndexByte("0123456789+-", p.text[end+1]) >= 0 ||
+		(p.text[end] == '+' || p.text[end] == '-') && end > p.at && (p.text[end-1] == 'e' || p.text[end-1] == 'E')) {
+		end++
+	}
+	v, err := strconv.ParseFloat(p.text[p.at:end], 64)
+	if err != nil {
+		return 0, false
+	}
+	p.at = end
+	return v * p.suffix(), true
+}
+
+// suffix reads a unit behind a number and is its factor.
+func (p *sum) suffix() float64 {
+	p.space()
+	for _, s := range []struct {
+		name string
+		k    float64
+	}{
+		{"deg", 1}, {"°", 1},
+		{"nm", table.Nanometre.Metres() / p.unit.Metres()},
+		{"um", table.Micrometre.Metres() / p.unit.Metres()}, {"µm", table.Micrometre.Metres() / p.unit.Metres()},
+		{"mm", table.Millimetre.Metres() / p.unit.Metres()},
+		{"cm", table.Centimetre.Metres() / p.unit.Metres()},
+		{"m", table.Metre.Metres() / p.unit.Metres()},
+	} {
+		if strings.HasPrefix(p.text[p.at:], s.name) {
+			p.at += len(s.name)
+			return s.k
+		}
+	}
+	return 1
+}

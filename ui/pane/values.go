@@ -1,0 +1,355 @@
+package pane
+
+import (
+	"errors"
+	"fmt"
+	"math"
+	"strconv"
+	"strings"
+
+	"cavitywright/table"
+	"cavitywright/table/edit"
+	"cavitywright/table/param"
+	"cavitywright/table/plane"
+	"cavitywright/table/shape"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/widget"
+)
+
+// Values is the strip of numbers of what is selected: a form made from the
+// parameters' descriptions. Every number can be typed, dragged on its slider
+// and nudged with the wheel.
+type Values struct {
+	Box  *fyne.Container
+	desk *Desk
+	rows []*row
+	of   selected
+	name *widget.Label
+	kind *fyne.Container
+}
+
+// selected says for what the form was built.
+type selected struct {
+	item, handle int
+	shape        string
+	nodes        int
+}
+
+// row is one number.
+type row struct {
+	spec   param.Spec
+	entry  *number
+	slider *widget.Slider
+	value  float64
+	set    func(float64) edit.Command
+	quiet  bool // the slider is being set by the program
+}
+
+// NewValues is the strip on a desk.
+func NewValues(d *Desk) *Values {
+	v := &Values{desk: d, Box: container.NewVBox(), name: widget.NewLabel("")}
+	v.name.TextStyle.Bold = true
+	return v
+}
+
+// Refresh brings the numbers up to date, and makes the form anew where another
+// thing is selected.
+func (v *Values) Refresh() {
+	now := v.selected()
+	if now != v.of || len(v.rows) == 0 {
+		v.of = now
+		v.build()
+	}
+	for _, r := range v.rows {
+		r.show()
+	}
+	v.update()
+}
+
+func (v *Values) selected() selected {
+	s := v.desk.Session.Selection
+	of := selected{item: s.Item, handle: s.Handle}
+	if s.Item >= 0 {
+		sh := v.item().Shape
+		of.shape = sh.Kind()
+		if f, ok := sh.(shape.Freeform); ok {
+			of.nodes = len(f.Nodes())
+		} else {
+			of.handle = -1
+		}
+	}
+	return of
+}
+
+func (v *Values) item() table.Item {
+	return v.desk.Session.Table().Design().Items[v.desk.Session.Selection.Item]
+}
+
+// build makes the rows.
+func (v *Values) build() {
+	v.rows = nil
+	v.Box.RemoveAll()
+	if v.of.item < 0 {
+		v.name.SetText("Nothing selected")
+		v.Box.Add(container.NewHBox(v.name, widget.NewLabel("Click a wall or a handle; its numbers appear here.")))
+		return
+	}
+	it := v.item()
+	grid := container.NewGridWithColumns(2)
+	switch s := it.Shape.(type) {
+	case shape.Figure:
+		v.name.SetText(s.Family().Title)
+		for i, spec := range s.Family().Specs {
+			grid.Add(v.add(spec, func(x float64) edit.Command { return edit.SetValue{Item: v.of.item, Param: i, Value: x} }))
+		}
+	case shape.Freeform:
+		v.name.SetText("Free wall")
+		v.nodeRows(grid, s)
+	}
+	v.placeRows(grid, it)
+	head := container.NewHBox(v.name)
+	if f, ok := it.Shape.(shape.Figure); ok {
+		about := widget.NewLabel(f.Family().About)
+		about.Truncation = fyne.TextTruncateEllipsis
+		v.Box.Add(container.NewBorder(nil, nil, head, nil, about))
+	} else {
+		v.Box.Add(container.NewHBox(v.name, v.spanControls(it.Shape.(shape.Freeform))))
+	}
+	v.Box.Add(grid)
+}
+
+// placeRows are the item's position and angle.
+func (v *Values) placeRows(grid *fyne.Container, it table.Item) {
+	where := func(set func(p *plane.Similarity, x float64)) func(float64) edit.Command {
+		return func(x float64) edit.Command {
+			p := v.item().Place
+			set(&p, x)
+			return edit.Shift{Item: v.of.item, Place: p}
+		}
+	}
+	if v.of.handle >= 0 {
+		return
+	}
+	l := param.Spec{Unit: param.Length, Lo: -1e6, Hi: 1e6}
+	l.Name = "x"
+	grid.Add(v.add(l, where(func(p *plane.Similarity, x float64) { p.Shift.X = x })))
+	l.Name = "y"
+	grid.Add(v.add(l, where(func(p *plane.Similarity, x float64) { p.Shift.Y = x })))
+	a := param.Spec{Name: "turn", Unit: param.Angle, Lo: -math.Pi, Hi: math.Pi}
+	grid.Add(v.add(a, where(func(p *plane.Similarity, x float64) { p.Angle = x })))
+	grid.Add(v.add(param.Spec{Name: "scale", Lo: 1e-3, Hi: 1e3, Default: 1}, where(func(p *plane.Similarity, x float64) { p.Scale = x })))
+}
+
+// nodeRows are the coordinates of the selected handle of a free wall.
+func (v *Values) nodeRows(grid *fyne.Container, f shape.Freeform) {
+	h := v.of.handle
+	if h < 0 {
+		return
+	}
+	l := param.Spec{Unit: param.Length, Lo: -1e6, Hi: 1e6}
+	move := func(axis int) func(float64) edit.Command {
+		return func(x float64) edit.Command {
+			it := v.item()
+			to := it.Place.Apply(it.Shape.Handles()[h].At)
+			if axis == 0 {
+				to.X = x
+			} else {
+				to.Y = x
+			}
+			return edit.Drag{Item: v.of.item, Handle: h, To: to}
+		}
+	}
+	l.Name = "x"
+	grid.Add(v.add(l, move(0)))
+	l.Name = "y"
+	grid.Add(v.add(l, move(1)))
+}
+
+// spanControls choose the joint of the selected node and the span that leaves
+// it.
+func (v *Values) spanControls(f shape.Freeform) fyne.CanvasObject {
+	h := v.of.handle
+	if h < 0 || f.Handles()[h].Of < 0 {
+		return widget.NewLabel("Click a node to change it; click the wall twice to add one.")
+	}
+	node := f.Handles()[h].Of
+	reshape := func(g shape.Freeform, name string) {
+		if err := v.desk.Session.Do(edit.Reshape{Item: v.of.item, Shape: g, Name: name}); err != nil {
+			v.desk.Say(err.Error())
+		}
+		v.of = selected{item: -2}
+		v.Refresh()
+	}
+	n := f.Nodes()[node]
+	joint := widget.NewSelect([]string{"corner", "smooth"}, nil)
+	joint.SetSelectedIndex(int(n.Joint - shape.Corner))
+	joint.OnChanged = func(string) {
+		reshape(f.SetJoint(node, shape.Corner+shape.Joint(joint.SelectedIndex())), "change a joint")
+	}
+	span := widget.NewSelect([]string{"straight", "arc", "smooth"}, nil)
+	span.SetSelectedIndex(int(n.Span - shape.Straight))
+	span.OnChanged = func(string) {
+		reshape(f.SetSpan(node, shape.Straight+shape.SpanKind(span.SelectedIndex())), "change a span")
+	}
+	return container.NewHBox(
+		widget.NewLabel(fmt.Sprintf("node %d of %d, joint", node+1, len(f.Nodes()))), joint,
+		widget.NewLabel("next span"), span,
+		widget.NewButton("Delete node", func() { reshape(f.DeleteNode(node), "delete a node") }))
+}
+
+// add makes the row of a parameter.
+func (v *Values) add(spec param.Spec, set func(float64) edit.Command) fyne.CanvasObject {
+	r := &row{spec: spec, set: set, value: math.NaN()}
+	r.entry = newNumber()
+	r.entry.OnSubmitted = func(text string) {
+		x, err := r.parse(text, v.desk.Session.Table().Design().Unit)
+		if err != nil {
+			v.desk.Say(err.Error())
+			return
+		}
+		if err := v.desk.Session.Do(r.set(x)); err != nil {
+			v.desk.Say(err.Error())
+		}
+		r.value = math.NaN()
+		v.Refresh()
+	}
+	r.entry.nudge = func(k float64) {
+		_ = v.desk.Session.Do(r.set(r.spec.Clamp(r.nudged(k))))
+		v.Refresh()
+	}
+	r.slider = widget.NewSlider(0, 1)
+	r.slider.Step = 0
+	r.slider.OnChanged = func(x float64) {
+		if r.quiet {
+			return
+		}
+		if !v.desk.Session.InGesture() {
+			v.desk.Session.Begin()
+		}
+		if err := v.desk.Session.Amend(r.set(r.spec.Clamp(x))); err != nil {
+			v.desk.Say(err.Error())
+		}
+	}
+	r.slider.OnChangeEnded = func(float64) {
+		v.desk.Session.End()
+		r.value = math.NaN()
+		v.Refresh()
+	}
+	v.rows = append(v.rows, r)
+	name := widget.NewLabel(spec.Name)
+	return container.NewBorder(nil, nil, container.NewGridWrap(fyne.NewSize(112, 30), name), nil,
+		container.NewGridWithColumns(2, r.entry, r.slider))
+}
+
+// update reads the numbers off the document.
+func (v *Values) update() {
+	if v.of.item < 0 {
+		return
+	}
+	it := v.item()
+	var now []float64
+	switch s := it.Shape.(type) {
+	case shape.Figure:
+		now = append(now, s.Values()...)
+	case shape.Freeform:
+		if h := v.of.handle; h >= 0 && h < len(s.Handles()) {
+			p := it.Place.Apply(s.Handles()[h].At)
+			now = append(now, p.X, p.Y)
+		}
+	}
+	if v.of.handle < 0 {
+		now = append(now, it.Place.Shift.X, it.Place.Shift.Y, it.Place.Angle, it.Place.Scale)
+	}
+	busy := v.desk.Session.InGesture()
+	size := plane.Diagonal(v.desk.Session.Table().Bounds())
+	for i, r := range v.rows {
+		if i < len(now) {
+			r.bring(now[i], v.desk.Session.Table().Design().Unit, size, busy)
+		}
+	}
+}
+
+func (r *row) show() {}
+
+// bring shows the value x. The slider's range follows the value, but never
+// under the hand.
+func (r *row) bring(x float64, unit table.Unit, size float64, busy bool) {
+	if x == r.value {
+		return
+	}
+	r.value = x
+	r.quiet = true
+	if !busy {
+		r.slider.Min, r.slider.Max = r.around(x, size)
+	}
+	r.slider.Value = math.Min(math.Max(x, r.slider.Min), r.slider.Max)
+	r.slider.Refresh()
+	r.quiet = false
+	if !r.entry.focused {
+		r.entry.SetText(r.text(x, unit))
+	}
+}
+
+// around is the range of the slider about a value: the parameter's own where
+// that is short, else some times the value's size.
+func (r *row) around(x, size float64) (lo, hi float64) {
+	if r.spec.Hi-r.spec.Lo <= 64 {
+		return r.spec.Lo, r.spec.Hi
+	}
+	if r.spec.Lo < 0 {
+		return x - size, x + size
+	}
+	if r.spec.Unit == param.Count {
+		return r.spec.Lo, math.Min(r.spec.Hi, math.Max(12, 4*x))
+	}
+	return math.Max(r.spec.Lo, 0.02*x), math.Min(r.spec.Hi, 2.5*x)
+}
+
+// text is the value with its unit.
+func (r *row) text(x float64, unit table.Unit) string {
+	switch r.spec.Unit {
+	case param.Length:
+		return short(x) + " " + unit.String()
+	case param.Angle:
+		return short(x*180/math.Pi) + "°"
+	}
+	return short(x)
+}
+
+// short writes a number with at most six digits.
+func short(x float64) string {
+	if math.Abs(x) < 1e-12 {
+		x = 0
+	}
+	return strings.Replace(strconv.FormatFloat(x, 'g', 6, 64), "-", "−", 1)
+}
+
+// nudged is the value moved by k notches of a hundredth of the slider.
+func (r *row) nudged(k float64) float64 {
+	step := (r.slider.Max - r.slider.Min) / 200
+	if r.spec.Unit == param.Count {
+		step = 1
+	}
+	return r.value + k*step
+}
+
+// parse reads a typed value; the unit may stand behind it.
+func (r *row) parse(text string, unit table.Unit) (float64, error) {
+	x, err := Evaluate(text, unit)
+	if err != nil {
+		return 0, fmt.Errorf("%s: %w", r.spec.Name, err)
+	}
+	if r.spec.Unit == param.Angle {
+		x *= math.Pi / 180
+	}
+	if err := r.spec.Check(x); err != nil {
+		var re *param.RangeError
+		if errors.As(err, &re) && r.spec.Unit == param.Angle {
+			return 0, fmt.Errorf("%s must lie between %.4g° and %.4g°", r.spec.Name, r.spec.Lo*180/math.Pi, r.spec.Hi*180/math.Pi)
+		}
+		return 0, err
+	}
+	return x, nil
+}

@@ -1,0 +1,197 @@
+package window
+
+import (
+	"strings"
+
+	"cavitywright/table"
+	"cavitywright/table/edit"
+	"cavitywright/ui/session"
+	"cavitywright/ui/tool"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/dialog"
+	"fyne.io/fyne/v2/driver/desktop"
+	"fyne.io/fyne/v2/widget"
+)
+
+// command is one thing the program does, with its place in the menu and its
+// key. Every command is in one list: the menu, the keys and the searchable
+// list are made of it.
+type command struct {
+	menu string
+	name string
+	key  fyne.Shortcut // goes through the menu
+	bare fyne.KeyName  // a key without a modifier, taken where no field has the focus
+	keys string        // how the key is written
+	run  func()
+}
+
+func ctrl(k fyne.KeyName) fyne.Shortcut {
+	return &desktop.CustomShortcut{KeyName: k, Modifier: fyne.KeyModifierShortcutDefault}
+}
+
+func ctrlShift(k fyne.KeyName) fyne.Shortcut {
+	return &desktop.CustomShortcut{KeyName: k, Modifier: fyne.KeyModifierShortcutDefault | fyne.KeyModifierShift}
+}
+
+// allCommands is the list.
+func (w *Window) allCommands() []command {
+	tools := func(t session.ToolName) func() {
+		return func() {
+			w.session.Settings.Tool = t
+			w.editor.Cancel()
+		}
+	}
+	return []command{
+		{"File", "New table from the gallery…", ctrl(fyne.KeyN), "", "Ctrl+N", w.openGallery},
+		{"File", "Open…", ctrl(fyne.KeyO), "", "Ctrl+O", w.askOpen},
+		{"File", "Save", ctrl(fyne.KeyS), "", "Ctrl+S", w.save},
+		{"File", "Save as…", ctrlShift(fyne.KeyS), "", "Ctrl+Shift+S", w.saveAs},
+		{"File", "Export figure…", ctrl(fyne.KeyE), "", "Ctrl+E", w.askFigure},
+		{"File", "Portrait as PNG beside the table file", ctrlShift(fyne.KeyE), "", "Ctrl+Shift+E", w.exportBeside},
+		{"Edit", "Undo", &fyne.ShortcutUndo{}, "", "Ctrl+Z", w.undo},
+		{"Edit", "Redo", &fyne.ShortcutRedo{}, "", "Ctrl+Y", w.redo},
+		{"Edit", "Delete what is selected", nil, fyne.KeyDelete, "Delete", func() { w.sayErr(w.editor.Tool().Delete()) }},
+		{"Edit", "Make it an obstacle or the wall", nil, "", "", w.toggleRole},
+		{"Edit", "Name and notes…", nil, "", "", w.askName},
+		{"Draw", "Reshape: drag handles and shapes", nil, fyne.KeyV, "V", tools(session.Hand)},
+		{"Draw", "Nodes: click a wall node by node", nil, fyne.KeyN, "N", tools(session.Chain)},
+		{"Draw", "Freehand: draw a wall in one stroke", nil, fyne.KeyD, "D", tools(session.Stroke)},
+		{"Draw", "Place a shape…", nil, fyne.KeyA, "A", w.openShapes},
+		{"Draw", "Snap to the grid", nil, fyne.KeyG, "G", func() { w.session.Settings.Snap = 1 - w.session.Settings.Snap; w.session.Touch() }},
+		{"Launch", "Seed what the portrait shows, evenly", nil, fyne.KeyE, "E", func() { w.sayErr(tool.SeedEvenly(w.session)) }},
+		{"Launch", "Take out all launches", nil, fyne.KeyC, "C", func() { w.sayErr(tool.ClearLaunches(w.session)) }},
+		{"Launch", "Let the balls run or stand", nil, fyne.KeyP, "P", w.toggleMotion},
+		{"Launch", "Stop or go on filling the portrait", nil, fyne.KeyS, "S", w.toggleFilling},
+		{"Launch", "Bundle: fan angle, beam width, number…", nil, fyne.KeyB, "B", w.askBundle},
+		{"View", "Table fills the window", nil, fyne.Key1, "1", func() { w.grow(0) }},
+		{"View", "Rays fill the window", nil, fyne.Key2, "2", func() { w.grow(1) }},
+		{"View", "Portrait fills the window", nil, fyne.Key3, "3", func() { w.grow(2) }},
+		{"View", "Fit the table, the rays and the whole section", nil, fyne.KeyF, "F", w.fitAll},
+		{"View", "Axes: s or s/L", nil, "", "", w.display(func(d *table.Display) { d.Position = 1 - d.Position })},
+		{"View", "Axes: p or χ in degrees", nil, "", "", w.display(func(d *table.Display) { d.Momentum = 1 - d.Momentum })},
+		{"View", "Axes: counter-clockwise or clockwise", nil, "", "", w.display(func(d *table.Display) { d.Sense = 1 - d.Sense })},
+		{"View", "Light or dark", nil, fyne.KeyL, "L", w.toggleVariant},
+		{"Help", "All commands…", ctrl(fyne.KeyK), "", "Ctrl+K", w.askCommand},
+		{"Help", "What is what", nil, fyne.KeyF1, "F1", w.help},
+	}
+}
+
+// menu is the main menu made of the list.
+func (w *Window) menu() *fyne.MainMenu {
+	var menus []*fyne.Menu
+	at := map[string]*fyne.Menu{}
+	for _, c := range w.commands {
+		m := at[c.menu]
+		if m == nil {
+			m = fyne.NewMenu(c.menu)
+			at[c.menu] = m
+			menus = append(menus, m)
+		}
+		name := c.name
+		if c.bare != "" {
+			name += "   " + c.keys
+		}
+		it := fyne.NewMenuItem(name, c.run)
+		it.Shortcut = c.key
+		m.Items = append(m.Items, it)
+	}
+	at["File"].Items = append(at["File"].Items, w.recentMenu())
+	return fyne.NewMainMenu(menus...)
+}
+
+// loose takes a key that no field has.
+func (w *Window) loose(k fyne.KeyName) {
+	for _, c := range w.commands {
+		if c.bare != "" && c.bare == k {
+			c.run()
+			return
+		}
+	}
+	if k == fyne.KeyEscape {
+		w.editor.Cancel()
+		w.rays.Cancel()
+		w.portrait.Cancel()
+	}
+}
+
+// undo goes back: in a field that is being typed in, or the document.
+func (w *Window) undo() {
+	if e, ok := w.win.Canvas().Focused().(interface{ TypedShortcut(fyne.Shortcut) }); ok {
+		e.TypedShortcut(&fyne.ShortcutUndo{})
+		return
+	}
+	w.session.Undo()
+}
+
+func (w *Window) redo() {
+	if e, ok := w.win.Canvas().Focused().(interface{ TypedShortcut(fyne.Shortcut) }); ok {
+		e.TypedShortcut(&fyne.ShortcutRedo{})
+		return
+	}
+	w.session.Redo()
+}
+
+func (w *Window) toggleRole() {
+	i := w.session.Selection.Item
+	if i < 0 {
+		w.say("Nothing is selected; click a shape first.")
+		return
+	}
+	w.sayErr(w.session.Do(edit.SetRole{Item: i, Role: 1 - w.session.Table().Design().Items[i].Role}))
+}
+
+func (w *Window) fitAll() {
+	w.editor.Key(fyne.KeyF)
+	w.rays.Key(fyne.KeyF)
+	w.portrait.Key(fyne.KeyF)
+}
+
+func (w *Window) display(change func(*table.Display)) func() {
+	return func() {
+		study := w.session.Table().Design().Study
+		change(&study.Display)
+		w.sayErr(w.session.Do(edit.SetStudy{Study: study, Name: "axes"}))
+	}
+}
+
+// askCommand shows the searchable list.
+func (w *Window) askCommand() {
+	found := w.commands
+	list := widget.NewList(func() int { return len(found) },
+		func() fyne.CanvasObject {
+			return container.NewBorder(nil, nil, nil, widget.NewLabel("Ctrl+Shift+S"), widget.NewLabel(""))
+		},
+		func(i widget.ListItemID, o fyne.CanvasObject) {
+			c := o.(*fyne.Container)
+			c.Objects[0].(*widget.Label).SetText(found[i].menu + ": " + found[i].name)
+			c.Objects[1].(*widget.Label).SetText(found[i].keys)
+		})
+	search := widget.NewEntry()
+	search.SetPlaceHolder("Type a few letters of what you want to do")
+	d := dialog.NewCustom("All commands", "Close", container.NewBorder(search, nil, nil, nil, list), w.win)
+	search.OnChanged = func(s string) {
+		found = nil
+		for _, c := range w.commands {
+			if strings.Contains(strings.ToLower(c.menu+" "+c.name), strings.ToLower(s)) {
+				found = append(found, c)
+			}
+		}
+		list.UnselectAll()
+		list.Refresh()
+	}
+	list.OnSelected = func(i widget.ListItemID) {
+		d.Hide()
+		found[i].run()
+	}
+	search.OnSubmitted = func(string) {
+		if len(found) > 0 {
+			d.Hide()
+			found[0].run()
+		}
+	}
+	d.Resize(fyne.NewSize(560, 520))
+	d.Show()
+	w.win.Canvas().Focus(search)
+}

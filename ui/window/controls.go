@@ -1,0 +1,140 @@
+package window
+
+import (
+	"image/color"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/layout"
+	"fyne.io/fyne/v2/theme"
+	"fyne.io/fyne/v2/widget"
+)
+
+// choice is a row of buttons of which one is chosen.
+type choice struct {
+	buttons []*widget.Button
+	box     *fyne.Container
+	at      int
+}
+
+func newChoice(icons, names []string, chosen func(int)) *choice {
+	c := &choice{box: container.NewHBox()}
+	c.box.Layout = layout.NewCustomPaddedHBoxLayout(1)
+	for i, n := range names {
+		b := widget.NewButton(n, nil)
+		if icons != nil {
+			b.SetIcon(icon(icons[i]))
+		}
+		b.OnTapped = func() {
+			c.show(i)
+			chosen(i)
+		}
+		c.buttons = append(c.buttons, b)
+		c.box.Add(b)
+	}
+	c.at = -1
+	c.show(0)
+	return c
+}
+
+// show marks the chosen button without acting on it.
+func (c *choice) show(i int) {
+	if i == c.at {
+		return
+	}
+	c.at = i
+	for k, b := range c.buttons {
+		b.Importance = widget.LowImportance
+		if k == i {
+			b.Importance = widget.MediumImportance
+		}
+		b.Refresh()
+	}
+}
+
+// quiet is a button that shows its name and icon without a frame.
+func quiet(iconName, name string, tapped func()) *widget.Button {
+	b := widget.NewButton(name, tapped)
+	if iconName != "" {
+		b.SetIcon(icon(iconName))
+	}
+	b.Importance = widget.LowImportance
+	return b
+}
+
+// title is the name of a pane.
+func title(s string) fyne.CanvasObject {
+	t := widget.NewLabel(s)
+	t.TextStyle.Bold = true
+	return t
+}
+
+// bar is a pane's header: its name, then its controls; what belongs at the
+// right end comes last.
+func bar(name string, left []fyne.CanvasObject, right ...fyne.CanvasObject) fyne.CanvasObject {
+	row := append([]fyne.CanvasObject{title(name)}, left...)
+	row = append(row, layout.NewSpacer())
+	row = append(row, right...)
+	b := container.NewHBox(row...)
+	b.Layout = layout.NewCustomPaddedHBoxLayout(2)
+	return b
+}
+
+// caption is one line of small text that is cut off where it does not fit.
+type caption struct {
+	widget.BaseWidget
+	text  *canvas.Text
+	align fyne.TextAlign
+	min   float32
+}
+
+func newCaption(align fyne.TextAlign, min float32) *caption {
+	c := &caption{text: canvas.NewText("", color.Black), align: align, min: min}
+	c.text.TextSize = 12
+	c.text.Alignment = align
+	c.ExtendBaseWidget(c)
+	return c
+}
+
+func (c *caption) set(s string) {
+	if s == c.text.Text {
+		return
+	}
+	c.text.Text = s
+	c.fit()
+	c.text.Refresh()
+}
+
+// fit cuts the text to the width with an ellipsis.
+func (c *caption) fit() {
+	w := c.Size().Width
+	if w <= 0 {
+		return
+	}
+	r := []rune(c.text.Text)
+	for len(r) > 1 && fyne.MeasureText(string(r), c.text.TextSize, c.text.TextStyle).Width > w {
+		r = r[:len(r)-2]
+		r = append(r, '…')
+	}
+	c.text.Text = string(r)
+}
+
+func (c *caption) CreateRenderer() fyne.WidgetRenderer {
+	c.text.Color = theme.Color(theme.ColorNameForeground)
+	return &captionRenderer{c}
+}
+
+type captionRenderer struct{ c *caption }
+
+func (r *captionRenderer) Layout(s fyne.Size) {
+	r.c.text.Move(fyne.NewPos(0, (s.Height-r.c.text.MinSize().Height)/2))
+	r.c.text.Resize(fyne.NewSize(s.Width, r.c.text.MinSize().Height))
+}
+func (r *captionRenderer) MinSize() fyne.Size { return fyne.NewSize(r.c.min, 20) }
+func (r *captionRenderer) Refresh() {
+	r.c.text.Color = theme.Color(theme.ColorNameForeground)
+	r.c.text.Refresh()
+}
+func (r *captionRenderer) Objects() []fyne.CanvasObject { return []fyne.CanvasObject{r.c.text} }
+func (r *captionRenderer) Destroy()                     {}

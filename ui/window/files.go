@@ -1,0 +1,306 @@
+package window
+
+import (
+	"bytes"
+	"errors"
+	"fmt"
+	"io/fs"
+	"os"
+	"path/filepath"
+	"strings"
+
+	"cavitywright/render/export"
+	"cavitywright/table"
+	"cavitywright/table/tablefile"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/dialog"
+	"fyne.io/fyne/v2/storage"
+	"fyne.io/fyne/v2/widget"
+)
+
+// ReadTable reads a table from a table file, or out of an exported PNG or SVG
+// that carries one.
+func ReadTable(path string) (*table.Table, error) {
+	d, err := readDesign(path)
+	if err != nil {
+		return nil, fmt.Errorf("%s: %w", filepath.Base(path), err)
+	}
+	return table.New(d)
+}
+
+// mostBytes is the largest file that is looked at.
+const mostBytes = 256 << 20
+
+func readDesign(path string) (table.Design, error) {
+	info, err := os.Stat(path)
+	switch {
+	case errors.Is(err, fs.ErrNotExist):
+		return table.Design{}, fmt.Errorf("there is no such file; check the folder and the name")
+	case err != nil:
+		return table.Design{}, fmt.Errorf("the file cannot be opened (%w)", err)
+	case info.IsDir():
+		return table.Design{}, fmt.Errorf("this is a folder; choose a table file in it")
+	case info.Size() > mostBytes:
+		return table.Design{}, fmt.Errorf("the file is larger than any table; choose another")
+	}
+	f, err := os.Open(path)
+	if err != nil {
+		return table.Design{}, fmt.Errorf("the file cannot be opened; check its permissions")
+	}
+	defer f.Close()
+	var inside []byte
+	switch strings.ToLower(filepath.Ext(path)) {
+	case ".png":
+		inside, err = export.TableInPNG(f)
+	case ".svg":
+		inside, err = export.TableInSVG(f)
+	default:
+		return tablefile.Read(f)
+	}
+	if err != nil {
+		return table.Design{}, err
+	}
+	return tablefile.Read(bytes.NewReader(inside))
+}
+
+// writeFile writes an exported file whole or not at all.
+func writeFile(path string, data []byte) error { return store.WriteFile(path, data) }
+
+// OpenPath opens a file. What is open stays where that fails.
+func (w *Window) OpenPath(path string) {
+	t, err := ReadTable(path)
+	if err != nil {
+		w.foot.say(err.Error())
+		return
+	}
+	path = DocumentPath(path)
+	w.openTable(t, path)
+	if path != "" {
+		w.remember(path)
+	}
+}
+
+func isTableFile(path string) bool {
+	e := strings.ToLower(filepath.Ext(path))
+	return e != ".png" && e != ".svg"
+}
+
+// openTable shows a table as the document.
+func (w *Window) openTable(t *table.Table, path string) {
+	w.editor.Cancel()
+	w.rays.View.Scale = 0
+	w.session.Open(t, path)
+	w.disk.clear()
+	w.win.SetMainMenu(w.menu())
+}
+
+// ifSaved goes on at once, or asks about unsaved changes first.
+func (w *Window) ifSaved(then func()) {
+	if !w.session.Unsaved() {
+		then()
+		return
+	}
+	text := widget.NewLabel("The table has changes that are not saved.")
+	var d *dialog.CustomDialog
+	save := widget.NewButton("Save", func() { d.Hide(); w.saveThen(then) })
+	save.Importance = widget.HighImportance
+	drop := widget.NewButton("Do not save", func() { d.Hide(); then() })
+	back := widget.NewButton("Back to the table", func() { d.Hide() })
+	d = dialog.NewCustomWithoutButtons("Save the changes?", container.NewVBox(text, container.NewHBox(save, drop, back)), w.win)
+	d.Show()
+}
+
+// close asks about unsaved changes and ends the program.
+func (w *Window) close() {
+	w.ifSaved(func() {
+		w.disk.clear()
+		p := w.app.Preferences()
+		p.SetFloat("columns", w.columns.Offset)
+		p.SetFloat("rows", w.right.Offset)
+		if s := w.win.Canvas().Size(); s.Width > 200 {
+			p.SetFloat("width", float64(s.Width))
+			p.SetFloat("height", float64(s.Height))
+		}
+		w.win.Close()
+	})
+}
+
+func (w *Window) save() { w.saveThen(func() {}) }
+
+func (w *Window) saveThen(then func()) {
+	if p := w.session.Path(); p != "" {
+		if w.SaveTo(p) {
+			then()
+		}
+		return
+	}
+	w.askPath("Save the table as", w.fileName(), func(path string) {
+		if w.SaveTo(path) {
+			then()
+		}
+	})
+}
+
+func (w *Window) saveAs() {
+	w.askPath("Save the table as", w.fileName(), func(path string) { w.SaveTo(path) })
+}
+
+// SaveTo writes the document; false, with a sentence, where that fails.
+func (w *Window) SaveTo(path string) bool {
+	path = store.EnsureExt(path)
+	if err := store.Save(path, w.session.Table().Design()); err != nil {
+		w.foot.say(err.Error())
+		return false
+	}
+	w.session.Saved(path)
+	w.disk.clear()
+	w.remember(path)
+	w.say("Saved: %s.", path)
+	return true
+}
+
+// fileName is a name for the document's file.
+func (w *Window) fileName() string {
+	if p := w.session.Path(); p != "" {
+		return filepath.Base(p)
+	}
+	name := strings.Map(func(r rune) rune {
+		if r == ' ' {
+			return '-'
+		}
+		if r >= '0' && r <= '9' || r >= 'a' && r <= 'z' || r >= 'A' && r <= 'Z' || r == '-' {
+			return r
+		}
+		return -1
+	}, w.session.Table().Design().Name)
+	if name == "" {
+		name = "table"
+	}
+	return strings.ToLower(name) + ".cavity.json"
+}
+
+// folder is where files were last, or the home folder.
+func (w *Window) folder() string {
+	if p := w.session.Path(); p != "" {
+		return filepath.Dir(p)
+	}
+	if d := w.app.Preferences().String("folder"); d != "" {
+		return d
+	}
+	home, err := os.UserHomeDir()
+	if err != nil {
+		return "."
+	}
+	return home
+}
+
+// askPath asks for a file to write: a folder and a name. Nothing is touched
+// before the answer, and an existing file is asked about.
+func (w *Window) askPath(what, name string, then func(path string)) {
+	where, file := widget.NewEntry(), widget.NewEntry()
+	where.SetText(w.folder())
+	file.SetText(name)
+	browse := widget.NewButton("Browse…", func() {
+		d := dialog.NewFolderOpen(func(u fyne.ListableURI, err error) {
+			if err == nil && u != nil {
+				where.SetText(u.Path())
+			}
+		}, w.win)
+		d.Resize(fyne.NewSize(800, 560))
+		d.Show()
+	})
+	var d dialog.Dialog
+	accept := func(ok bool) {
+		if !ok || strings.TrimSpace(file.Text) == "" {
+			return
+		}
+		path := filepath.Join(where.Text, file.Text)
+		w.app.Preferences().SetString("folder", where.Text)
+		if _, err := os.Stat(path); err == nil && path != w.session.Path() {
+			dialog.ShowConfirm("Replace the file?", filepath.Base(path)+" is there already.", func(yes bool) {
+				if yes {
+					then(path)
+				}
+			}, w.win)
+			return
+		}
+		then(path)
+	}
+	d = dialog.NewForm(what, "Write", "Cancel", []*widget.FormItem{
+		widget.NewFormItem("Name", file),
+		widget.NewFormItem("Folder", container.NewBorder(nil, nil, nil, browse, where)),
+	}, accept, w.win)
+	file.OnSubmitted = func(string) {
+		d.Hide()
+		accept(true)
+	}
+	d.Resize(fyne.NewSize(620, 220))
+	d.Show()
+	w.win.Canvas().Focus(file)
+}
+
+// askOpen asks for a file to read.
+func (w *Window) askOpen() {
+	w.ifSaved(func() {
+		d := dialog.NewFileOpen(func(r fyne.URIReadCloser, err error) {
+			if err != nil || r == nil {
+				return
+			}
+			path := r.URI().Path()
+			_ = r.Close()
+			w.app.Preferences().SetString("folder", filepath.Dir(path))
+			w.OpenPath(path)
+		}, w.win)
+		d.SetFilter(storage.NewExtensionFileFilter([]string{".json", ".png", ".svg"}))
+		if l, err := storage.ListerForURI(storage.NewFileURI(w.folder())); err == nil {
+			d.SetLocation(l)
+		}
+		d.Resize(fyne.NewSize(900, 600))
+		d.Show()
+	})
+}
+
+// dropped opens what was dropped on the window.
+func (w *Window) dropped(uris []fyne.URI) {
+	if len(uris) > 0 {
+		w.ifSaved(func() { w.OpenPath(uris[0].Path()) })
+	}
+}
+
+// mostRecent is the number of files that are remembered.
+const mostRecent = 8
+
+// remember puts a file at the head of the recent ones.
+func (w *Window) remember(path string) {
+	list := []string{path}
+	for _, p := range w.app.Preferences().StringList("recent") {
+		if p != path && len(list) < mostRecent {
+			list = append(list, p)
+		}
+	}
+	w.app.Preferences().SetStringList("recent", list)
+	w.win.SetMainMenu(w.menu())
+}
+
+func (w *Window) recentMenu() *fyne.MenuItem {
+	m := fyne.NewMenuItem("Recent files", nil)
+	m.ChildMenu = fyne.NewMenu("")
+	for _, p := range w.app.Preferences().StringList("recent") {
+		m.ChildMenu.Items = append(m.ChildMenu.Items, fyne.NewMenuItem(p, func() { w.ifSaved(func() { w.OpenPath(p) }) }))
+	}
+	if len(m.ChildMenu.Items) == 0 {
+		m.Disabled = true
+	}
+	return m
+}
+
+// DocumentPath is the file that a table read from path is saved to: none for a
+// figure, which is not saved over.
+func DocumentPath(path string) string {
+	if isTableFile(path) {
+		return path
+	}
+	return ""
+}

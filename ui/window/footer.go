@@ -1,0 +1,150 @@
+package window
+
+import (
+	"fmt"
+	"math"
+	"strings"
+
+	"cavitywright/sim"
+	"cavitywright/table"
+	"cavitywright/ui/live"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/layout"
+	"fyne.io/fyne/v2/theme"
+)
+
+// footer is the bottom line, and the line of readings under the portrait.
+type footer struct {
+	w        *Window
+	box      fyne.CanvasObject
+	readings fyne.CanvasObject
+	left     *caption
+	middle   *caption
+	right    *caption
+	reading  *caption
+	line     *canvas.Rectangle
+	rail     *fyne.Container
+	held     live.Filling
+	standing string // the sentence that stays until the next
+	status   live.Status
+}
+
+func newFooter(w *Window) *footer {
+	f := &footer{w: w, left: newCaption(fyne.TextAlignLeading, 120), middle: newCaption(fyne.TextAlignLeading, 120), right: newCaption(fyne.TextAlignTrailing, 120), reading: newCaption(fyne.TextAlignLeading, 120)}
+	f.line = canvas.NewRectangle(theme.Color(theme.ColorNameForeground))
+	f.rail = container.New(&thin{f}, f.line)
+	cells := container.New(&thirds{}, f.left, f.middle, f.right)
+	f.box = container.NewVBox(container.New(layout.NewCustomPaddedLayout(1, 4, 10, 10), cells))
+	f.readings = container.NewVBox(f.rail, container.New(layout.NewCustomPaddedLayout(0, 2, 10, 10), f.reading))
+	return f
+}
+
+// thirds shares a line between hint, numbers and progress.
+type thirds struct{}
+
+func (thirds) MinSize([]fyne.CanvasObject) fyne.Size { return fyne.NewSize(300, 20) }
+func (thirds) Layout(o []fyne.CanvasObject, s fyne.Size) {
+	x := float32(0)
+	for i, part := range []float32{0.46, 0.3, 0.24} {
+		o[i].Move(fyne.NewPos(x, 0))
+		o[i].Resize(fyne.NewSize(s.Width*part-12, s.Height))
+		x += s.Width * part
+	}
+	o[2].Resize(fyne.NewSize(s.Width*0.24, s.Height))
+}
+
+// thin lays the line of progress: its length is the share done.
+type thin struct{ f *footer }
+
+func (thin) MinSize([]fyne.CanvasObject) fyne.Size { return fyne.NewSize(10, 2) }
+func (t thin) Layout(o []fyne.CanvasObject, s fyne.Size) {
+	o[0].Resize(fyne.NewSize(s.Width*float32(t.f.status.Done), s.Height))
+	o[0].Move(fyne.NewPos(0, 0))
+}
+
+// hint says what the pointer would do; a sentence that was said stays in its
+// place until the pointer has something new to say.
+func (f *footer) hint(s string) {
+	if s == "" {
+		s = f.standing
+	} else if f.w.session.Refusal == nil {
+		f.standing = ""
+	}
+	if f.standing != "" {
+		s = f.standing
+	}
+	f.left.set(s)
+}
+
+func (f *footer) note(s string) { f.middle.set(s) }
+
+func (f *footer) say(s string) {
+	f.standing = s
+	f.left.set(s)
+}
+
+// refresh writes the exact readings of the table.
+func (f *footer) refresh() {
+	t := f.w.session.Table()
+	f.reading.set(exactReadings(t))
+	f.line.FillColor = theme.Color(theme.ColorNameForeground)
+}
+
+// exactReadings are perimeter, area, mean chord and smallest radius.
+func exactReadings(t *table.Table) string {
+	u := t.Design().Unit
+	parts := []string{fmt.Sprintf("L = %.6g %s", t.Length(), u)}
+	if !t.Open() {
+		parts = append(parts, fmt.Sprintf("A = %.6g %s²", t.Area(), u), fmt.Sprintf("mean chord πA/L = %.6g %s", sim.MeanChord(t), u))
+	} else {
+		parts = append(parts, "open plane: rays can escape")
+	}
+	if r := t.SmallestRadius(); !math.IsInf(r, 1) {
+		parts = append(parts, fmt.Sprintf("smallest radius %.4g %s", r, u))
+	}
+	return strings.Join(parts, "  ·  ")
+}
+
+// progress writes how far the portrait is.
+func (f *footer) progress(s live.Status) {
+	f.status = s
+	parts := []string{count(s.Bounces) + " bounces"}
+	if s.Done < 1 && s.Held == live.Fills && s.PerSecond > 0 {
+		parts = append(parts, count(int64(s.PerSecond))+"/s")
+	}
+	if s.Held == live.Stands {
+		parts = append(parts, "stopped")
+	}
+	if s.Escaped > 0 {
+		parts = append(parts, count(s.Escaped)+" escaped")
+	}
+	if s.Undecided > 0 {
+		parts = append(parts, count(s.Undecided)+" ended at a corner or tangent")
+	}
+	if s.Lost > 0 {
+		parts = append(parts, count(s.Lost)+" lost (a fault of the program)")
+	}
+	f.right.set(strings.Join(parts, " · "))
+	if s.Done >= 1 {
+		f.line.Hide()
+	} else {
+		f.line.Show()
+		f.rail.Layout.Layout(f.rail.Objects, f.rail.Size())
+	}
+}
+
+// count writes a number of things with at most three digits and a letter.
+func count(n int64) string {
+	switch x := float64(n); {
+	case x >= 1e9:
+		return fmt.Sprintf("%.2f G", x/1e9)
+	case x >= 1e6:
+		return fmt.Sprintf("%.2f M", x/1e6)
+	case x >= 1e4:
+		return fmt.Sprintf("%.0f k", x/1e3)
+	}
+	return fmt.Sprint(n)
+}

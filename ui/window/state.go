@@ -1,0 +1,52 @@
+package window
+
+import (
+	"cavitywright/ui/live"
+	"cavitywright/ui/pane"
+
+	"fyne.io/fyne/v2"
+)
+
+// State is what the window shows, for tests that drive it from outside: where
+// things are on the screen and how far the work is.
+type State struct {
+	Revision  uint64            `json:"revision"`
+	Name      string            `json:"name"`
+	Path      string            `json:"path"`
+	Unsaved   bool              `json:"unsaved"`
+	Said      string            `json:"said"`
+	Length    float64           `json:"length"`
+	Status    live.Status       `json:"status"`
+	Handles   [][2]float32      `json:"handles"` // in pixels of the window
+	Panes     map[string][4]int `json:"panes"`   // x, y, width, height in pixels of the window
+	FrameRate float64           `json:"frame_rate"`
+}
+
+func (w *Window) state(s live.Status) State {
+	t := w.session.Table()
+	st := State{
+		Revision: w.session.Revision(), Name: t.Design().Name, Path: w.session.Path(), Unsaved: w.session.Unsaved(),
+		Said: w.foot.standing, Length: t.Length(), Status: s, Panes: map[string][4]int{},
+	}
+	k := w.win.Canvas().Scale()
+	for _, p := range w.editor.HandlePlaces() {
+		at := fyne.CurrentApp().Driver().AbsolutePositionForObject(w.editor).Add(p)
+		st.Handles = append(st.Handles, [2]float32{at.X * k, at.Y * k})
+	}
+	for name, p := range map[string]*pane.Surface{"table": w.editor.Surface, "rays": w.rays.Surface, "portrait": w.portrait.Surface} {
+		o := paneObject(w, name)
+		at := fyne.CurrentApp().Driver().AbsolutePositionForObject(o)
+		st.Panes[name] = [4]int{int(at.X * k), int(at.Y * k), p.Pixels().X, p.Pixels().Y}
+	}
+	return st
+}
+
+func paneObject(w *Window, name string) fyne.CanvasObject {
+	switch name {
+	case "table":
+		return w.editor
+	case "rays":
+		return w.rays
+	}
+	return w.portrait
+}

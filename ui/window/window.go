@@ -1,0 +1,209 @@
+// Package window puts the panes together: the frame around them, menus and
+// dialogs. It decides nothing about tables; it calls the session and the
+// engine.
+package window
+
+import (
+	"fmt"
+	"time"
+
+	"cavitywright/table"
+	"cavitywright/ui/live"
+	"cavitywright/ui/pane"
+	"cavitywright/ui/session"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/theme"
+	"fyne.io/fyne/v2/widget"
+)
+
+// Window is the designer's window.
+type Window struct {
+	app     fyne.App
+	win     fyne.Window
+	session *session.Session
+	engine  *live.Engine
+	desk    *pane.Desk
+	post    func(func())
+
+	editor   *pane.Editor
+	rays     *pane.Rays
+	portrait *pane.Portrait
+	values   *pane.Values
+
+	center   *fyne.Container
+	boxes    [3]fyne.CanvasObject // the three panes with their headers
+	columns  *container.Split
+	right    *container.Split
+	grown    int // which pane fills the window, -1 for none
+	head     *header
+	foot     *footer
+	tools    *choice
+	bundle   *choice
+	filling  *widget.Button
+	play     *widget.Button
+	commands []command
+	disk     disk
+	variant  fyne.ThemeVariant
+	watch    func(State)
+}
+
+// Options are what a caller may set.
+type Options struct {
+	// Post runs a function on the window's goroutine; nil means fyne.Do.
+	Post func(func())
+	// Recovery is the folder for copies that survive a crash; empty for none.
+	Recovery string
+	// Watch, if not nil, is told what the window shows, for tests.
+	Watch func(State)
+}
+
+// New makes the designer's window on a table. path is its file, empty for
+// none.
+func New(a fyne.App, t *table.Table, path string, o Options) *Window {
+	w := &Window{app: a, win: a.NewWindow("Cavitywright"), grown: -1, post: o.Post, watch: o.Watch}
+	if w.post == nil {
+		w.post = fyne.Do
+	}
+	w.variant = fyne.ThemeVariant(a.Preferences().IntWithFallback("variant", int(theme.VariantLight)))
+	a.Settings().SetTheme(dress{w.variant})
+	w.session = session.New(t, path)
+	w.engine = live.New(w.post, w.shown)
+	w.desk = &pane.Desk{Session: w.session, Engine: w.engine, Look: look(w.variant, 1)}
+	w.desk.Changed = w.show
+	w.disk = newDisk(w, o.Recovery)
+	w.foot = newFooter(w)
+	w.desk.Hint, w.desk.Note, w.desk.Say, w.desk.Point = w.foot.hint, w.foot.note, w.foot.say, w.point
+	w.editor, w.rays, w.portrait = pane.NewEditor(w.desk), pane.NewRays(w.desk), pane.NewPortrait(w.desk)
+	w.values = pane.NewValues(w.desk)
+	w.head = newHeader(w)
+	w.layout()
+	w.session.OnChange(w.changed)
+	a.Settings().AddListener(func(fyne.Settings) { w.post(w.changed) })
+	w.commands = w.allCommands()
+	w.win.SetMainMenu(w.menu())
+	w.win.Canvas().SetOnTypedKey(func(e *fyne.KeyEvent) { w.loose(e.Name) })
+	w.win.SetOnDropped(func(_ fyne.Position, uris []fyne.URI) { w.dropped(uris) })
+	w.win.SetCloseIntercept(w.close)
+	w.win.SetPadded(false)
+	w.win.Resize(fyne.NewSize(float32(a.Preferences().FloatWithFallback("width", 1280)), float32(a.Preferences().FloatWithFallback("height", 800))))
+	w.changed()
+	return w
+}
+
+// ShowAndRun shows the window and runs the program until it is closed.
+func (w *Window) ShowAndRun() {
+	w.app.Lifecycle().SetOnStarted(func() {
+		w.post(func() {
+			w.changed()
+			w.disk.offerRecovered()
+		})
+		time.AfterFunc(700*time.Millisecond, func() { w.post(w.editor.Breathe) })
+	})
+	w.app.Lifecycle().SetOnStopped(w.engine.Close)
+	w.win.ShowAndRun()
+}
+
+// Content is what the window shows, for tests without a display.
+func (w *Window) Content() fyne.Window { return w.win }
+
+// Session is the document at work.
+func (w *Window) Session() *session.Session { return w.session }
+
+// Close ends the engine.
+func (w *Window) Close() { w.engine.Close() }
+
+// layout puts the panes in their places.
+func (w *Window) layout() {
+	w.boxes[0] = container.NewBorder(w.editorBar(), container.NewPadded(w.values.Box), nil, nil, w.editor)
+	w.boxes[1] = container.NewBorder(w.raysBar(), nil, nil, nil, w.rays)
+	w.boxes[2] = container.NewBorder(w.portraitBar(), w.foot.readings, nil, nil, w.portrait)
+	w.right = container.NewVSplit(w.boxes[1], w.boxes[2])
+	w.columns = container.NewHSplit(w.boxes[0], w.right)
+	p := w.app.Preferences()
+	w.columns.SetOffset(p.FloatWithFallback("columns", 0.46))
+	w.right.SetOffset(p.FloatWithFallback("rows", 0.46))
+	w.center = container.NewStack(w.columns)
+	w.win.SetContent(container.NewBorder(w.head.box, w.foot.box, nil, nil, w.center))
+}
+
+// grow lets pane i fill the window, or puts it back.
+func (w *Window) grow(i int) {
+	if w.grown >= 0 || i < 0 {
+		i = -1
+	}
+	w.grown = i
+	w.center.RemoveAll()
+	if i >= 0 {
+		w.center.Add(w.boxes[i])
+	} else {
+		w.columns.Leading = w.boxes[0]
+		w.right.Leading, w.right.Trailing = w.boxes[1], w.boxes[2]
+		w.right.Refresh()
+		w.columns.Refresh()
+		w.center.Add(w.columns)
+	}
+	w.center.Refresh()
+	w.changed()
+}
+
+// changed brings everything in step with the session.
+func (w *Window) changed() {
+	scale := float64(w.win.Canvas().Scale())
+	w.desk.Look = look(w.variant, max(scale, 1))
+	w.head.refresh()
+	w.tools.show(int(w.session.Settings.Tool))
+	w.values.Refresh()
+	w.editor.Redraw()
+	w.foot.refresh()
+	w.show()
+	w.disk.changed()
+}
+
+// show asks the engine for what the session holds now.
+func (w *Window) show() {
+	r := live.Request{
+		Revision: w.session.Revision(), Table: w.session.Table(), Section: w.session.Section,
+		Settings: w.session.Settings, Look: w.desk.Look,
+		Portrait: w.portrait.Pixels(), Rays: w.rays.Pixels(), RaysView: w.rays.View,
+	}
+	if r.Portrait.X < 2 || r.Rays.X < 2 {
+		// A pane that is not on the screen has no size yet, or keeps its last.
+		if r.Portrait.X < 2 {
+			r.Portrait.X, r.Portrait.Y = 2, 2
+		}
+		if r.Rays.X < 2 {
+			r.Rays.X, r.Rays.Y = 2, 2
+		}
+	}
+	w.engine.Show(r)
+}
+
+// shown puts new frames on the screen.
+func (w *Window) shown(s live.Status) {
+	w.rays.Show()
+	w.portrait.Show()
+	w.foot.progress(s)
+	if w.watch != nil {
+		w.watch(w.state(s))
+	}
+}
+
+// point shows a place in all panes.
+func (w *Window) point(p pane.Place) {
+	w.editor.Point(p)
+	w.rays.Point(p)
+	w.portrait.Point(p)
+}
+
+// say shows one sentence.
+func (w *Window) say(format string, args ...any) { w.foot.say(fmt.Sprintf(format, args...)) }
+
+// toggleVariant changes from light to dark and back.
+func (w *Window) toggleVariant() {
+	w.variant = theme.VariantLight + theme.VariantDark - w.variant
+	w.app.Preferences().SetInt("variant", int(w.variant))
+	w.app.Settings().SetTheme(dress{w.variant})
+	w.changed()
+}
