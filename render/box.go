@@ -98,7 +98,7 @@ func (b Box) crossing(side int, p, q Point) Point {
 	// coordinates may overflow, that of their halves cannot.
 	dp, dq := b.depth(side, p)/2, b.depth(side, q)/2
 	t := dp / (dp - dq)
-	m := Point{p.X + 2*t*(q.X/2-p.X/2), p.Y + 2*t*(q.Y/2-p.Y/2)}
+	m := Point{(1-t)*p.X + t*q.X, (1-t)*p.Y + t*q.Y}
 	switch side {
 	case 0:
 		m.X = b.Min.X

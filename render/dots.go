@@ -221,15 +221,29 @@ func (p Plot) numbersTop(look Look) float64 {
 	return max(p.Frame.Max.Y, p.Strip.Max.Y) + labelGap*look.Small
 }
 
-// drawTitles sets the axis labels, each centred on its axis.
+// drawTitles sets the axis labels, each centred on its axis as far as the box
+// allows.
 func drawTitles(c Canvas, p Plot, look Look) {
 	mid := p.Frame.Center()
-	if p.xTitle != "" {
-		y := p.numbersTop(look) + (letter.CapHeight+titleGap)*look.Small
-		c.Text(Text{At: Point{mid.X, y}, Size: look.Text, String: p.xTitle, H: Center, V: Top, Color: look.Ink})
+	y := p.numbersTop(look) + (letter.CapHeight+titleGap)*look.Small
+	drawTitle(c, Text{At: Point{mid.X, y}, String: p.xTitle, V: Top}, p.Box, look)
+	x := p.Box.Min.X + look.Margin + (letter.Ascent-letter.Descent)*look.Text
+	drawTitle(c, Text{At: Point{x, mid.Y}, String: p.yTitle, Turn: Upward}, p.Box, look)
+}
+
+// drawTitle sets one axis label, in the smaller type where the box is too short
+// for it, and not at all where even that is too long.
+func drawTitle(c Canvas, t Text, box Box, look Look) {
+	t.H, t.Color = Center, look.Ink
+	at, lo, hi := &t.At.X, box.Min.X, box.Max.X
+	if t.Turn == Upward {
+		at, lo, hi = &t.At.Y, box.Min.Y, box.Max.Y
 	}
-	if p.yTitle != "" {
-		x := p.Box.Min.X + look.Margin + (letter.Ascent-letter.Descent)*look.Text
-		c.Text(Text{At: Point{x, mid.Y}, Size: look.Text, String: p.yTitle, H: Center, Turn: Upward, Color: look.Ink})
+	for _, t.Size = range [...]float64{look.Text, look.Small} {
+		if w := t.Width(); w > 0 && w <= hi-lo {
+			*at = min(max(*at, lo+w/2), hi-w/2)
+			c.Text(t)
+			return
+		}
 	}
 }

@@ -2,6 +2,7 @@ package render
 
 import (
 	"math"
+	"regexp"
 	"strconv"
 	"strings"
 
@@ -40,6 +41,16 @@ func decimal(n int64, exp int) string {
 func superscript(n int) string {
 	return strings.NewReplacer("-", "⁻", "0", "⁰", "1", "¹", "2", "²", "3", "³", "4", "⁴",
 		"5", "⁵", "6", "⁶", "7", "⁷", "8", "⁸", "9", "⁹").Replace(strconv.Itoa(n))
+}
+
+// plainUnit finds the spellings of units that files use in plain letters.
+var plainUnit = regexp.MustCompile(`\b(u?)(m|cm|mm|nm)([23]?)\b`)
+
+// unitText is a unit as it is printed: um as µm, mm2 as mm².
+func unitText(unit string) string {
+	return plainUnit.ReplaceAllStringFunc(unit, func(u string) string {
+		return strings.NewReplacer("u", "µ", "2", "²", "3", "³").Replace(u)
+	})
 }
 
 // proper replaces the hyphen of a formatted number by the minus sign.

@@ -75,3 +75,14 @@ func TestDecimalHasNoNoise(t *testing.T) {
 		}
 	}
 }
+
+func TestUnitText(t *testing.T) {
+	for in, want := range map[string]string{
+		"um": "µm", "1/um": "1/µm", "um2": "µm²", "um²": "µm²", "mm": "mm", "mm3": "mm³", "m2": "m²",
+		"": "", "1/bounce": "1/bounce", "rad": "rad", "sum": "sum", "µm": "µm", "°": "°",
+	} {
+		if got := unitText(in); got != want {
+			t.Errorf("%q is printed %q, want %q", in, got, want)
+		}
+	}
+}

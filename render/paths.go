@@ -12,6 +12,9 @@ func drawPaths(c Canvas, f figure.Paths, box Box, look Look) {
 	room, caption, _ := pathsRoom(f, box, look)
 	v := Fit(Bounds(f), room, look)
 	DrawPaths(c, f, v, look)
+	if room == box {
+		return // too small for any writing
+	}
 	DrawScaleBar(c, f.Unit, v, NewBox(room.Min.X, room.Max.Y, room.W(), barHeight(look)), look)
 	drawCaption(c, caption, box.Min.X+look.Margin, box.Max.Y-look.Margin, look)
 }
@@ -128,7 +131,7 @@ func DrawScaleBar(c Canvas, unit string, v View, box Box, look Look) {
 		label = decimal(s.mant, 0) + " × 10" + superscript(s.exp)
 	}
 	if unit != "" {
-		label += " " + unit
+		label += " " + unitText(unit)
 	}
 	y := look.snap(box.Min.Y + box.H()/2)
 	x0, x1 := look.snap(box.Min.X+look.Margin), look.snap(box.Min.X+look.Margin+length)

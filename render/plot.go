@@ -270,7 +270,7 @@ func title(a figure.Axis, exp int) string {
 	if a.Label == "" {
 		return ""
 	}
-	unit := a.Unit
+	unit := unitText(a.Unit)
 	if exp != 0 {
 		unit = strings.TrimSpace("10" + superscript(exp) + " " + unit)
 	}

@@ -15,10 +15,11 @@ type scalarRow struct {
 }
 
 // columns is the left edges of a table of readings, in canvas units from the
-// left; values end at value.
+// left; values end at value. Lines down to a value and to its note are 0 where
+// they stand beside the name.
 type columns struct {
 	value, err, note, right float64
-	noteBelow               bool
+	valueLine, noteLine     int
 }
 
 // rowGap is the height from one reading to the next, beyond its lines, in
@@ -43,7 +44,7 @@ func scalarRows(f figure.Scalars, width float64, look Look) ([]scalarRow, column
 		if w.Error != "" {
 			r.err = "± " + w.Error
 		}
-		r.err = strings.TrimSpace(r.err + " " + s.Unit)
+		r.err = strings.TrimSpace(r.err + " " + unitText(s.Unit))
 		rows[i] = r
 		name = max(name, size*letter.Width(r.name, letter.Bold))
 		value = max(value, size*letter.Width(r.value, letter.Regular))
@@ -55,7 +56,11 @@ func scalarRows(f figure.Scalars, width float64, look Look) ([]scalarRow, column
 	c.err = c.value + 0.3*size
 	c.note = c.err + err + cellGap*size
 	if c.right-c.note < leastNote*size {
-		c.note, c.noteBelow = look.Margin+cellGap*size, true
+		c.note, c.noteLine = look.Margin+cellGap*size, 1
+	}
+	if c.err+err > c.right {
+		c.value, c.valueLine, c.noteLine = look.Margin+cellGap*size+value, 1, 2
+		c.err = c.value + 0.3*size
 	}
 	for i, s := range f.Rows {
 		rows[i].note = wrap([]string{remark(s)}, c.right-c.note, size)
@@ -85,12 +90,7 @@ func grouped(n int64) string {
 }
 
 // lines is the number of lines of type that a reading takes.
-func (r scalarRow) lines(c columns) int {
-	if c.noteBelow {
-		return 1 + len(r.note)
-	}
-	return max(1, len(r.note))
-}
+func (r scalarRow) lines(c columns) int { return max(c.valueLine+1, c.noteLine+len(r.note)) }
 
 // scalarsHeight is the height of the whole table.
 func scalarsHeight(f figure.Scalars, width float64, look Look) float64 {
@@ -133,21 +133,17 @@ func drawScalars(c Canvas, f figure.Scalars, box Box, look Look) {
 
 // drawScalar sets one reading, its first baseline at from.
 func drawScalar(c Canvas, r scalarRow, col columns, from Point, look Look) {
-	set := func(x, line float64, s string, h HAlign, w letter.Weight) {
+	set := func(x float64, line int, s string, h HAlign, w letter.Weight) {
 		if s == "" {
 			return
 		}
-		c.Text(Text{At: Point{from.X + x, from.Y + line*lineHeight*look.Small}, Size: look.Small,
+		c.Text(Text{At: Point{from.X + x, from.Y + float64(line)*lineHeight*look.Small}, Size: look.Small,
 			String: s, H: h, Weight: w, Color: look.Ink})
 	}
 	set(look.Margin, 0, r.name, Left, letter.Bold)
-	set(col.value, 0, r.value, Right, letter.Regular)
-	set(col.err, 0, r.err, Left, letter.Regular)
-	first := 0.0
-	if col.noteBelow {
-		first = 1
-	}
+	set(col.value, col.valueLine, r.value, Right, letter.Regular)
+	set(col.err, col.valueLine, r.err, Left, letter.Regular)
 	for i, line := range r.note {
-		set(col.note, first+float64(i), line, Left, letter.Regular)
+		set(col.note, col.noteLine+i, line, Left, letter.Regular)
 	}
 }

@@ -111,6 +111,10 @@ func drawErrors(c Canvas, curve figure.Curve, p Plot, look Look) {
 	flush()
 }
 
+// legendShare is the part of the frame's width and height that a legend may
+// take before it is left out.
+const legendShare = 0.7
+
 // drawLegend names the curves in the corner of the frame where the fewest of
 // their points lie.
 func drawLegend(c Canvas, f figure.Series, p Plot, look Look) {
@@ -127,6 +131,9 @@ func drawLegend(c Canvas, f figure.Series, p Plot, look Look) {
 	sample := 2.2 * look.Small
 	w := sample + (wide+0.5)*look.Small
 	h := float64(rows-1)*lineHeight*look.Small + letter.CapHeight*look.Small
+	if w > legendShare*p.Frame.W() || h > legendShare*p.Frame.H() {
+		return
+	}
 	at := quietCorner(f, p, w, h, look)
 	c.Fill(at.Inset(-0.35*look.Small).Path(), Fade(look.Paper, 0.8))
 	y := at.Min.Y + letter.CapHeight/2*look.Small

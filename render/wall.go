@@ -13,7 +13,7 @@ func drawWall(c Canvas, l figure.Line, v View, look Look) {
 	pts := wallPoints(l, v)
 	if len(pts) > 1 {
 		band := min(look.Wall, bandLimit(pts, l.Closed))
-		drawBand(c, outward(pts, band/2, l.Closed), band, v, look)
+		drawBand(c, outward(pts, band/2, l.Closed), band, l.Closed, v, look)
 	}
 	var p Path
 	appendLine(&p, l, v)
@@ -84,19 +84,22 @@ func normal(pts []wallPoint, i int) (Point, bool) {
 // bandSteps is how many colours the band of a whole wall has.
 const bandSteps = 192
 
-// drawBand strokes a wall stretch by stretch, one colour each. Neighbouring
-// stretches share a point and have round ends, so nothing gapes; the colour
-// changes too little from one to the next for the ends to show.
-func drawBand(c Canvas, pts []wallPoint, width float64, v View, look Look) {
+// lap is how far, in widths of the band, a stretch reaches back over the one
+// before it: enough that no seam shows, and too little for the twice drawn
+// edge to show as a bead.
+const lap = 0.12
+
+// drawBand strokes a wall stretch by stretch, one colour each, with straight
+// ends that overlap a little.
+func drawBand(c Canvas, pts []wallPoint, width float64, closed bool, v View, look Look) {
 	clip := v.Box.Inset(-width)
 	step := func(q wallPoint) int { return int(math.Floor(q.at * bandSteps)) }
 	var p Path
 	flush := func(k int) {
 		color := look.Hue((float64(k) + 0.5) / bandSteps)
 		if q := ClipStroke(p, clip, v.Box.W()); len(q.Ops) > 0 {
-			c.Stroke(q, Pen{Width: width, Color: color})
+			c.Stroke(q, Pen{Width: width, Color: color, Cap: Butt})
 		}
-		p.Reset()
 	}
 	p.MoveTo(pts[0].X, pts[0].Y)
 	k := step(pts[0])
@@ -105,12 +108,28 @@ func drawBand(c Canvas, pts []wallPoint, width float64, v View, look Look) {
 		for step(b) > k && b.at > a.at {
 			t := (float64(k+1)/bandSteps - a.at) / (b.at - a.at)
 			q := Point{a.X + t*(b.X-a.X), a.Y + t*(b.Y-a.Y)}
+			back := toward(q, p.Points[len(p.Points)-1], lap*width)
 			p.LineTo(q.X, q.Y)
 			flush(k)
-			p.MoveTo(q.X, q.Y)
+			p.Reset()
+			p.MoveTo(back.X, back.Y)
+			p.LineTo(q.X, q.Y)
 			k++
 		}
 		p.LineTo(b.X, b.Y)
 	}
+	if closed {
+		on := toward(pts[0].Point, pts[1].Point, lap*width)
+		p.LineTo(on.X, on.Y)
+	}
 	flush(k)
+}
+
+// toward is the point a distance d on the way from a to b, at most b.
+func toward(a, b Point, d float64) Point {
+	h := math.Hypot(b.X-a.X, b.Y-a.Y)
+	if h <= d {
+		return b
+	}
+	return Point{a.X + (b.X-a.X)*d/h, a.Y + (b.Y-a.Y)*d/h}
 }

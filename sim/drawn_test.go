@@ -36,13 +36,11 @@ func seedOf(t testing.TB) uint64 {
 // drawing draws random tables and counts how many designs were no table.
 type drawing struct {
 	*rand.Rand
-	// flattest is the decadic logarithm of the least bulge of an arc.
-	flattest       float64
 	refused, drawn int
 }
 
 func draw(seed, number uint64) *drawing {
-	return &drawing{Rand: rand.New(rand.NewPCG(seed, number)), flattest: -3}
+	return &drawing{Rand: rand.New(rand.NewPCG(seed, number))}
 }
 
 func (r *drawing) between(lo, hi float64) float64 { return lo + (hi-lo)*r.Float64() }
@@ -109,8 +107,8 @@ func (r *drawing) post(tab *table.Table) table.Item {
 		f := tab.At(r.Float64() * tab.Length())
 		gap := size * r.power(-6, -2)
 		at := r2.Add(f.Point, r2.Scale(radius+gap, f.Normal()))
-		disc, _ := shape.New("disc", param.Values{radius})
-		return table.Item{Shape: disc, Role: table.Post, Place: plane.Similarity{Shift: at, Scale: 1}}
+		disc, _ := shape.New("disc", param.Values{1})
+		return table.Item{Shape: disc, Role: table.Post, Place: plane.Similarity{Shift: at, Scale: radius}}
 	}
 	at := r.within(tab)
 	place := plane.Similarity{Shift: at, Angle: r.between(0, 2*math.Pi), Scale: radius}
@@ -252,7 +250,7 @@ func (r *drawing) freeform() shape.Shape {
 		case shape.Bowed:
 			n.Bulge = r.between(-0.5, 0.9)
 			if r.odds(0.2) {
-				n.Bulge = r.sign() * r.power(r.flattest, -2)
+				n.Bulge = r.sign() * r.power(-10, -2)
 			}
 		case shape.Curved:
 			n.Out = r.handle(chord)
@@ -306,7 +304,7 @@ func (r *drawing) sketch() shape.Shape {
 	case 0:
 		return s.closedThrough(r2.Vec{X: r.between(-0.1, 0.1), Y: r.between(-0.1, 0.1)})
 	case 1:
-		return s.closedBy(r.sign() * r.power(r.flattest, -2))
+		return s.closedBy(r.sign() * r.power(-10, -2))
 	}
 	return s.closedBy(r.between(-0.4, 0.9))
 }
@@ -342,8 +340,8 @@ func dump(d table.Design) string {
 					fmt.Fprintf(&b, "\n    line (%v, %v) to (%v, %v)", c.A.X, c.A.Y, c.B.X, c.B.Y)
 				case curve.Arc:
 					fmt.Fprintf(&b, "\n    arc centre (%v, %v) axes %v %v tilt %v from %v sweep %v", c.Centre.X, c.Centre.Y, c.Major, c.Minor, c.Tilt, c.From, c.Sweep)
-				default:
-					fmt.Fprintf(&b, "\n    %T", c)
+				case curve.Cubic:
+					fmt.Fprintf(&b, "\n    cubic %v", c.P)
 				}
 			}
 		default:

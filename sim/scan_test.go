@@ -21,6 +21,8 @@ type scan struct {
 	tab     *table.Table
 	size    float64 // diagonal of the wall's box
 	eps     float64 // rounding of a distance from a line
+	touch   float64 // height over the line that is not told from none
+	corner  float64 // distance of a corner from the line that is not told from none
 	runs    []run
 	corners []corner
 	found   []bracket
@@ -33,6 +35,7 @@ type run struct {
 	s0, s1 float64
 	s      []float64
 	at     []r2.Vec
+	turn   []float64 // by how much the wall turns at most since the sample before
 }
 
 type corner struct {
@@ -62,19 +65,26 @@ const (
 	// which the chord is halved: an arc has it when it turns by 0.048 rad.
 	sampleSag = 0.006
 	// sampleTurn bounds the turn between two samples (radians), with a margin
-	// for curves that turn unevenly. Where the distances a and b at the ends
+	// for curves that turn unevenly; where the height over the chord is less
+	// than sampleSag it is taken as turnPerSag of it and leastTurn. Where the distances a and b at the ends
 	// of an interval of length h have one sign and are greater than turn h/2,
 	// the wall does not reach the line between them; where they differ in sign
 	// and by more than 2 turn h, it crosses once.
 	sampleTurn = 0.08
+	turnPerSag = 40
+	leastTurn  = 1e-7
 	// touchTol is the height over the ray's line, relative to the size of the
 	// table, within which the scan does not say whether the wall is touched:
 	// some thousand roundings. It is a ray that meets a wall of that size at
 	// 1.5e-6 rad, fifteen times the angle at which the tracer gives up.
 	touchTol = 1e-12
 	// cornerTol is the distance of a corner from the line, relative to the
-	// size, within which the scan does not say on which side it passes.
+	// size, within which the scan does not say on which side it passes. Both are
+	// larger where the table is small and far from the origin.
 	cornerTol = 1e-11
+	// slant is the inverse sine of the least angle at which a wall next to
+	// such a corner is met.
+	slant = 1e3
 )
 
 func newScan(tab *table.Table) *scan {
@@ -82,6 +92,8 @@ func newScan(tab *table.Table) *scan {
 	far := math.Max(math.Max(math.Abs(b.Min.X), math.Abs(b.Max.X)), math.Max(math.Abs(b.Min.Y), math.Abs(b.Max.Y)))
 	c := &scan{tab: tab, size: plane.Diagonal(b)}
 	c.eps = 0x1p-51 * math.Max(far, c.size)
+	c.touch = math.Max(touchTol*c.size, 256*c.eps)
+	c.corner = math.Max(cornerTol*c.size, 1024*c.eps)
 	joints := tab.Joints()
 	for _, j := range joints {
 		if j.Continuity == table.Corner {
@@ -130,20 +142,21 @@ func (c *scan) sampled(s0, s1 float64, end r2.Vec, loop float64) run {
 	add = func(a, b float64, pa, pb r2.Vec) {
 		chord := r2.Sub(pb, pa)
 		long := r2.Norm2(chord)
-		bent := b-a > 1.2*math.Sqrt(long)
+		sag := 0.0
 		for _, f := range []float64{0.37, 0.71} {
-			bent = bent || math.Abs(plane.Cross(chord, r2.Sub(point(a+f*(b-a)), pa))) > sampleSag*long
+			sag = math.Max(sag, math.Abs(plane.Cross(chord, r2.Sub(point(a+f*(b-a)), pa)))/long)
 		}
-		if bent && b-a > 1e-11*(s1-s0) && b-a > 64*c.eps {
+		if (!(sag <= sampleSag) || b-a > 1.2*math.Sqrt(long)) && b-a > 1e-11*(s1-s0) && b-a > 64*c.eps {
 			m := a + 0.5*(b-a)
 			pm := point(m)
 			add(a, m, pa, pm)
 			add(m, b, pm, pb)
 			return
 		}
-		r.s, r.at = append(r.s, b), append(r.at, pb)
+		turn := math.Min(sampleTurn, turnPerSag*sag+leastTurn)
+		r.s, r.at, r.turn = append(r.s, b), append(r.at, pb), append(r.turn, turn)
 	}
-	r.s, r.at = append(r.s, s0), append(r.at, point(s0))
+	r.s, r.at, r.turn = append(r.s, s0), append(r.at, point(s0)), append(r.turn, 0)
 	for i := range at[1:] {
 		add(at[i], at[i+1], point(at[i]), point(at[i+1]))
 	}
@@ -214,23 +227,23 @@ func (c *scan) firstHit(q ray) answer {
 		for k := 1; k < len(r.s); k++ {
 			after := q.sample(r.s[k], r.at[k])
 			if own && q.origin >= before.s && q.origin < after.s {
-				a.near = c.aroundOrigin(r, q, before, after)
+				a.near = c.aroundOrigin(r, q, before, after, r.turn[k])
 			} else {
-				c.look(r, q, before, after, sampleTurn)
+				c.look(r, q, before, after, r.turn[k])
 			}
 			before = after
 		}
 	}
 	for _, k := range c.corners {
-		if d, u := math.Abs(q.left(k.at)), q.along(k.at); d <= cornerTol*c.size && u > -cornerTol*c.size && k.s != q.origin {
+		if d, u := math.Abs(q.left(k.at)), q.along(k.at); d <= c.corner && u > -slant*c.corner && k.s != q.origin {
 			a.events = append(a.events, event{kind: atCorner, s: k.s, u: u})
 		}
 	}
 	best := event{u: math.Inf(1)}
 	meet := func(e event) {
 		switch {
-		case e.u+e.wide < -touchTol*c.size:
-		case e.u-e.wide < touchTol*c.size:
+		case e.u+e.wide < -c.touch:
+		case e.u-e.wide < c.touch:
 			a.near = true
 		case e.kind == touch:
 			a.events = append(a.events, e)
@@ -239,7 +252,7 @@ func (c *scan) firstHit(q ray) answer {
 		}
 	}
 	for _, z := range c.zones {
-		e := event{kind: touch, s: 0.5 * (z.a + z.b), u: z.u, wide: 2*(z.b-z.a) + cornerTol*c.size}
+		e := event{kind: touch, s: 0.5 * (z.a + z.b), u: z.u, wide: 2*(z.b-z.a) + c.corner}
 		if z.crossed {
 			e.kind = crossing
 		}
@@ -254,7 +267,12 @@ func (c *scan) firstHit(q ray) answer {
 	}
 	events := a.events[:0]
 	for _, e := range a.events {
-		if e.u-e.wide <= best.u+best.wide+touchTol*c.size {
+		late := c.touch
+		if e.kind == atCorner {
+			// The wall before a corner is met at a slant.
+			late = slant * c.corner
+		}
+		if e.u-e.wide <= best.u+best.wide+late {
 			events = append(events, e)
 		}
 	}
@@ -270,7 +288,7 @@ func (c *scan) firstHit(q ray) answer {
 // it, in steps that approach it geometrically; the sign next to it is known
 // from the direction of the wall there. It reports whether the start is too
 // near to something to be told from it.
-func (c *scan) aroundOrigin(r *run, q ray, before, after sample) bool {
+func (c *scan) aroundOrigin(r *run, q ray, before, after sample, turn float64) bool {
 	f := c.tab.At(q.origin)
 	slope := plane.Cross(q.dir, f.Tangent)
 	least := 64*c.eps/math.Abs(slope) + 4*r2.Norm(r2.Sub(f.Point, q.from))
@@ -292,7 +310,7 @@ func (c *scan) aroundOrigin(r *run, q ray, before, after sample) bool {
 		near = near || (inner.d > 0) != (slope*side > 0)
 		for h := least; inner != end; h *= 2 {
 			outer := at(2 * h)
-			turn := sampleTurn * math.Min(1, 2*h/(after.s-before.s))
+			turn := turn * math.Min(1, 2*h/(after.s-before.s))
 			if side > 0 {
 				c.look(r, q, inner, outer, turn)
 			} else {
@@ -309,12 +327,12 @@ func (c *scan) aroundOrigin(r *run, q ray, before, after sample) bool {
 func (c *scan) look(r *run, q ray, a, b sample, turn float64) {
 	h := b.s - a.s
 	// A chord is no longer than its arc.
-	if math.Max(a.u, b.u)+h < -touchTol*c.size {
+	if math.Max(a.u, b.u)+h < -c.touch {
 		return
 	}
 	da, db := math.Abs(a.d), math.Abs(b.d)
 	parted := (a.d >= 0) != (b.d >= 0)
-	switch tiny := touchTol * c.size; {
+	switch tiny := c.touch; {
 	case !parted && math.Min(da, db) > 0.5*turn*h:
 	case parted && da+db > 2*turn*h:
 		c.found = append(c.found, bracket{r, a.s, b.s, a.d >= 0, math.Min(a.u, b.u) - h})

@@ -26,6 +26,7 @@ func (s *span) slope(t float64, r *ray) (g, bend float64) {
 // loLeft and its opposite (true: positive): Newton's method held to the
 // bracket, from the guess t.
 func (s *span) crossing(lo, hi, t float64, loLeft bool, r *ray) float64 {
+	last := math.Inf(1)
 	for range newtonSteps {
 		f, slope := s.distance(t, r)
 		if (f >= 0) == loLeft {
@@ -33,12 +34,14 @@ func (s *span) crossing(lo, hi, t float64, loLeft bool, r *ray) float64 {
 		} else {
 			hi = t
 		}
-		next := t - f/slope
-		if !between(next, lo, hi) {
-			next = 0.5 * (lo + hi)
+		step := f / slope
+		if s.settled(math.Abs(step), last, t) {
+			return t
 		}
-		if math.Abs(next-t) <= lastBit*math.Abs(hi-lo)+lastBit*math.Abs(t) {
-			return next
+		next := t - step
+		last = math.Abs(step)
+		if !between(next, lo, hi) {
+			next, last = 0.5*(lo+hi), math.Inf(1)
 		}
 		t = next
 	}
@@ -48,7 +51,7 @@ func (s *span) crossing(lo, hi, t float64, loLeft bool, r *ray) float64 {
 // extremum is the zero of slope between lo and hi, where it has different
 // signs, with the sign loLeft at lo.
 func (s *span) extremum(lo, hi float64, loLeft bool, r *ray) float64 {
-	t := 0.5 * (lo + hi)
+	t, last := 0.5*(lo+hi), math.Inf(1)
 	for range newtonSteps {
 		g, bend := s.slope(t, r)
 		if (g >= 0) == loLeft {
@@ -56,16 +59,25 @@ func (s *span) extremum(lo, hi float64, loLeft bool, r *ray) float64 {
 		} else {
 			hi = t
 		}
-		next := t - g/bend
-		if !between(next, lo, hi) {
-			next = 0.5 * (lo + hi)
+		step := g / bend
+		if s.settled(math.Abs(step), last, t) {
+			return t
 		}
-		if math.Abs(next-t) <= lastBit*math.Abs(t) || next == t {
-			return next
+		next := t - step
+		last = math.Abs(step)
+		if !between(next, lo, hi) {
+			next, last = 0.5*(lo+hi), math.Inf(1)
 		}
 		t = next
 	}
 	return t
+}
+
+// settled reports whether Newton's iteration is at its end: its step is the
+// last bit of the parameter, or steps that are already tiny no longer shrink,
+// which is the rounding of the distance.
+func (s *span) settled(step, last, t float64) bool {
+	return step <= lastBit*(s.width+math.Abs(t)) || step < tinyStep*s.width && step > 0.5*last
 }
 
 const (
@@ -73,6 +85,9 @@ const (
 	// alone exhausts a double in 60.
 	newtonSteps = 100
 	lastBit     = 0x1p-52
+	// tinyStep, relative to the span, is where Newton's steps must be shrinking
+	// quadratically.
+	tinyStep = 1e-6
 )
 
 // between reports whether x lies strictly between lo and hi, in either order.

@@ -43,6 +43,7 @@ type span struct {
 	sense      float64
 	kappa      float64 // Segment, Circle
 	t0, t1     float64
+	width      float64 // |t1 - t0|
 	s0         float64
 	length     float64
 	src        *curve.Span
@@ -75,7 +76,7 @@ func compileSpan(p *table.Piece, pieces []table.Piece) span {
 		kind: p.Kind, whole: p.Whole(), cornerA: p.Corner, cornerB: pieces[p.Next].Corner,
 		focusing: p.Turn > 0, next: int32(p.Next), prev: int32(p.Prev),
 		a: p.A, b: p.B, centre: p.Centre, axis: p.Axis, radius: p.Radius, minor: p.Minor,
-		sense: p.Sense(), t0: p.T0, t1: p.T1, s0: p.S0, length: p.Length, src: &p.Span,
+		sense: p.Sense(), t0: p.T0, t1: p.T1, width: math.Abs(p.T1 - p.T0), s0: p.S0, length: p.Length, src: &p.Span,
 	}
 	s.tanA, s.tanB = p.Ends()
 	switch p.Kind {

@@ -58,9 +58,16 @@ func (v *coverage) add(points []render.Point) {
 	}
 }
 
+// level is the height, in pixels, of an edge that adds too little to be seen
+// even a million times, and whose slope might be no number.
+const level = 1e-9
+
 // edge adds one edge from (x0, y0) down to (x1, y1), with the sign of its
 // direction.
 func (v *coverage) edge(x0, y0, x1, y1, sign float64) {
+	if y1-y0 < level {
+		return
+	}
 	slope := (x1 - x0) / (y1 - y0)
 	w := float64(v.area.Dx())
 	first, last := max(int(y0), 0), min(int(math.Ceil(y1)), v.area.Dy())

@@ -47,7 +47,7 @@ func PixelSize(widthMM, heightMM, dpi float64) (w, h int) {
 func (c *Canvas) Image() *image.RGBA { return c.img }
 
 // flatness is the distance, in pixels, within which chords stand for a curve.
-const flatness = 0.1
+const flatness = 0.05
 
 // Fill paints the inside of a path, even-odd.
 func (c *Canvas) Fill(p render.Path, col color.RGBA) {

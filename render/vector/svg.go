@@ -54,13 +54,14 @@ func escaped(text string) string {
 	return b.String()
 }
 
-// Fill paints the inside of a path, even-odd.
+// Fill paints the inside of a path, even-odd. That nothing is stroked is said,
+// though it is the rule, for viewers that carry strokes over.
 func (s *SVG) Fill(p render.Path, c color.RGBA) {
 	d := s.steps(within(p, s.page, render.ClipFill))
 	if d == "" {
 		return
 	}
-	fmt.Fprintf(&s.body, "<path d=\"%s\" %s fill-rule=\"evenodd\"/>\n", d, paint("fill", c))
+	fmt.Fprintf(&s.body, "<path d=\"%s\" %s fill-rule=\"evenodd\" stroke=\"none\"/>\n", d, paint("fill", c))
 }
 
 // Stroke draws along a path.
@@ -127,7 +128,7 @@ func (s *SVG) Text(t render.Text) {
 		return
 	}
 	b := append([]byte("<text "), place(at, t.Turn)...)
-	b = append(b, fmt.Sprintf(" font-family=\"%s, %s, Helvetica, Arial, sans-serif\" font-size=\"%s\" %s",
+	b = append(b, fmt.Sprintf(" font-family=\"%s, %s, Helvetica, Arial, sans-serif\" font-size=\"%s\" %s stroke=\"none\"",
 		quoted(letter.Text), letter.Signs.Family(), number(nil, t.Size), paint("fill", t.Color))...)
 	if t.Weight == letter.Bold {
 		b = append(b, " font-weight=\"bold\""...)
@@ -146,11 +147,10 @@ func quoted(f letter.Font) string { return "'" + f.Family() + "'" }
 // place is where a text stands and how it is turned.
 func place(at render.Point, turn render.Turn) string {
 	x, y := number(nil, at.X), number(nil, at.Y)
-	text := fmt.Sprintf("x=\"%s\" y=\"%s\"", x, y)
 	if turn == render.Upward {
-		text += fmt.Sprintf(" transform=\"rotate(-90 %s %s)\"", x, y)
+		return fmt.Sprintf("transform=\"translate(%s %s) rotate(-90)\"", x, y)
 	}
-	return text
+	return fmt.Sprintf("x=\"%s\" y=\"%s\"", x, y)
 }
 
 // Dots paints discs: one path of strokes without length, whose round ends are

@@ -26,20 +26,18 @@ func (t *EscapeTally) Decay(a, b int) (d Decay, ok bool) {
 	if to.Rays == 0 || len(t.rows) < 2 {
 		return d, false
 	}
-	shift, ok := t.solve(a, b, &from, &to)
-	if !ok {
+	if d.Rate, ok = t.solve(a, b, &from, &to); !ok {
 		return d, false
 	}
-	d.Rate = t.of.Rate + shift
-	_, da := t.near(a, &from, shift)
-	_, db := t.near(b, &to, shift)
+	_, da := t.sum(a, &from, d.Rate)
+	_, db := t.sum(b, &to, d.Rate)
 	// To first order lattice r moves the solution by its share of the
 	// equation's residue.
 	n := float64(len(t.rows))
 	square := 0.0
 	for r := range t.rows {
-		sa, _ := t.near(a, &t.rows[r][a], shift)
-		sb, _ := t.near(b, &t.rows[r][b], shift)
+		sa, _ := t.sum(a, &t.rows[r][a], d.Rate)
+		sb, _ := t.sum(b, &t.rows[r][b], d.Rate)
 		x := n * (sa - sb) / (db - da)
 		d.parts = append(d.parts, x)
 		square += x * x
@@ -61,32 +59,47 @@ func (d Decay) Apart(o Decay) float64 {
 }
 
 // solve is Newton's method on the logarithms of the two sums, which are nearly
-// straight in the rate. shift counts from the guessed rate.
-func (t *EscapeTally) solve(a, b int, from, to *Left) (shift float64, ok bool) {
+// straight in the rate, held between 0, where the later sum is at most the
+// earlier, and the last node.
+func (t *EscapeTally) solve(a, b int, from, to *Left) (rate float64, ok bool) {
+	most := t.of.step() * (nodes - 1)
+	if x, _ := t.sum(b, to, most); !(x > 0) {
+		return 0, false
+	} else if y, _ := t.sum(a, from, most); !(x >= y) {
+		return 0, false
+	}
+	rate = t.of.Rate
 	for range 50 {
-		sa, da := t.near(a, from, shift)
-		sb, db := t.near(b, to, shift)
-		step := math.Log(sb/sa) / (db/sb - da/sa)
-		shift -= step
-		if math.IsNaN(shift) {
+		sa, da := t.sum(a, from, rate)
+		sb, db := t.sum(b, to, rate)
+		next := rate - math.Log(sb/sa)/(db/sb-da/sa)
+		if math.IsNaN(next) {
 			return 0, false
 		}
-		if math.Abs(step) <= 1e-13*(math.Abs(t.of.Rate)+math.Abs(shift)) {
-			return shift, true
+		next = min(max(next, 0), most)
+		if math.Abs(next-rate) <= 1e-13*most {
+			return next, true
 		}
+		rate = next
 	}
 	return 0, false
 }
 
-// near is the sum over what is left at mark m of w exp((Rate + shift) t), and
-// its derivative by shift.
-func (t *EscapeTally) near(m int, l *Left, shift float64) (sum, slope float64) {
+// sum is the sum over what is left at mark m of w exp(rate t), and its
+// derivative by the rate: the expansion about the nearest node.
+func (t *EscapeTally) sum(m int, l *Left, rate float64) (sum, slope float64) {
+	step := t.of.step()
+	node := 0
+	if step > 0 {
+		node = min(int(math.Round(rate/step)), nodes-1)
+	}
+	shift := rate - float64(node)*step
 	mean := float64(t.of.Marks[m]) * t.of.Flight
 	term, series, by := 1.0, 0.0, 0.0
 	for k := range terms {
-		series += term * l.sums[k]
+		series += term * l.sums[node][k]
 		if k+1 < terms {
-			by += term * l.sums[k+1]
+			by += term * l.sums[node][k+1]
 		}
 		term *= shift / float64(k+1)
 	}

@@ -21,8 +21,8 @@ type Escape struct {
 	Points Fibonacci // of each lattice
 	Shifts []Shift   // one a lattice
 	Marks  []int     // counts of bounces, ascending, at least 1
-	// Rate is the guess (1/length) about which the sums over survivors are
-	// expanded, Flight the guess of the survivors' mean flight.
+	// Rate is a guess (1/length), Flight the mean flight of what is left: the
+	// sums are kept in a form that is exact for rates up to 2 Rate.
 	Rate, Flight float64
 }
 
@@ -38,30 +38,39 @@ func (e Escape) Start(i int, _ func() float64) sim.Start {
 	return sim.Start{State: e.Tracer.Uniform(e.Cells.At(e.Points.At(i%n, e.Shifts[i/n])))}
 }
 
+// step is from one node to the next.
+func (e Escape) step() float64 { return 2 * e.Rate / (nodes - 1) }
+
 // Tally is an *EscapeTally.
 func (e Escape) Tally() Tally { return &EscapeTally{of: e} }
 
-// terms is the number of terms of the expansion in the rate. At the rate
-// solved for, the exponent is away from the guess by less than 2 (a rate that
-// falls to zero over a window of e^-1.6): the first term left out is below
-// 2^12/12!, 1e-5 of the sum.
-const terms = 12
+const (
+	// nodes is the number of rates, from 0 to 2 Rate in equal steps, about
+	// which the sums over what is left are expanded, and terms the number of
+	// terms of each expansion. A rate is at most half a step, Rate/8, from a
+	// node. Over the 8 units of Rate t that a measurement spans the exponent
+	// is then at most 1: the first term left out is below 1/12!, 2e-9.
+	nodes = 9
+	terms = 12
+)
 
 // Left is what is left of a lattice at a mark: the number of rays, their
-// weight, their weight times path, and, for k from 0, the sums over them of
-// w exp(Rate t) (t - N Flight)^k after N bounces.
+// weight, their weight times path, and, for each node g and k from 0, the sums
+// over them of w exp(g t) (t - N Flight)^k after N bounces.
 type Left struct {
 	Rays         int64
 	Weight, Path float64
-	sums         [terms]float64
+	sums         [nodes][terms]float64
 }
 
 func (l *Left) add(o *Left) {
 	l.Rays += o.Rays
 	l.Weight += o.Weight
 	l.Path += o.Path
-	for k := range l.sums {
-		l.sums[k] += o.sums[k]
+	for g := range l.sums {
+		for k := range l.sums[g] {
+			l.sums[g][k] += o.sums[g][k]
+		}
 	}
 }
 
@@ -106,10 +115,11 @@ func (t *EscapeTally) Add(b *sim.Bounce) {
 	l.Weight += b.Weight
 	l.Path += b.Weight * t.path
 	x := t.path - float64(b.N)*t.of.Flight
-	w := b.Weight * math.Exp(t.of.Rate*t.path)
-	for k := range l.sums {
-		l.sums[k] += w
-		w *= x
+	by := math.Exp(t.of.step() * t.path)
+	for g, w := 0, b.Weight; g < nodes; g, w = g+1, w*by {
+		for k, y := 0, w; k < terms; k, y = k+1, y*x {
+			l.sums[g][k] += y
+		}
 	}
 	t.mark++
 }

@@ -31,9 +31,12 @@ func (r EscapeRate) Slows() bool {
 const (
 	slowShare  = 0.02 // of the rate
 	slowErrors = 4    // standard errors
-	// shifts is the number of lattices: their scatter then gives the error
-	// to one part in eight.
-	shifts = 32
+	uncertain  = 0.3  // share of error beyond which a rate is none
+	// lattices is the least number of lattices: their scatter then gives the
+	// error to one part in eight. mostLattices is reached where the next
+	// larger lattice would just be too large.
+	lattices     = 32
+	mostLattices = 56
 	// The pilot's size: it finds the survival a bounce to a few hundredths,
 	// which sizes the windows.
 	pilotPoints  = 6765
@@ -46,14 +49,13 @@ const (
 	// is wrong by 5 % after one bounce at separation 3, and the fault shrinks
 	// fourfold a bounce, to 1e-4 where 1/e^5 is left; at separation 6 by 1 %,
 	// shrinking tenfold. A table with a small opening forgets at the rate at
-	// which its rays part: the cardioid and the cut disc show no drift after
-	// 12 bounces beyond that of their later decay.
+	// which its rays part: the cardioid shows no drift beyond 4 bounces.
 	forgetFall    = 5.0
-	forgetBounces = 12
+	forgetBounces = 16
 	// windowFall is the fall over a window, as an exponent, that yields the
 	// smallest error for a number of starts (the least of
-	// (e^x - 1)/x^2 is at x = 1.6).
-	windowFall    = 1.6
+	// (e^x - 1)/x^2 is at x = 1.6, and it is flat there).
+	windowFall    = 1.8
 	windowBounces = 5000
 	// sparse is the survival a bounce below which most starts are wasted and
 	// the pilot looks for the cells from which rays last.
@@ -67,7 +69,7 @@ const (
 // number of flights. The error is a *NotMeasured where there is no rate, or the
 // runner's.
 func MeasureEscape(tr *sim.Tracer, run Runner, effort float64) (EscapeRate, error) {
-	moved, err := run(draws{tr, shifts})
+	moved, err := run(draws{tr, mostLattices})
 	if err != nil {
 		return EscapeRate{}, err
 	}
@@ -83,13 +85,15 @@ func MeasureEscape(tr *sim.Tracer, run Runner, effort float64) (EscapeRate, erro
 		return EscapeRate{}, err
 	}
 	t := ran.(*EscapeTally)
-	if t.Left(0).Weight == t.Left(1).Weight {
-		return EscapeRate{}, escapeFault("no ray left between %d and %d bounces", p.from, p.to)
-	}
 	r := EscapeRate{Flights: t.Flights, Stops: t.Stops}
 	ok := false
 	if r.Decay, ok = t.Decay(0, 1); !ok {
-		return r, escapeFault("of %d rays too few last %d bounces; ask for more with a greater effort", t.of.Orbits(), p.to)
+		return r, escapeFault("of %d rays %d last %d bounces, too few or too unevenly to read a rate from",
+			t.of.Orbits(), t.Left(1).Rays, p.to)
+	}
+	if !(r.Err < uncertain*r.Rate) {
+		return r, escapeFault("what is left hardly falls between %d and %d bounces (%.2g ± %.1g per %s)",
+			p.from, p.to, r.Rate, r.Err, tr.Table().Design().Unit)
 	}
 	r.Next, r.HasNext = t.Decay(1, 2)
 	return r, nil
@@ -123,12 +127,13 @@ func (p *plan) pilot() error {
 	for last+1 < len(e.Marks) && t.Left(last+1).Rays >= pilotRays {
 		last++
 	}
-	first := last - 1
-	for first > 0 && e.Marks[first] > (e.Marks[last]+1)/2 {
-		first--
+	if last == 0 {
+		last = 1
 	}
-	if first < 0 {
-		first, last = 0, 1
+	// From where the window may begin at the latest, or the middle.
+	first := last - 1
+	for first > 0 && e.Marks[first] > min(forgetBounces, (e.Marks[last]+1)/2) {
+		first--
 	}
 	a, b := t.Left(first), t.Left(last)
 	if b.Rays == 0 {
@@ -174,9 +179,10 @@ func (p *plan) main(effort float64) Escape {
 		flights = p.staying * p.rays * (1 - math.Pow(p.rays, float64(next))) / (1 - p.rays)
 	}
 	starts := escapeWork * effort / (1 + flights/p.cells.Share()) / slowness(p.tracer.Table())
+	points := NewFibonacci(int(starts / lattices))
+	n := min(max(int(starts)/points.Size(), lattices), mostLattices)
 	return Escape{
-		Tracer: p.tracer, Cells: p.cells,
-		Points: NewFibonacci(int(starts / shifts)), Shifts: p.shifts,
+		Tracer: p.tracer, Cells: p.cells, Points: points, Shifts: p.shifts[:n],
 		Marks: []int{p.from, p.to, next},
 		Rate:  -math.Log(p.keep) / p.flight, Flight: p.flight,
 	}

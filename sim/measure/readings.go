@@ -121,10 +121,7 @@ type bench struct {
 // such number, or run's.
 func (r Reading) Take(tr *sim.Tracer, run Runner, effort float64, seed uint64) (figure.Scalar, error) {
 	s, err := r.take(bench{tr, run, effort})
-	s.Name = r.Name
-	if r.Kind == Measured {
-		s.Seed = seed
-	}
+	s.Name, s.Seed = r.Name, seed
 	return s, err
 }
 
@@ -196,7 +193,7 @@ func escapeRate(b bench) (figure.Scalar, error) {
 	}
 	note := fmt.Sprintf("starts even in ds dp; fall of what is left from %d to %d bounces, per path", r.From, r.To)
 	if r.Slows() {
-		note += fmt.Sprintf("; not exponential: from %d to %d bounces it falls at %.3g", r.Next.From, r.Next.To, r.Next.Rate)
+		note += fmt.Sprintf("; it slows: %.3g from %d to %d bounces", r.Next.Rate, r.Next.From, r.Next.To)
 	}
 	return figure.Scalar{Value: r.Rate, StdErr: r.Err, Unit: "1/" + b.unit(), Bounces: r.Flights, Note: note + r.Stops.remark()}, nil
 }

@@ -77,12 +77,29 @@ func (s *Span) finishArc(full bool) {
 
 // ArcThrough is the circular arc from a to b with the given bulge: the tangent
 // of a quarter of its sweep, positive when it turns left. Bulge 0 is a Line.
+//
+// The centre of a nearly straight arc lies so far away that its rounding would
+// be felt on the wall. Below flatSweep the arc is given as the cubic with its
+// ends, end tangents and middle, which differs from the circle by less than
+// 1e-15 of the chord: the error is 2.7e-4 of the radius for a quarter turn and
+// falls with the sixth power of the sweep (T. Dokken et al., Comput. Aided
+// Geom. Design 7, 33, 1990).
 func ArcThrough(a, b r2.Vec, bulge float64) Curve {
 	if bulge == 0 {
 		return NewLine(a, b)
 	}
 	sweep := 4 * math.Atan(bulge)
 	chord := r2.Sub(b, a)
+	if math.Abs(sweep) < flatSweep {
+		// The handles are (4/3) tan(sweep/4) R long, R = |chord| / (2 sin(sweep/2)),
+		// and make the angle sweep/2 with the chord.
+		k := 2 * bulge / (3 * math.Sin(sweep/2))
+		sin, cos := math.Sincos(sweep / 2)
+		n := plane.Left(chord)
+		in := r2.Scale(k, r2.Sub(r2.Scale(cos, chord), r2.Scale(sin, n)))
+		out := r2.Scale(k, r2.Add(r2.Scale(cos, chord), r2.Scale(sin, n)))
+		return NewCubic([4]r2.Vec{a, r2.Add(a, in), r2.Sub(b, out), b})
+	}
 	half := 0.5 * math.Hypot(chord.X, chord.Y)
 	radius := half / math.Abs(math.Sin(sweep/2))
 	// The centre lies on the chord's bisector; cot(sweep/2) half to the left.
@@ -94,6 +111,9 @@ func ArcThrough(a, b r2.Vec, bulge float64) Curve {
 	arc.chain[len(arc.chain)-1].B = b
 	return arc
 }
+
+// flatSweep is the sweep (radians) below which ArcThrough is a cubic.
+const flatSweep = 8e-3
 
 // Placed is the arc after m.
 func (a Arc) Placed(m plane.Similarity) Curve {

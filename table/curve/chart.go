@@ -17,6 +17,7 @@ type chart struct {
 	panels []panel
 	t0, t1 float64
 	length float64
+	size   float64
 }
 
 // panel is one stretch [a, b] of the parameter (in the span's sense). The
@@ -30,6 +31,7 @@ type panel struct {
 const (
 	chartTerms = 18
 	chartTol   = 4e-16 // size of the last two terms against the first; below the rounding of the sum
+	chartFloor = 1e-17 // size of those terms against the whole span: what no sum feels
 	chartDepth = 24    // halvings; reached only at a cusp inside a span, where the panel left is 1e-7 long
 )
 
@@ -50,6 +52,10 @@ func init() {
 
 func newChart(s *Span) *chart {
 	c := &chart{t0: s.T0, t1: s.T1}
+	for k := range 8 { // a bound of the length to within a small factor
+		_, d1, _ := s.Jet(s.T0 + (s.T1-s.T0)*float64(k)/7)
+		c.size = math.Max(c.size, math.Sqrt(plane.Dot(d1, d1))*math.Abs(s.T1-s.T0))
+	}
 	c.build(s, s.T0, s.T1, 0)
 	return c
 }
@@ -68,7 +74,7 @@ func (c *chart) build(s *Span, a, b float64, depth int) {
 	}
 	g[0] *= 0.5
 	tail := math.Abs(g[chartTerms-1]) + math.Abs(g[chartTerms-2])
-	if tail > chartTol*chartTerms*math.Abs(g[0]) && depth < chartDepth {
+	if tail > chartTol*chartTerms*math.Abs(g[0]) && tail > chartFloor*c.size && depth < chartDepth {
 		c.build(s, a, mid, depth+1)
 		c.build(s, mid, b, depth+1)
 		return

@@ -36,14 +36,31 @@ func cubicBends(s *Span) []float64 {
 	k0 := 2 * plane.Cross(c[1], c[2])
 	k1 := 6 * plane.Cross(c[1], c[3])
 	k2 := 6 * plane.Cross(c[2], c[3])
+	size2 := plane.Dot(c[1], c[1]) + plane.Dot(c[2], c[2]) + plane.Dot(c[3], c[3])
+	roots := quadraticRoots(k2, k1, k0)
+	if math.Abs(k0)+math.Abs(k1)+math.Abs(k2) <= collinear*size2 {
+		// All on one line: the tangent turns right about where the speed along
+		// it vanishes.
+		u := c[1]
+		for _, v := range c[2:] {
+			if plane.Dot(v, v) > plane.Dot(u, u) {
+				u = v
+			}
+		}
+		roots = quadraticRoots(3*plane.Dot(c[3], u), 2*plane.Dot(c[2], u), plane.Dot(c[1], u))
+	}
 	var in []float64
-	for _, t := range quadraticRoots(k2, k1, k0) {
+	for _, t := range roots {
 		if t > 1e-12 && t < 1-1e-12 {
 			in = append(in, t)
 		}
 	}
 	return in
 }
+
+// collinear is the size of a cross product, relative to the squares of the
+// vectors, that counts as none.
+const collinear = 1e-14
 
 // quadraticRoots are the real roots of a t^2 + b t + c, a double one once.
 // The stable form: no difference of nearly equal numbers.

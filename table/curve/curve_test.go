@@ -18,6 +18,7 @@ func kinds() map[string]Curve {
 		"arc long":    NewArc(r2.Vec{X: -1, Y: 1}, 0.7, 2, 5),
 		"circle":      NewArc(r2.Vec{}, 1, 0, 2*math.Pi),
 		"bulge":       ArcThrough(r2.Vec{X: 1}, r2.Vec{Y: 1}, 0.3),
+		"flat bulge":  ArcThrough(r2.Vec{X: 1}, r2.Vec{Y: 1}, 4e-4),
 		"ellipse":     NewOval(Arc{Major: 2, Minor: 1, Sweep: 2 * math.Pi}),
 		"ellipse arc": NewOval(Arc{Centre: r2.Vec{X: 1}, Major: 3, Minor: 0.2, Tilt: 0.4, From: 1, Sweep: -4}),
 		"cubic":       NewCubic([4]r2.Vec{{}, {X: 1, Y: 2}, {X: 3, Y: 2}, {X: 4}}),
@@ -173,6 +174,61 @@ func TestBoundsHold(t *testing.T) {
 			if p.X < b.Min.X-1e-12 || p.X > b.Max.X+1e-12 || p.Y < b.Min.Y-1e-12 || p.Y > b.Max.Y+1e-12 {
 				t.Errorf("%s: %v lies outside %v", name, p, b)
 			}
+		}
+	}
+}
+
+// TestFlatArc: either side of the change of formula the arc has its length,
+// its sagitta and its curvature.
+func TestFlatArc(t *testing.T) {
+	a, b := r2.Vec{X: 0.3, Y: -0.2}, r2.Vec{X: 1.7, Y: 0.9}
+	chord := math.Hypot(b.X-a.X, b.Y-a.Y)
+	for _, sweep := range []float64{1e-9, 1e-6, 0.9 * flatSweep, 1.1 * flatSweep, 0.1} {
+		for _, sign := range []float64{1, -1} {
+			c := ArcThrough(a, b, sign*math.Tan(sweep/4))
+			length := chord * (sweep / 2) / math.Sin(sweep/2)
+			// The centre's rounding is that of the radius, chord / sweep.
+			tol := 4e-15 * chord
+			if sweep > flatSweep {
+				tol = 1e-15 * chord / sweep
+			}
+			if d := math.Abs(c.Length() - length); d > tol {
+				t.Errorf("sweep %g: length off by %g", sweep, d)
+			}
+			mid := c.At(c.Length() / 2)
+			sagitta := sign * chord / 2 * math.Tan(sweep/4)
+			n := plane.Unit(plane.Left(r2.Sub(b, a)))
+			if d := math.Abs(plane.Dot(r2.Sub(mid.Point, a), n) + sagitta); d > tol {
+				t.Errorf("sweep %g: sagitta off by %g", sweep, d)
+			}
+			if want := sign * sweep / length; math.Abs(mid.Curvature-want) > 1e-9*math.Abs(want)+1e-15 {
+				t.Errorf("sweep %g: curvature %g, want %g", sweep, mid.Curvature, want)
+			}
+		}
+	}
+}
+
+// TestDegenerate: curves that a hand can draw but no table takes must be
+// answered in good time, with finite spans.
+func TestDegenerate(t *testing.T) {
+	o := r2.Vec{}
+	for _, p := range [][4]r2.Vec{
+		{o, o, o, o},
+		{o, {X: 1}, {X: -1}, {X: 0.5}},
+		{o, {X: 2, Y: 1}, {X: -2, Y: -1}, o},
+		{o, {X: 1e-9, Y: 1}, {X: -1e-9, Y: -1}, {X: 1}},
+		{o, {X: 1, Y: 1}, {X: 0, Y: 1}, {X: 1}}, // a cusp
+		{{X: 1e6}, {X: 1e6, Y: 1e-6}, {X: 1e6, Y: 2e-6}, {X: 1e6, Y: 3e-6}},
+	} {
+		panels := 0
+		for _, s := range NewCubic(p).Spans() {
+			if math.IsNaN(s.Length) || math.IsNaN(s.Turn) {
+				t.Errorf("%v: span %+v", p, s)
+			}
+			panels += len(s.chart.panels)
+		}
+		if panels > 200 {
+			t.Errorf("%v takes %d panels of arclength", p, panels)
 		}
 	}
 }

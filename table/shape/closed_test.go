@@ -221,7 +221,7 @@ func TestSmoothJoints(t *testing.T) {
 		{"three-posts", []float64{1, 6}, r2.Vec{X: -2, Y: -math.Sqrt(3)}},
 	} {
 		at := loopsOf(t, figure(t, s.kind, s.v...))[0].Curves[0].At(0).Point
-		if d := r2.Norm(r2.Sub(at, s.start)); d > 1e-14*10 {
+		if d := r2.Norm(r2.Sub(at, s.start)); d > 1e-13 {
 			t.Errorf("%s starts at %v, want %v", s.kind, at, s.start)
 		}
 	}

@@ -20,21 +20,30 @@ type place struct {
 	at   r2.Vec
 }
 
-// traced are places along the whole wall, in order.
-func (n nodes) traced() []place {
-	var out []place
+// trace are places along the whole wall, in order, and the greatest distance of
+// one to the next.
+type trace struct {
+	places []place
+	step   float64
+}
+
+func (n nodes) traced() trace {
+	var t trace
 	for _, c := range n.curves() {
 		spans := c.Spans()
 		for i := range spans {
 			s := &spans[i]
 			for k := range tracedChords {
-				t := s.T0 + (s.T1-s.T0)*float64(k)/tracedChords
-				at, _, _ := s.Jet(t)
-				out = append(out, place{s, t, at})
+				u := s.T0 + (s.T1-s.T0)*float64(k)/tracedChords
+				at, _, _ := s.Jet(u)
+				t.places = append(t.places, place{s, u, at})
 			}
 		}
 	}
-	return out
+	for i, p := range t.places {
+		t.step = math.Max(t.step, r2.Norm(r2.Sub(p.at, t.places[(i+1)%len(t.places)].at)))
+	}
+	return t
 }
 
 // Deviation is the greatest distance of the points from the wall, each taken to
@@ -47,29 +56,37 @@ func (f Freeform) Deviation(points []r2.Vec) float64 {
 	line := f.nodes.traced()
 	worst := 0.0
 	for _, p := range points {
-		worst = math.Max(worst, distance(line, p))
+		worst = math.Max(worst, line.distance(p))
 	}
 	return worst
 }
 
-// distance is that of p from the wall, by Newton's method from the nearest place
-// of the line and its neighbours: the foot may lie on the span before.
-func distance(line []place, p r2.Vec) float64 {
-	at, least := 0, math.Inf(1)
-	for i := range line {
-		if d := r2.Norm2(r2.Sub(p, line[i].at)); d < least {
-			at, least = i, d
+// distance is that of p from the wall, by Newton's method from every place that
+// is nearly the nearest: on either side of a corner, or of a narrow neck.
+func (t trace) distance(p r2.Vec) float64 {
+	least := math.Inf(1)
+	for i := range t.places {
+		least = math.Min(least, r2.Norm2(r2.Sub(p, t.places[i].at)))
+	}
+	least = math.Sqrt(least)
+	best := least
+	for i := range t.places {
+		if r2.Norm(r2.Sub(p, t.places[i].at)) <= least+t.step {
+			best = math.Min(best, foot(t.places[i], p))
 		}
 	}
-	n := len(line)
-	return min(foot(line[at], p), foot(line[(at+1)%n], p), foot(line[(at+n-1)%n], p))
+	return best
 }
+
+// footSteps bounds the steps of Newton's method; they are many only where the
+// speed vanishes, at the end of a null handle.
+const footSteps = 60
 
 func foot(start place, p r2.Vec) float64 {
 	s, t := start.span, start.t
 	lo, hi := math.Min(s.T0, s.T1), math.Max(s.T0, s.T1)
 	best := r2.Norm(r2.Sub(p, start.at))
-	for range 8 {
+	for range footSteps {
 		at, d1, d2 := s.Jet(t)
 		miss := r2.Sub(p, at)
 		bend := plane.Dot(d1, d1) - plane.Dot(miss, d2)
@@ -78,7 +95,11 @@ func foot(start place, p r2.Vec) float64 {
 		}
 		t = math.Min(math.Max(t+plane.Dot(miss, d1)/bend, lo), hi)
 		at, _, _ = s.Jet(t)
-		best = math.Min(best, r2.Norm(r2.Sub(p, at)))
+		d := r2.Norm(r2.Sub(p, at))
+		if d >= best {
+			break
+		}
+		best = d
 	}
 	return best
 }
@@ -86,7 +107,7 @@ func foot(start place, p r2.Vec) float64 {
 // selfCrosses reports whether two chords of the traced wall cross: enough to
 // turn down a fit, while a table decides on the curves themselves.
 func (n nodes) selfCrosses() bool {
-	line := n.traced()
+	line := n.traced().places
 	m := len(line)
 	for i := range line {
 		a, b := line[i].at, line[(i+1)%m].at

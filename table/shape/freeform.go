@@ -1,8 +1,6 @@
 package shape
 
 import (
-	"math"
-
 	"cavitywright/table/curve"
 	"cavitywright/table/plane"
 
@@ -21,7 +19,7 @@ type Freeform struct {
 // What cannot be built is reported by Loops.
 func NewFreeform(list []Node) Freeform {
 	n := settled(list)
-	if n.fault() == nil && n.area() < 0 {
+	if n.fault() == nil && sense(n.curves()) < 0 {
 		n = settled(n.reversed())
 	}
 	return Freeform{nodes: n}
@@ -49,11 +47,10 @@ func (f Freeform) Loops() ([]Loop, error) {
 		return nil, err
 	}
 	curves := f.nodes.curves()
-	area, size := sweptBy(curves)
-	if math.Abs(area) <= noArea*size*size {
+	switch sense(curves) {
+	case 0:
 		return nil, misfit("it encloses no area; move its nodes apart")
-	}
-	if area < 0 {
+	case -1:
 		curves = f.nodes.reversed().curves()
 	}
 	return ring(curves...), nil
@@ -86,16 +83,11 @@ func (n nodes) controls(i int) [4]r2.Vec {
 	return [4]r2.Vec{a.At, r2.Add(a.At, a.Out), r2.Add(b.At, b.In), b.At}
 }
 
-// area is the signed area that the spans enclose, positive when they run
-// counter-clockwise.
-func (n nodes) area() float64 {
-	area, _ := sweptBy(n.curves())
-	return area
-}
-
-func sweptBy(curves []curve.Curve) (area, size float64) {
+// sense is +1 where the curves run counter-clockwise, by the area that they
+// enclose, -1 where clockwise, 0 where that counts as none.
+func sense(curves []curve.Curve) int {
+	area, box := 0.0, plane.Around()
 	origin := curves[0].Spans()[0].A
-	box := plane.Around()
 	for _, c := range curves {
 		spans := c.Spans()
 		for i := range spans {
@@ -103,5 +95,12 @@ func sweptBy(curves []curve.Curve) (area, size float64) {
 		}
 		box = plane.Join(box, curve.Bounds(spans))
 	}
-	return area, plane.Diagonal(box)
+	size := plane.Diagonal(box)
+	switch least := noArea * size * size; {
+	case area > least:
+		return 1
+	case area < -least:
+		return -1
+	}
+	return 0
 }

@@ -45,7 +45,7 @@ func (f Freeform) InsertNode(span int, t float64) Freeform {
 	}
 	at := n.wrap(span) + 1
 	n = append(n[:at], append(nodes{mid}, n[at:]...)...)
-	return Freeform{nodes: n}
+	return Freeform{nodes: settled(n)}
 }
 
 // splitArc is the point of an arc from a at the fraction t of its sweep, and
@@ -89,7 +89,7 @@ func (n nodes) merge(i int) {
 		a.Span = Curved
 	case a.Span == Bowed || k.Span == Bowed:
 		// The chords to and from a point of an arc turn by half its sweep.
-		a.Bulge = holdBulge(math.Tan(0.5 * plane.Angle(n.chord(i-1), n.chord(i))))
+		a.Bulge = math.Tan(0.5 * plane.Angle(n.chord(i-1), n.chord(i)))
 		a.Span = Bowed
 	}
 }
@@ -129,7 +129,7 @@ func (f Freeform) MoveNode(i int, to r2.Vec) Freeform {
 }
 
 // leastHandle is the length, as a share of its chord, at which a handle that
-// must keep its direction is held.
+// must keep its direction is held; a free one falls into its node there.
 const leastHandle = 1e-3
 
 // SetHandle is f with the tangent handle at one end of a Curved span dragged to
@@ -146,8 +146,11 @@ func (f Freeform) SetHandle(i int, end End, to r2.Vec) Freeform {
 		return f
 	}
 	v := r2.Sub(to, k.At)
+	least := leastHandle * r2.Norm(n.chord(span))
+	if k.Joint == Corner && r2.Norm(v) < least {
+		v = r2.Vec{}
+	}
 	if k.Joint == Smooth {
-		least := leastHandle * r2.Norm(n.chord(span))
 		d := firstNonNull(*own, v)
 		if n.at(beside).Span != Curved {
 			v = r2.Scale(math.Max(plane.Dot(v, d), least), d)
@@ -167,6 +170,6 @@ func (f Freeform) SetBulge(i int, bulge float64) Freeform {
 	if n.at(i).Span != Bowed {
 		return f
 	}
-	n.at(i).Bulge = holdBulge(bulge)
+	n.at(i).Bulge = bulge
 	return Freeform{nodes: settledFrom(n, i)}
 }

@@ -17,6 +17,10 @@ const (
 	// alone; setting it anew stays well below, so that settling twice changes
 	// nothing.
 	aligned = 1e-14
+	// noHandle is the length, as a share of its span, up to which a handle
+	// counts as null: a cubic takes the direction of a shorter one from its
+	// other control points within 1e-9 of its parameter.
+	noHandle = 1e-6
 	// third is the share of its chord that a new handle takes: with both
 	// handles a third, a straight cubic runs at constant speed.
 	third = 1.0 / 3
@@ -42,9 +46,12 @@ func settledFrom(list nodes, lead int) nodes {
 		if n[i].Span != Bowed {
 			n[i].Bulge = 0
 		}
-		n[i].Bulge = holdBulge(n[i].Bulge)
-		if n[i].Span != Curved {
-			n[i].Out, n.at(i+1).In = r2.Vec{}, r2.Vec{}
+		n[i].Bulge = n.holdBulge(i, n[i].Bulge)
+		least := noHandle * (r2.Norm(n.chord(i)) + r2.Norm(n[i].Out) + r2.Norm(n.at(i+1).In))
+		for _, h := range [2]*r2.Vec{&n[i].Out, &n.at(i + 1).In} {
+			if n[i].Span != Curved || r2.Norm(*h) <= least {
+				*h = r2.Vec{}
+			}
 		}
 	}
 	n.settleArcs(lead)
@@ -127,8 +134,8 @@ func (n nodes) settleRing(lead int) {
 }
 
 // bendOn makes k arcs from span i on continue what arrives, bendBack makes k
-// arcs from span i backwards arrive as the next leaves. A joint that would need
-// more than a circle becomes a Corner.
+// arcs from span i backwards arrive as the next leaves. A joint at which that
+// takes nearly a circle, or an arc nearly flat, becomes a Corner.
 func (n nodes) bendOn(i, k int) {
 	for j := i; j < i+k; j++ {
 		n.bendTo(j, j, bulgeLeaving(n.chord(j), n.arriving(j-1)))
@@ -142,11 +149,12 @@ func (n nodes) bendBack(i, k int) {
 }
 
 func (n nodes) bendTo(span, joint int, bulge float64) {
-	if math.Abs(bulge) > maxBulge {
-		n.at(joint).Joint = Corner
-		return
+	if math.Abs(bulge) <= maxBulge {
+		n.at(span).Bulge = n.holdBulge(span, bulge)
 	}
-	n.at(span).Bulge = bulge
+	if n.kink(joint) > tangency {
+		n.at(joint).Joint = Corner
+	}
 }
 
 // settleLines makes a joint of two lines that are not in one direction a

@@ -8,11 +8,32 @@ import (
 	"gonum.org/v1/gonum/spatial/r2"
 )
 
-// maxBulge is the greatest bulge of an arc: 356 degrees of a circle. Beyond it
-// the gap between the ends is a sliver.
-const maxBulge = 60
+const (
+	// maxBulge is the greatest bulge of an arc: 356 degrees of a circle. Beyond
+	// it the gap between the ends is a sliver.
+	maxBulge = 60
+	// flattest is the radius of an arc, in sizes of the wall, above which it is
+	// straight: a point of it, seen from its centre, is rounded to 1e-11 of the
+	// wall.
+	flattest = 1e5
+)
 
-func holdBulge(b float64) float64 { return math.Min(math.Max(b, -maxBulge), maxBulge) }
+// holdBulge is the bulge nearest to b that span i can have.
+func (n nodes) holdBulge(i int, b float64) float64 {
+	if math.Abs(b)*4*flattest*n.size() < r2.Norm(n.chord(i)) {
+		return 0
+	}
+	return math.Min(math.Max(b, -maxBulge), maxBulge)
+}
+
+// size is the diagonal of the box of the nodes.
+func (n nodes) size() float64 {
+	box := plane.Around()
+	for i := range n {
+		box = plane.Join(box, plane.Around(n[i].At))
+	}
+	return plane.Diagonal(box)
+}
 
 // bend is the unit vector at the angle of half the sweep of an arc of the given
 // bulge, as cosine and sine: twice the angle whose tangent is the bulge.
@@ -84,7 +105,7 @@ func (n nodes) middle(i int) r2.Vec {
 func (n nodes) bulgeTo(i int, p r2.Vec) float64 {
 	chord := n.chord(i)
 	d := r2.Sub(p, plane.Lerp(n.at(i).At, n.at(i+1).At, 0.5))
-	return holdBulge(-2 * plane.Dot(d, plane.Left(chord)) / plane.Dot(chord, chord))
+	return n.holdBulge(i, -2*plane.Dot(d, plane.Left(chord))/plane.Dot(chord, chord))
 }
 
 // cubicMiddle is the point of the Curved span i at the middle of its parameter.

@@ -215,8 +215,6 @@ func TestWriteRefuses(t *testing.T) {
 		{`coats[0] lacks "law"; write it in.`, func(d *table.Design) { d.Coats = []table.Coat{{To: 1}} }},
 		{`study.bounces is -1; give a whole number from 0 to 1000000000.`, func(d *table.Design) { d.Study.Bounces = -1 }},
 		{`study.display.sense is "unknown"; write "counter-clockwise" or "clockwise".`, func(d *table.Design) { d.Study.Display.Sense = 9 }},
-		{`Nothing is drawn yet; place a shape or draw a wall.`, func(d *table.Design) { d.Items = nil }},
-		{`There are two outer walls; make the disc (item 2) an obstacle, or take it out.`, func(d *table.Design) { d.Items = append(d.Items, d.Items[0]) }},
 	} {
 		d := onlyWall(disc)
 		c.mar(&d)

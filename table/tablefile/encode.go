@@ -12,7 +12,7 @@ import (
 )
 
 // encode lays the design out. It checks only what could not be laid out: what
-// it writes of a bad design, read refuses.
+// it writes of a bad design, decode refuses.
 func encode(d table.Design) ([]byte, error) {
 	top := block{{"format", Format}, {"version", Version}}
 	if d.Name != "" {

@@ -31,7 +31,7 @@ const (
 	mostBytes   = 64 << 20
 	mostText    = 1 << 20 // bytes of the name or the notes
 	mostItems   = 5000
-	mostNodes   = 20000 // of all free walls together
+	mostNodes   = 5000 // of all free walls together
 	mostCoats   = 1000
 	mostStarts  = 10000 // launches
 	mostOrbits  = 1000000
@@ -48,31 +48,35 @@ func Read(r io.Reader) (table.Design, error) {
 	if err != nil {
 		return table.Design{}, fmt.Errorf("the table could not be read to its end: %w", err)
 	}
-	d, err := read(src)
+	d, err := decode(src)
 	if err != nil {
+		return table.Design{}, err
+	}
+	if _, err := table.New(d); err != nil {
 		return table.Design{}, err
 	}
 	return d, nil
 }
 
-// Write writes the design as a table file: the same bytes for the same design.
-// It refuses, in the words of Read, what Read would refuse, and then writes
-// nothing. Text that is not valid UTF-8 has the invalid bytes replaced.
+// Write writes a design that compiles as a table file: the same bytes for the
+// same design. It refuses, in the words of Read, what no file can say, and then
+// writes nothing; it does not compile the design anew. Text that is not valid
+// UTF-8 has the invalid bytes replaced.
 func Write(w io.Writer, d table.Design) error {
 	b, err := encode(d)
 	if err != nil {
 		return err
 	}
-	if _, err := read(b); err != nil {
+	if _, err := decode(b); err != nil {
 		return unplaced(err)
 	}
 	_, err = w.Write(b)
 	return err
 }
 
-// read checks the file from the outside in: its syntax, its version, its keys
-// and values, then the design.
-func read(src []byte) (table.Design, error) {
+// decode checks the file from the outside in: its syntax, its version, its keys
+// and values. Whether the design is a table is not asked.
+func decode(src []byte) (table.Design, error) {
 	src = bytes.TrimPrefix(src, []byte("\ufeff")) // as some editors put it
 	h, err := readHead(src)
 	if err != nil {
@@ -80,9 +84,6 @@ func read(src []byte) (table.Design, error) {
 	}
 	d, err := readDesign(src, h)
 	if err != nil {
-		return table.Design{}, err
-	}
-	if _, err := table.New(d); err != nil {
 		return table.Design{}, err
 	}
 	return d, nil

@@ -1,0 +1,92 @@
+package main
+
+import (
+	"bufio"
+	"bytes"
+	"errors"
+	"fmt"
+	"io"
+	"io/fs"
+	"os"
+
+	"cavitywright/render/export"
+	"cavitywright/table"
+	"cavitywright/table/tablefile"
+)
+
+// readTable reads and compiles the table in a file, a figure, or standard
+// input where the name is "-". Errors name the file.
+func readTable(name string, std streams) (*table.Table, error) {
+	d, err := readDesign(name, std)
+	if err != nil {
+		if name == "-" {
+			name = "standard input"
+		}
+		return nil, fmt.Errorf("%s: %w", name, err)
+	}
+	t, err := table.New(d)
+	if err != nil {
+		return nil, fmt.Errorf("%s: %w", name, err)
+	}
+	return t, nil
+}
+
+func readDesign(name string, std streams) (table.Design, error) {
+	if name == "-" {
+		return decode(std.in)
+	}
+	info, err := os.Stat(name)
+	switch {
+	case err != nil:
+		return table.Design{}, unreadable(err)
+	case info.IsDir():
+		return table.Design{}, errors.New("this is a folder; name a table file in it")
+	}
+	f, err := os.Open(name)
+	if err != nil {
+		return table.Design{}, unreadable(err)
+	}
+	defer f.Close()
+	return decode(f)
+}
+
+func unreadable(err error) error {
+	switch {
+	case errors.Is(err, fs.ErrNotExist):
+		return errors.New("there is no such file; check the folder and the name")
+	case errors.Is(err, fs.ErrPermission):
+		return errors.New("the file may not be read; ask for leave to read it, or copy it")
+	}
+	return fmt.Errorf("the file cannot be opened (%w)", bare(err))
+}
+
+// bare is the reason of a failure without the path, which the sentence names.
+func bare(err error) error {
+	if e := (*fs.PathError)(nil); errors.As(err, &e) {
+		return e.Err
+	}
+	if e := (*os.LinkError)(nil); errors.As(err, &e) {
+		return e.Err
+	}
+	return err
+}
+
+// decode tells by its first bytes what a stream is, and reads the table in it.
+func decode(r io.Reader) (table.Design, error) {
+	b := bufio.NewReader(r)
+	head, _ := b.Peek(512) // what is wrong with the stream, reading it will say
+	var inside []byte
+	var err error
+	switch {
+	case bytes.HasPrefix(head, []byte("\x89PNG")):
+		inside, err = export.TableInPNG(b)
+	case bytes.HasPrefix(bytes.TrimLeft(bytes.TrimPrefix(head, []byte("\ufeff")), " \t\r\n"), []byte("<")):
+		inside, err = export.TableInSVG(b)
+	default:
+		return tablefile.Read(b)
+	}
+	if err != nil {
+		return table.Design{}, err
+	}
+	return tablefile.Read(bytes.NewReader(inside))
+}

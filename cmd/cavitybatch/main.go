@@ -1,0 +1,142 @@
+// Command cavitybatch is the designer's kernel without a window: it makes and
+// checks table files, takes readings, and writes the figures, from the same
+// code as the designer.
+//
+// JSON goes to standard output where --json is given, progress to standard
+// error. Exit codes: 0 fine, 1 the table or study is at fault, 2 wrong use.
+// The same file with the same seed gives the same numbers on any number of
+// workers.
+package main
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"io"
+	"os"
+	"os/signal"
+	"strings"
+	"syscall"
+	"unicode"
+	"unicode/utf8"
+
+	"github.com/alecthomas/kong"
+)
+
+// version is the program's; it stands in the captions of figures.
+const (
+	version = "0.1.0"
+	program = "Cavitywright " + version
+)
+
+// The exit codes.
+const (
+	exitFine  = 0
+	exitFault = 1
+	exitUse   = 2
+)
+
+// commands is the command line.
+type commands struct {
+	Make     makeTable `cmd:"" help:"Write a table file of a shape to standard output."`
+	Check    check     `cmd:"" help:"Say what the wall of a table is, and what is wrong with it."`
+	Readings takeAll   `cmd:"" help:"Measure the numbers of a table, with errors."`
+	Portrait portrait  `cmd:"" help:"Write the Birkhoff portrait of a table (png, svg, pdf or csv)."`
+	Rays     rays      `cmd:"" help:"Write the drawing of a table with its rays (png, svg, pdf or csv)."`
+	Pace     pace      `cmd:"" help:"Measure the bounces per second, on one worker and on all."`
+	Orbits   orbits    `cmd:"" help:"List the periodic orbits (not in this version)."`
+	Emission emission  `cmd:"" help:"Write the far field of what leaves (not in this version)."`
+
+	Version kong.VersionFlag `help:"Print the version."`
+}
+
+// streams are what a command reads and writes besides files.
+type streams struct {
+	in       io.Reader
+	out, err io.Writer
+}
+
+func main() {
+	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM)
+	context.AfterFunc(ctx, stop) // a second signal ends the program at once
+	os.Exit(obey(ctx, os.Args[1:], streams{os.Stdin, os.Stdout, os.Stderr}))
+}
+
+// obey parses and carries out a command line, and returns the exit code.
+func obey(ctx context.Context, args []string, std streams) int {
+	var c commands
+	left := -1 // the exit code that --help and --version ask for
+	parser, err := kong.New(&c,
+		kong.Name("cavitybatch"),
+		kong.Description("Tables, readings and figures of cavities without a window. FILE is a table (NAME.cavity.json), a PNG or SVG figure that carries one, or - for standard input."),
+		kong.Writers(std.out, std.err),
+		kong.Exit(func(code int) { left = code }),
+		kong.Vars{"version": program},
+		kong.ConfigureHelp(kong.HelpOptions{Compact: true}),
+		kong.BindTo(ctx, (*context.Context)(nil)),
+		kong.Bind(std),
+	)
+	if err != nil {
+		panic(err) // a fault of the program: the command line's own description
+	}
+	line, err := parser.Parse(args)
+	if left >= 0 {
+		return left
+	}
+	if err != nil {
+		complain(std, fmt.Sprintf("%s; %s", strings.TrimSuffix(err.Error(), "."), hint(args)))
+		return exitUse
+	}
+	return verdict(line.Run(), std)
+}
+
+// hint says where the use of a command is explained.
+func hint(args []string) string {
+	for _, a := range args {
+		if !strings.HasPrefix(a, "-") {
+			switch a {
+			case "make", "check", "readings", "portrait", "rays", "pace", "orbits", "emission":
+				return fmt.Sprintf("see cavitybatch %s --help", a)
+			}
+			break
+		}
+	}
+	return "see cavitybatch --help"
+}
+
+// verdict turns how a command ended into an exit code, and says why.
+func verdict(err error, std streams) int {
+	var wrong *wrongUse
+	switch {
+	case err == nil:
+		return exitFine
+	case errors.Is(err, syscall.EPIPE): // whoever read has had enough
+		return exitFault
+	case errors.Is(err, context.Canceled):
+		complain(std, "stopped before it was finished; nothing was written")
+		return exitFault
+	case errors.As(err, &wrong):
+		complain(std, err.Error())
+		return exitUse
+	}
+	complain(std, err.Error())
+	return exitFault
+}
+
+// wrongUse is an error of the command line, not of the table.
+type wrongUse struct{ cause error }
+
+func (e *wrongUse) Error() string { return e.cause.Error() }
+func (e *wrongUse) Unwrap() error { return e.cause }
+
+func misuse(format string, args ...any) error { return &wrongUse{fmt.Errorf(format, args...)} }
+
+// complain writes an error as one sentence on standard error.
+func complain(std streams, text string) {
+	first, size := utf8.DecodeRuneInString(text)
+	text = string(unicode.ToUpper(first)) + text[size:]
+	if !strings.HasSuffix(text, ".") {
+		text += "."
+	}
+	fmt.Fprintln(std.err, text)
+}
