@@ -7,6 +7,7 @@ import (
 
 	"cavitywright/sim"
 	"cavitywright/table"
+	"cavitywright/table/curve"
 	"cavitywright/table/plane"
 
 	"gonum.org/v1/gonum/spatial/r2"
@@ -75,8 +76,11 @@ func TestJacobianIsTheDerivative(t *testing.T) {
 		r := draw(seed, number)
 		tab := r.table()
 		w := sim.Compile(tab).Walker()
+		at := newPlace(tab)
 		for range 25 {
 			st := r.state(tab)
+			// Rounding of coordinates over the width of a difference.
+			noise := 16 * at.rounding / (at.size * width(st))
 			w.Start(st)
 			if b := w.Next(0); b.Stop != sim.Going {
 				continue
@@ -106,7 +110,7 @@ func TestJacobianIsTheDerivative(t *testing.T) {
 			for i := range got {
 				off := math.Abs(got[i]-want[i]) * unit[i] / (1 + scale)
 				worst = math.Max(worst, off)
-				if off > 4*spread[i]*unit[i]/(1+scale)+1e-8 {
+				if off > 4*spread[i]*unit[i]/(1+scale)+1e-8+noise {
 					t.Fatalf("seed %d table %d: from %+v entry %d is %v, differences give %v ± %v%s", seed, number, st, i, got[i], want[i], spread[i], dump(tab.Design()))
 				}
 			}
@@ -118,17 +122,20 @@ func TestJacobianIsTheDerivative(t *testing.T) {
 	}
 }
 
+// width is the half width of a difference: of P, and of S/L.
+func width(st sim.State) float64 { return 1e-5 * math.Min(1, 1-math.Abs(st.P)) }
+
 // differences are (ds'/ds, dp'/ds, ds'/dp, dp'/dp) by Richardson's rule from
 // central differences of two widths, with the change that it made. ok is false
 // where the four orbits meet different pieces of wall.
 func differences(tab *table.Table, w *sim.Walker, st sim.State) (want, spread [4]float64, ok bool) {
 	l := tab.Length()
 	from, _ := tab.Locate(st.S)
-	h := 1e-5 * math.Min(1, 1-math.Abs(st.P))
+	h := width(st)
 	piece := -1
 	var rows [2][4]float64
-	for k, width := range []float64{h, h / 2} {
-		for e, d := range []sim.State{{S: width * l}, {P: width}} {
+	for k, step := range []float64{h, h / 2} {
+		for e, d := range []sim.State{{S: step * l}, {P: step}} {
 			var ends [2]sim.State
 			for i, sign := range []float64{1, -1} {
 				start := sim.State{S: st.S + sign*d.S, P: st.P + sign*d.P}
@@ -351,9 +358,9 @@ func (k place) check(before, b sim.Bounce) string {
 	along := r2.Scale(b.Flight, before.Dir)
 	switch off := 1e-11*k.size + 4*k.rounding; {
 	case r2.Norm(r2.Sub(f.Point, b.Point)) > off:
-		return "S and Point are two places"
+		return fmt.Sprintf("S and Point are %g apart", r2.Norm(r2.Sub(f.Point, b.Point)))
 	case r2.Norm(r2.Sub(r2.Add(before.Point, along), b.Point)) > off:
-		return "the flight does not lead to Point"
+		return fmt.Sprintf("the flight leads to a place %g from Point", r2.Norm(r2.Sub(r2.Add(before.Point, along), b.Point)))
 	}
 	if mid := r2.Add(before.Point, r2.Scale(0.5, along)); !k.tab.Contains(mid) && k.fromWall(mid) > 1e-11*k.size+16*k.rounding {
 		return "the flight runs outside the table"
@@ -361,14 +368,23 @@ func (k place) check(before, b sim.Bounce) string {
 	if b.Stop != sim.Going {
 		return ""
 	}
-	// At S only to the rounding of S, over which the wall turns.
-	turn := 1e-13 + math.Abs(f.Curvature)*(1e-15*k.length+4*k.rounding)
+	if off := math.Abs(r2.Norm(b.Dir) - 1); off > 1e-14 {
+		return fmt.Sprintf("Dir is no unit vector, by %g", off)
+	}
+	// Directions are known to the rounding of S, over which the wall turns,
+	// and to that of coordinates along the piece, and across it where it is
+	// part of a thin ellipse.
+	p := &k.tab.Pieces()[b.Piece]
+	turn := 1e-13 + math.Abs(f.Curvature)*(1e-15*k.length+4*k.rounding) + 8*k.rounding/p.Length
+	if p.Kind == curve.Oval {
+		turn += 4 * k.rounding / math.Min(p.Radius, p.Minor)
+	}
 	in := plane.Dot(before.Dir, f.Tangent)
 	cos := math.Sqrt((1 - b.P) * (1 + b.P))
 	out := r2.Add(r2.Scale(b.P, f.Tangent), r2.Scale(cos, f.Normal()))
 	switch {
 	case math.Abs(in-b.P) > turn:
-		return fmt.Sprintf("P is %v, a mirror makes %v", b.P, in)
+		return fmt.Sprintf("P is %v, a mirror makes %v, off by %g where S is known to %g rad", b.P, in, math.Abs(in-b.P), turn)
 	case r2.Norm(r2.Sub(out, b.Dir)) > turn/math.Max(cos, 1e-8):
 		return fmt.Sprintf("Dir is %v, P makes %v", b.Dir, out)
 	case plane.Dot(before.Dir, f.Normal()) > turn:

@@ -28,7 +28,7 @@ type page struct {
 // portrait writes the Birkhoff portrait.
 type portrait struct {
 	page
-	Orbits  int `default:"0" placeholder:"N" help:"Seed N orbits evenly in ds dp instead of the study's launches; 60 where the study has none."`
+	Orbits  int `default:"0" placeholder:"N" help:"Seed N orbits evenly in ds dp instead of the study's launches; where it has none, 60 are seeded, or 2000 among posts without a wall."`
 	Bounces int `default:"0" placeholder:"N" help:"Bounces of each orbit; the study's where none is given."`
 }
 
@@ -55,11 +55,7 @@ func (c *portrait) Run(ctx context.Context, std streams) error {
 	if c.Orbits > 0 {
 		d.Study.Launches = nil
 	}
-	n := c.Orbits
-	if n == 0 {
-		n = measure.SeededOrbits
-	}
-	d.Study = measure.WithLaunches(d.Study, n)
+	d.Study = measure.WithLaunches(t, d.Study, c.Orbits)
 	if c.Bounces > 0 {
 		d.Study.Bounces = c.Bounces
 	}

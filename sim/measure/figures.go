@@ -11,14 +11,26 @@ import (
 	"cavitywright/table/plane"
 )
 
-// SeededOrbits is the number of orbits of a portrait for which nothing was
-// launched: enough that no part of the section stays empty.
-const SeededOrbits = 60
+const (
+	// seeded is the number of orbits of a portrait for which nothing was
+	// launched: enough that no part of the section stays empty.
+	seeded = 60
+	// seededOpen is that number among posts without a wall, where most orbits
+	// leave at once.
+	seededOpen = 2000
+)
 
 // WithLaunches is the study, or, where it launches nothing, the study with an
 // even seeding of the whole section by n orbits, so that its portrait shows
-// what the table does everywhere.
-func WithLaunches(s table.Study, n int) table.Study {
+// what the table does everywhere. n = 0 is a number that suits the table.
+func WithLaunches(t *table.Table, s table.Study, n int) table.Study {
+	switch {
+	case n > 0:
+	case t.Open():
+		n = seededOpen
+	default:
+		n = seeded
+	}
 	if len(s.Launches) == 0 {
 		s.Launches = []table.Launch{{Pattern: table.Even, Count: n, Region: table.WholeSection()}}
 	}
@@ -31,7 +43,7 @@ func WithRays(t *table.Table, s table.Study) table.Study {
 	switch {
 	case len(s.Launches) > 0:
 	case t.Open():
-		s.Launches = []table.Launch{{Pattern: table.Fan, Count: 41, Spread: 170 * math.Pi / 180}}
+		s.Launches = []table.Launch{{Pattern: table.Fan, Count: 21, Spread: 170 * math.Pi / 180}}
 	default:
 		s.Launches = []table.Launch{{S: 0.11, P: 0.35}}
 	}
@@ -96,11 +108,11 @@ func captionHead(t *table.Table, orbits, each int, stops Stops) string {
 	if d.Name != "" {
 		b.WriteString(d.Name + ": ")
 	}
-	fmt.Fprintf(&b, "%s of up to %s, %s.", counted(orbits, "orbit"), counted(each, "bounce"), launched(d.Study.Launches))
+	fmt.Fprintf(&b, "%s of up to %s, %s.", counted(orbits, "orbit"), counted(each, "bounce"), launched(t, d.Study.Launches))
 	for _, w := range []struct {
 		stop sim.Stop
 		text string
-	}{{sim.Escaped, "left the table"}, {sim.Spent, "absorbed"}, {sim.Corner, "stopped at a corner"}, {sim.Grazing, "stopped grazing"}, {sim.Lost, "lost"}} {
+	}{{sim.Escaped, "left"}, {sim.Spent, "absorbed"}, {sim.Corner, "stopped at a corner"}, {sim.Grazing, "stopped grazing"}, {sim.Lost, "lost"}} {
 		if n := stops[w.stop]; n > 0 {
 			fmt.Fprintf(&b, " %d %s.", n, w.text)
 		}
@@ -111,15 +123,15 @@ func captionHead(t *table.Table, orbits, each int, stops Stops) string {
 // captionFoot says on what it was computed, and with what.
 func captionFoot(t *table.Table, program string) string {
 	d := t.Design()
-	sense := "counter-clockwise"
+	sense := ""
 	if d.Study.Display.Sense == table.Clockwise {
-		sense = "clockwise"
+		sense = ", s clockwise"
 	}
-	return fmt.Sprintf("L = %.7g %s, s %s; seed %d; %s.", t.Length(), d.Unit, sense, d.Study.Seed, program)
+	return fmt.Sprintf("L = %.7g %s%s; seed %d; %s.", t.Length(), d.Unit, sense, d.Study.Seed, program)
 }
 
 // launched says in a few words what a study launches.
-func launched(launches []table.Launch) string {
+func launched(t *table.Table, launches []table.Launch) string {
 	even, others := 0, 0
 	for _, l := range launches {
 		if l.Pattern == table.Even {
@@ -129,14 +141,42 @@ func launched(launches []table.Launch) string {
 		}
 	}
 	switch {
-	case others == 0 && even == 1 && launches[0].Region == table.WholeSection():
+	case even == 1 && others == 0 && launches[0].Region == table.WholeSection():
 		return "even in ds dp"
 	case others == 0:
 		return "even in ds dp over parts of the section"
-	case even == 0:
+	case even > 0:
+		return counted(others, "launch") + " and an even seeding"
+	case others > 1:
 		return counted(others, "launch")
 	}
-	return counted(others, "launch") + " and an even seeding"
+	return pattern(launches[0]) + place(t, launches[0])
+}
+
+// pattern names the pattern of a launch.
+func pattern(l table.Launch) string {
+	switch l.Pattern {
+	case table.Fan:
+		return fmt.Sprintf("a fan over %.4g° ", l.Spread*180/math.Pi)
+	case table.Beam:
+		return "a beam "
+	case table.Sweep:
+		return "a row of (s, p) "
+	}
+	return ""
+}
+
+// place says where a launch starts.
+func place(t *table.Table, l table.Launch) string {
+	unit := t.Design().Unit.String()
+	switch {
+	case l.Pattern == table.Sweep:
+		g, length := l.Region, t.Length()
+		return fmt.Sprintf("from (%.4g %s, %.4g) to (%.4g %s, %.4g)", g.S0*length, unit, g.P0, g.S1*length, unit, g.P1)
+	case l.From == table.OnWall:
+		return fmt.Sprintf("from s = %.5g %s, p = %.4g", l.S*t.Length(), unit, l.P)
+	}
+	return fmt.Sprintf("from (%.4g, %.4g) %s at %.4g°", l.Point.X, l.Point.Y, unit, l.Angle*180/math.Pi)
 }
 
 func counted(n int, noun string) string {

@@ -14,6 +14,17 @@ type Portrait struct {
 	hues   []int
 }
 
+// Coloured is the portrait without the orbits of the sea.
+func (p Portrait) Coloured() Portrait {
+	own := Portrait{Each: p.Each}
+	for i, h := range p.hues {
+		if h != Sea {
+			own.starts, own.hues = append(own.starts, p.starts[i]), append(own.hues, h)
+		}
+	}
+	return own
+}
+
 // Continued is the portrait of the same orbits from where they ended, each
 // bounces more; those that stopped are left out.
 func (p Portrait) Continued(ends []sim.Bounce, each int) Portrait {

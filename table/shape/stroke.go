@@ -75,7 +75,7 @@ func cleaned(stroke []r2.Vec, tol float64) (trail, error) {
 		return t, misfit("the stroke ends far from where it began; draw all the way round")
 	}
 	if math.Abs(swept(path)) < tol*s[len(s)-1] {
-		return t, misfit("the stroke runs back along itself; draw all the way round")
+		return t, misfit("the stroke crosses itself or encloses nothing; draw once all the way round")
 	}
 	t.raw = t.raw[t.kept[lo] : t.kept[hi]+1]
 	if swept(path) < 0 {

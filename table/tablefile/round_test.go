@@ -60,7 +60,7 @@ func drawFree(t *rapid.T) shape.Shape {
 		}
 	}
 	for i := range nodes {
-		if nodes[i].Span == shape.Curved {
+		if nodes[i].Span == shape.Curved && rapid.Bool().Draw(t, "handles") {
 			chord := r2.Sub(nodes[(i+1)%n].At, nodes[i].At)
 			nodes[i].Out = r2.Scale(real(t, 0.1, 0.3, "out"), chord)
 			nodes[(i+1)%n].In = r2.Scale(-real(t, 0.1, 0.3, "in"), chord)

@@ -1,6 +1,7 @@
 package live
 
 import (
+	"context"
 	"image"
 	"image/color"
 	"math"
@@ -10,6 +11,7 @@ import (
 	"cavitywright/sim"
 	"cavitywright/sim/figure"
 	"cavitywright/sim/measure"
+	"cavitywright/sim/run"
 	"cavitywright/table"
 	"cavitywright/table/plane"
 	"cavitywright/ui/session"
@@ -31,11 +33,12 @@ type balls struct {
 // ball is one orbit on the move: it flies from the vertex before to the last
 // one of its track.
 type ball struct {
+	start  sim.Start
 	hue    int
 	walker *sim.Walker
 	from   r2.Vec
 	to     r2.Vec
-	leg    float64 // length of this flight; +Inf for one that escaped
+	leg    float64 // length of this flight; +Inf for one that escaped, 0 for one that stopped
 	gone   float64 // of it, flown
 	stop   sim.Stop
 	trail  []r2.Vec // the vertices behind, newest last
@@ -60,55 +63,38 @@ func (b *balls) show(r *Request, tr *sim.Tracer) {
 	b.layout()
 }
 
-// launch opens every orbit and traces what is drawn of it.
+// launch opens every orbit and traces what is drawn of it: all but the sea.
 func (b *balls) launch(tr *sim.Tracer) {
 	study := b.req.Table.Design().Study
 	b.all = b.all[:0]
 	p := measure.NewPortrait(tr, study.Launches, 0)
-	colored := 0
-	for i := range p.Orbits() {
-		if p.Hue(i) >= 0 {
-			colored++
-		}
+	for i := range min(p.Orbits(), mostBalls) {
+		b.all = append(b.all, newBall(tr, p.Start(i, nil), p.Hue(i)))
 	}
-	each := min(b.req.Settings.Drawn, mostSegments/max(colored, 1))
-	var lines []figure.Line
-	w := tr.Walker()
-	for i := range p.Orbits() {
-		start := p.Start(i, nil)
-		if p.Hue(i) >= 0 && each > 0 {
-			lines = append(lines, track(w, start, each, p.Hue(i), b.size))
-		}
-		if len(b.all) < mostBalls {
-			b.all = append(b.all, newBall(tr, start, p.Hue(i)))
-		}
+	b.figure = figure.Paths{Unit: b.req.Table.Design().Unit.String()}
+	drawn := measure.NewRays(tr, study.Launches, 0)
+	drawn.Portrait = drawn.Coloured()
+	if drawn.Orbits() == 0 || b.req.Settings.Drawn == 0 {
+		return
 	}
-	b.figure.Unit = b.req.Table.Design().Unit.String()
-	b.figure.Lines = lines
-}
-
-// track is the first n flights of an orbit as a line.
-func track(w *sim.Walker, s sim.Start, n, hue int, size float64) figure.Line {
-	l := figure.Line{Role: figure.Ray, Hue: hue}
-	bounce := w.Open(s)
-	l.X, l.Y = append(l.X, bounce.Point.X), append(l.Y, bounce.Point.Y)
-	for bounce.Stop == sim.Going && bounce.N < n {
-		bounce = w.Next(0.5)
-		at := bounce.Point
-		if math.IsInf(bounce.Flight, 0) {
-			at = r2.Add(at, r2.Scale(4*size, bounce.Dir))
-		}
-		l.X, l.Y = append(l.X, at.X), append(l.Y, at.Y)
+	drawn.Each = max(1, min(b.req.Settings.Drawn, mostSegments/drawn.Orbits()))
+	tally, err := run.Run(context.Background(), run.Job{Tracer: tr, Measure: drawn, Seed: study.Seed})
+	if err == nil {
+		b.figure.Lines = tally.(*measure.RaysTally).Lines()
 	}
-	return l
 }
 
 func newBall(tr *sim.Tracer, s sim.Start, hue int) ball {
-	b := ball{hue: hue, walker: tr.Walker()}
-	first := b.walker.Open(s)
-	b.to, b.stop = first.Point, first.Stop
-	b.fly()
+	b := ball{start: s, hue: hue, walker: tr.Walker()}
+	b.open()
 	return b
+}
+
+// open puts the ball back to its start.
+func (b *ball) open() {
+	first := b.walker.Open(b.start)
+	b.to, b.stop, b.gone, b.trail = first.Point, first.Stop, 0, b.trail[:0]
+	b.fly()
 }
 
 // fly begins the next flight.
@@ -148,6 +134,10 @@ func (b *balls) advance(dt float64) bool {
 	return true
 }
 
+// awayFor is how long, in lengths of its trail, a ball that left or stopped
+// stays away before it is launched anew.
+const awayFor = 4
+
 // mostFlights bounds the bounces of a ball from frame to frame, in a cusp or
 // along a wall.
 const mostFlights = 64
@@ -162,8 +152,10 @@ func (b *ball) move(step, trail float64) {
 		b.trail = append(b.trail, b.to)
 		b.fly()
 	}
-	if b.leg == 0 {
-		b.gone = 0
+	if b.leg == 0 || math.IsInf(b.leg, 0) {
+		if b.gone > awayFor*trail {
+			b.open() // it left, or stopped, some time ago
+		}
 	}
 	b.cut(trail)
 }
@@ -192,7 +184,9 @@ func View(t *table.Table, v render.View, size image.Point, look render.Look) ren
 		return v
 	}
 	b, box := t.Bounds(), render.NewBox(0, 0, float64(size.X), float64(size.Y))
-	v = render.Fit(render.Extent{X0: b.Min.X, Y0: b.Min.Y, X1: b.Max.X, Y1: b.Max.Y}, box.Inset(1.5*look.Margin), look)
+	room := box.Inset(1.5 * look.Margin)
+	room.Max.Y -= 1.5 * look.Small // for the scale bar
+	v = render.Fit(render.Extent{X0: b.Min.X, Y0: b.Min.Y, X1: b.Max.X, Y1: b.Max.Y}, room, look)
 	v.Box = box
 	return v
 }

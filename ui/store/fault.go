@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"io/fs"
+	"os"
 	"path/filepath"
 	"syscall"
 )
@@ -74,6 +75,9 @@ func (f *Fault) Unwrap() error { return f.cause }
 func reason(err error) string {
 	if p := (*fs.PathError)(nil); errors.As(err, &p) {
 		return p.Err.Error()
+	}
+	if l := (*os.LinkError)(nil); errors.As(err, &l) {
+		return l.Err.Error()
 	}
 	return err.Error()
 }

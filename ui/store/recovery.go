@@ -56,24 +56,33 @@ func (r *Recovery) Keep(d table.Design, path string, at time.Time) error {
 	if err := tablefile.Write(b, d); err != nil {
 		return err
 	}
+	first := r.copy == ""
 	if err := r.ensure(); err != nil {
 		return err
 	}
-	return replace(computer{}, r.copy, b.Bytes())
+	err = replace(computer{}, r.copy, b.Bytes())
+	if err != nil && first {
+		_ = r.Clear() // an empty file; what failed is said already
+	}
+	return err
 }
+
+// unsaved is what a sentence calls the copy, of which a person does not know
+// the file.
+const unsaved = "the unsaved state"
 
 // ensure makes the folder, and a file in it of a name that no other document
 // has.
 func (r *Recovery) ensure() error {
 	if err := os.MkdirAll(r.folder, 0o700); err != nil {
-		return fault(saving, filepath.Join(r.folder, copyPattern), err)
+		return fault(saving, filepath.Join(r.folder, unsaved), err)
 	}
 	if r.copy != "" {
 		return nil
 	}
 	f, err := os.CreateTemp(r.folder, copyPattern)
 	if err != nil {
-		return folderFault(computer{}, filepath.Join(r.folder, copyPattern), err)
+		return folderFault(computer{}, filepath.Join(r.folder, unsaved), err)
 	}
 	r.copy = f.Name()
 	return f.Close()

@@ -37,8 +37,8 @@ func (computer) Remove(path string) error                     { return os.Remove
 func (computer) SyncFolder(path string) error                 { return syncFolder(path) }
 
 const (
-	newMode   = 0o644  // of a file that was not there
-	writable  = 0o200  // the bit without which a file counts as locked
+	newMode   = 0o644 // of a file that was not there
+	writable  = 0o200 // the bit without which a file counts as locked
 	temporary = ".cavitywright-*.tmp"
 )
 
@@ -55,7 +55,10 @@ func replace(d disk, path string, content []byte) error {
 	if err != nil {
 		return folderFault(d, path, err)
 	}
-	err = errors.Join(fill(f, content, mode), f.Close())
+	err = fill(f, content, mode)
+	if shut := f.Close(); err == nil {
+		err = shut
+	}
 	if err == nil {
 		err = d.Rename(f.Name(), path)
 	}

@@ -103,17 +103,22 @@ func (w *Window) figure(rays bool) (figure.Figure, error) {
 	if rays {
 		each = w.session.Settings.Drawn
 	}
-	p := measure.NewPortrait(tr, study.Launches, each)
-	if p.Orbits() == 0 {
+	var m measure.Measurement = measure.NewPortrait(tr, study.Launches, each)
+	if rays {
+		m = measure.NewRays(tr, study.Launches, each)
+	}
+	if m.Orbits() == 0 {
 		return nil, fmt.Errorf("nothing is launched yet; launch a ray or seed the section first")
 	}
-	if rays {
-		return nil, nil
-	}
-	tally, err := run.Run(context.Background(), run.Job{Tracer: tr, Measure: p, Seed: study.Seed})
+	tally, err := run.Run(context.Background(), run.Job{Tracer: tr, Measure: m, Seed: study.Seed})
 	if err != nil {
 		return nil, err
 	}
-	_ = tally
-	return nil, nil
+	if rays {
+		return measure.RaysFigure(t, tally.(*measure.RaysTally), Program), nil
+	}
+	return measure.PortraitFigure(t, tally.(*measure.PortraitTally), Program), nil
 }
+
+// Program is the name and version that figures carry.
+const Program = "Cavitywright 0.1.0"

@@ -12,6 +12,7 @@ import (
 	"cavitywright/render/export"
 	"cavitywright/table"
 	"cavitywright/table/tablefile"
+	"cavitywright/ui/store"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/container"

@@ -1,0 +1,95 @@
+package measure
+
+import (
+	"math"
+	"testing"
+
+	"cavitywright/sim"
+)
+
+// TestDecayExact feeds a tally with made-up rays whose rate is known in closed
+// form, for guesses of the rate that are good and bad: half of the rays fly 1,
+// half fly 2, and a share goes on at each bounce, so that
+// q (exp(g) + exp(2 g)) / 2 = 1.
+func TestDecayExact(t *testing.T) {
+	const q = 0.25
+	e := 0.5 * (math.Sqrt(1+8/q) - 1) // exp(g), the root of e^2 + e = 2/q
+	want := math.Log(e)
+	for _, guess := range []float64{want, 0.6 * want, 0.9 * want, 1.4 * want, 2.5 * want} {
+		m := Escape{Points: NewFibonacci(256), Shifts: make([]Shift, 2), Marks: []int{2, 6}, Rate: guess, Flight: 1.4}
+		tally := m.Tally().(*EscapeTally)
+		n := m.Points.Size()
+		for k := range 2 {
+			// All 64 ways of six flights, with their weights.
+			for way := range 64 {
+				tally.Open(k*n + way)
+				tally.Add(&sim.Bounce{Weight: 1})
+				for b := 1; b <= 6; b++ {
+					tally.Add(&sim.Bounce{N: b, Flight: 1 + float64(way>>(b-1)&1), Weight: math.Pow(q, float64(b))})
+				}
+				tally.Close()
+			}
+		}
+		d, ok := tally.Decay(0, 1)
+		if !ok || math.Abs(d.Rate-want) > 1e-9*want {
+			t.Errorf("guess %g: the rate is %.15g (%v), want %.15g", guess, d.Rate, ok, want)
+		}
+		if d.Err > 1e-12 {
+			t.Errorf("guess %g: two equal lattices have the error %g, want 0", guess, d.Err)
+		}
+	}
+}
+
+// TestLattice wants every lattice to be even: along each side one point in each
+// of as many equal parts, whatever its shift; and Fibonacci numbers as sizes.
+func TestLattice(t *testing.T) {
+	for n, want := range map[int]int{-1: 1, 0: 1, 1: 1, 2: 2, 3: 3, 4: 3, 12: 8, 13: 13, 1000: 987} {
+		if got := NewFibonacci(n).Size(); got != want {
+			t.Errorf("the largest lattice of at most %d points has %d, want %d", n, got, want)
+		}
+	}
+	f := NewFibonacci(1000)
+	n := f.Size()
+	for _, s := range []Shift{{0.2 / 987, 0.3 / 987}, {0.123456, 0.98765}} {
+		us, vs := make([]int, n), make([]int, n)
+		for i := range n {
+			u, v := f.At(i, s)
+			if !(u >= 0 && u < 1 && v >= 0 && v < 1) {
+				t.Fatalf("point %d is (%g, %g)", i, u, v)
+			}
+			us[int(wrapped(u-s.U+0.5/float64(n))*float64(n))]++
+			vs[int(wrapped(v-s.V+0.5/float64(n))*float64(n))]++
+		}
+		for i := range n {
+			if us[i] != 1 || vs[i] != 1 {
+				t.Fatalf("part %d of %d holds %d points along u and %d along v, want 1", i, n, us[i], vs[i])
+			}
+		}
+	}
+}
+
+// TestCells wants the cells to hold the place of a lasting ray, with its
+// neighbours, and nothing else.
+func TestCells(t *testing.T) {
+	if u, v := WholeSection().At(0.3, 0.7); u != 0.3 || v != 0.7 || WholeSection().Share() != 1 {
+		t.Error("the whole section moves its places")
+	}
+	tally := LastingTally{starts: []int32{5*cellsASide + 0, 0, cellsASide*cellsASide - 1}}
+	c := tally.Cells()
+	// 3 x 3 about (0, 5), 3 x 2 about (0, 0) and about the last: around s
+	// the cells (0, 0) and (511, 511) do not meet.
+	if got := len(c.cells); got != 9+6+6 {
+		t.Fatalf("there are %d cells, want 21", got)
+	}
+	for i := range 2100 {
+		u, v := c.At((float64(i)+0.5)/2100, 0.25)
+		x, y := int(u*cellsASide), int(v*cellsASide)
+		near := func(cx, cy int) bool {
+			dx := (x - cx + cellsASide + 1) % cellsASide
+			return dx <= 2 && y >= cy-1 && y <= cy+1
+		}
+		if !near(0, 5) && !near(0, 0) && !near(511, 511) {
+			t.Fatalf("the place (%g, %g) lies in the cell (%d, %d)", u, v, x, y)
+		}
+	}
+}
