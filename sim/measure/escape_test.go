@@ -96,6 +96,9 @@ func TestEscapePublished(t *testing.T) {
 // standard errors; for the error of 32 lattices 38 are expected.
 func TestEscapeErrorHonest(t *testing.T) {
 	const runs, least = 40, 36
+	if testing.Short() {
+		t.Skip("80 runs")
+	}
 	for _, c := range []struct {
 		name   string
 		tracer *sim.Tracer

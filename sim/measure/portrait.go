@@ -42,16 +42,18 @@ func (p Portrait) Continued(ends []sim.Bounce, each int) Portrait {
 // its own.
 const Sea = -1
 
-// NewPortrait is the portrait of the launches. Each launch has one hue, except
-// that the orbits of an even seeding are the sea.
+// NewPortrait is the portrait of the launches. Each orbit has a hue of its own,
+// except that those of an even seeding are the sea.
 func NewPortrait(tr *sim.Tracer, launches []table.Launch, each int) Portrait {
 	p := Portrait{Each: each}
-	for i, l := range launches {
-		hue := i
-		if l.Pattern == table.Even {
-			hue = Sea
-		}
+	next := 0
+	for _, l := range launches {
 		for _, s := range tr.Launched(l) {
+			hue := Sea
+			if l.Pattern != table.Even {
+				hue = next
+				next++
+			}
 			p.starts = append(p.starts, s)
 			p.hues = append(p.hues, hue)
 		}

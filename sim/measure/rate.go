@@ -60,7 +60,8 @@ const (
 	// sparse is the survival a bounce below which most starts are wasted and
 	// the pilot looks for the cells from which rays last.
 	sparse       = 0.6
-	searchPoints = 1 << 20
+	searchPoints = 1 << 20 // at effort 1 and above
+	searchLeast  = 1 << 16
 	// escapeWork is the number of flights at effort 1.
 	escapeWork = 4e7
 )
@@ -77,7 +78,7 @@ func MeasureEscape(tr *sim.Tracer, run Runner, effort float64) (EscapeRate, erro
 	if err := p.pilot(); err != nil {
 		return EscapeRate{}, err
 	}
-	if err := p.search(); err != nil {
+	if err := p.search(effort); err != nil {
 		return EscapeRate{}, err
 	}
 	ran, err := run(p.main(effort))
@@ -155,11 +156,11 @@ func (p *plan) pilot() error {
 // search finds the cells of the section from which rays last, where they are
 // few. They are sought by the second bounce, or by the first where the search
 // would see too few of the strips from which a ray makes two.
-func (p *plan) search() error {
+func (p *plan) search(effort float64) error {
 	if p.rays > sparse {
 		return nil
 	}
-	l := Lasting{Tracer: p.tracer, Points: NewFibonacci(searchPoints), Shift: p.shifts[0], Each: 2}
+	l := Lasting{Tracer: p.tracer, Points: NewFibonacci(int(max(searchPoints*min(effort, 1), searchLeast))), Shift: p.shifts[0], Each: 2}
 	if p.share[2] < 0.01 {
 		l.Each = 1
 	}

@@ -112,7 +112,7 @@ func (n nodes) settleRow(i, k, lead int) {
 	default:
 		n.bendOn(i+1, k-1)
 	}
-	if false && n.kink(i+k) > tangency {
+	if tied && tiedEnd && n.kink(i+k) > tangency {
 		n.at(i + k).Joint = Corner
 	}
 }

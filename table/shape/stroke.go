@@ -29,7 +29,7 @@ const (
 )
 
 // samples are the means of the points of a closed stroke in equal steps of its
-// arclength, counter-clockwise, each with its weight and its parameter u,
+// arclength, each with its weight and its parameter u,
 // ascending in [0, 1). raw are the stroke's points themselves, and home the
 // sample that each belongs to.
 type samples struct {
@@ -55,8 +55,8 @@ func (t trail) path() []r2.Vec {
 	return path
 }
 
-// cleaned is the stroke without the end that was drawn over the start, counter-
-// clockwise. The error is a *Fault.
+// cleaned is the stroke without the end that was drawn over the start. The
+// error is a *Fault.
 func cleaned(stroke []r2.Vec, tol float64) (trail, error) {
 	t := trail{raw: slices.DeleteFunc(slices.Clone(stroke), func(p r2.Vec) bool { return !plane.Finite(p) })}
 	size := plane.Diagonal(plane.Around(t.raw...))
@@ -78,9 +78,6 @@ func cleaned(stroke []r2.Vec, tol float64) (trail, error) {
 		return t, misfit("the stroke crosses itself or encloses nothing; draw once all the way round")
 	}
 	t.raw = t.raw[t.kept[lo] : t.kept[hi]+1]
-	if swept(path) < 0 {
-		slices.Reverse(t.raw)
-	}
 	t.thin(math.Max(tol/2, coincident*size))
 	return t, nil
 }

@@ -186,6 +186,8 @@ func View(t *table.Table, v render.View, size image.Point, look render.Look) ren
 	b, box := t.Bounds(), render.NewBox(0, 0, float64(size.X), float64(size.Y))
 	room := box.Inset(1.5 * look.Margin)
 	room.Max.Y -= 1.5 * look.Small // for the scale bar
+	room.Min.X += 2 * look.Small   // for the name of s = 0
+	room.Max.X -= 2 * look.Small
 	v = render.Fit(render.Extent{X0: b.Min.X, Y0: b.Min.Y, X1: b.Max.X, Y1: b.Max.Y}, room, look)
 	v.Box = box
 	return v

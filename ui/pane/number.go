@@ -27,6 +27,9 @@ func newNumber() *number {
 	return n
 }
 
+// Inner is the field itself.
+func (n *number) Inner() *widget.Entry { return &n.Entry }
+
 // FocusGained remembers the text.
 func (n *number) FocusGained() {
 	n.focused, n.before = true, n.Text
