@@ -5,9 +5,12 @@ import (
 	"math"
 	"math/rand/v2"
 	"os"
+	"runtime"
 	"strconv"
 	"strings"
+	"sync"
 	"testing"
+	"time"
 
 	"cavitywright/table"
 	"cavitywright/table/curve"
@@ -30,7 +33,24 @@ func seedOf(t testing.TB) uint64 {
 		}
 	}
 	t.Logf("seed %d", seed)
+	watch.Do(watchMemory)
 	return seed
+}
+
+// mostMemory is far above what any table needs. A curve that is cut up without
+// end would otherwise take the whole machine along.
+const mostMemory = 1 << 30
+
+var watch sync.Once
+
+func watchMemory() {
+	var s runtime.MemStats
+	runtime.ReadMemStats(&s)
+	if s.HeapAlloc > mostMemory {
+		fmt.Fprintln(os.Stderr, "FAIL: the test holds more than 1 GiB; some curve is cut up without end")
+		os.Exit(1)
+	}
+	time.AfterFunc(50*time.Millisecond, watchMemory)
 }
 
 // drawing draws random tables and counts how many designs were no table.

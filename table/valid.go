@@ -261,15 +261,30 @@ func (t *Table) Contains(x r2.Vec) bool {
 	return len(t.loops) > 0
 }
 
+// mostOrbits and mostBounces bound a study to what can be run and written.
+const (
+	mostOrbits  = 1_000_000
+	mostBounces = 1_000_000_000
+)
+
 // checkLaunches holds the study to numbers in range. Whether a launch inside
 // the table starts within it is decided when it is run: an edit of the wall
 // may pass over it.
 func (t *Table) checkLaunches() *Fault {
+	if n := t.design.Study.Bounces; n < 0 || n > mostBounces {
+		return t.design.fault(BadLaunch, -1, "The study asks for %d bounces an orbit; ask for 0 to %d.", n, mostBounces)
+	}
 	for i, l := range t.design.Study.Launches {
 		for _, v := range []float64{l.S, l.P, l.Point.X, l.Point.Y, l.Angle, l.Spread, l.Region.S0, l.Region.S1, l.Region.P0, l.Region.P1} {
 			if math.IsNaN(v) || math.IsInf(v, 0) {
 				return t.design.fault(BadLaunch, -1, "Launch %d has a value that is not a number; launch it anew.", i+1)
 			}
+		}
+		if g := l.Region; g.S0 < 0 || g.S0 > 1 || g.S1 < 0 || g.S1 > 1 || math.Abs(g.P0) > 1 || math.Abs(g.P1) > 1 {
+			return t.design.fault(BadLaunch, -1, "Launch %d covers s/L from %v to %v and p from %v to %v; s/L must lie in [0, 1] and p in [-1, 1].", i+1, g.S0, g.S1, g.P0, g.P1)
+		}
+		if l.Count > mostOrbits {
+			return t.design.fault(BadLaunch, -1, "Launch %d has %d orbits; at most %d can be launched at once.", i+1, l.Count, mostOrbits)
 		}
 		if l.S < 0 || l.S >= 1 || math.Abs(l.P) >= 1 || l.Count < 0 {
 			return t.design.fault(BadLaunch, -1, "Launch %d starts at s/L = %v, p = %v; s/L must lie in [0, 1) and p between -1 and 1.", i+1, l.S, l.P)

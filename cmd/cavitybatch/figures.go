@@ -125,7 +125,7 @@ func (c *page) studied(d table.Design) (*table.Table, error) {
 func (c *page) draw(ctx context.Context, std streams, tr *sim.Tracer, m measure.Measurement, format export.Format,
 	make func(measure.Tally) figure.Figure) error {
 	if m.Orbits() == 0 {
-		return fmt.Errorf("%s: no launch of the study starts inside the table; move one, or take them out", c.File)
+		return fmt.Errorf("%s: no launch of the study starts inside the table; move one, or take them out", quoted(c.File))
 	}
 	t := tr.Table()
 	r := newRunner(ctx, tr, t.Design().Study.Seed, c.Workers, std)

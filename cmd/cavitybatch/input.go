@@ -18,18 +18,22 @@ import (
 // input where the name is "-". Errors name the file.
 func readTable(name string, std streams) (*table.Table, error) {
 	d, err := readDesign(name, std)
-	if err != nil {
-		if name == "-" {
-			name = "standard input"
-		}
-		return nil, fmt.Errorf("%s: %w", name, err)
+	var t *table.Table
+	if err == nil {
+		t, err = table.New(d)
 	}
-	t, err := table.New(d)
-	if err != nil {
-		return nil, fmt.Errorf("%s: %w", name, err)
+	switch {
+	case err == nil:
+		return t, nil
+	case name == "-":
+		return nil, fmt.Errorf("standard input: %w", err)
 	}
-	return t, nil
+	return nil, fmt.Errorf("%s: %w", quoted(name), err)
 }
+
+// quoted is a file's name as a sentence shows it, so that its first letter
+// stays as it is.
+func quoted(name string) string { return `"` + name + `"` }
 
 func readDesign(name string, std streams) (table.Design, error) {
 	if name == "-" {

@@ -84,11 +84,20 @@ func obey(ctx context.Context, args []string, std streams) int {
 		return left
 	}
 	if err != nil {
-		complain(std, fmt.Sprintf("%s; %s", strings.TrimSuffix(err.Error(), "."), hint(args)))
+		complain(std, fmt.Sprintf("%s; %s", plain.Replace(strings.TrimSuffix(err.Error(), ".")), hint(args)))
 		return exitUse
 	}
 	return verdict(line.Run(), std)
 }
+
+// plain puts the parser's complaints into words for whoever types commands.
+var plain = strings.NewReplacer(
+	"expected a float", "expected a number", "expected float value", "expected a number",
+	"expected an int", "expected a whole number", "expected int value", "expected a whole number",
+	"expected uint value", "expected a whole number", "expected string value", "expected a text",
+	"a valid 64 bit int", "a whole number", "a valid 64 bit uint", "a whole number from 0", "a valid 64 bit float", "a number",
+	`"EOL" (<EOL>)`, "nothing", " (string)", "",
+)
 
 // hint says where the use of a command is explained.
 func hint(args []string) string {

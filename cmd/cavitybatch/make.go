@@ -42,6 +42,9 @@ func (m *makeTable) Run(std streams) error {
 	if err != nil {
 		return err
 	}
+	if _, err := table.New(d); err != nil {
+		return err
+	}
 	var file bytes.Buffer
 	if err := tablefile.Write(&file, d); err != nil {
 		return err

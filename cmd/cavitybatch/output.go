@@ -19,7 +19,7 @@ func writeFile(name string, data []byte) error {
 	}
 	if info, err := os.Stat(name); err == nil {
 		if info.IsDir() {
-			return fmt.Errorf("%s: this is a folder; name a file in it", name)
+			return fmt.Errorf("%s: this is a folder; name a file in it", quoted(name))
 		}
 		if !info.Mode().IsRegular() {
 			return told(name, os.WriteFile(name, data, 0))
@@ -60,9 +60,9 @@ func told(name string, err error) error {
 	case err == nil:
 		return nil
 	case errors.Is(err, fs.ErrNotExist):
-		return fmt.Errorf("%s cannot be written: there is no folder %s; make it, or choose another", name, filepath.Dir(name))
+		return fmt.Errorf("%s cannot be written: there is no folder %s; make it, or choose another", quoted(name), filepath.Dir(name))
 	case errors.Is(err, fs.ErrPermission):
-		return fmt.Errorf("%s cannot be written: files may not be made in %s; choose another folder", name, filepath.Dir(name))
+		return fmt.Errorf("%s cannot be written: files may not be made in %s; choose another folder", quoted(name), filepath.Dir(name))
 	}
-	return fmt.Errorf("%s cannot be written (%w); choose another place", name, bare(err))
+	return fmt.Errorf("%s cannot be written (%w); choose another place", quoted(name), bare(err))
 }

@@ -6,6 +6,7 @@ import (
 	"cavitywright/table/plane"
 
 	"gonum.org/v1/gonum/integrate/quad"
+	"gonum.org/v1/gonum/spatial/r2"
 )
 
 // chart is the arclength of a span as a function of its private parameter: on
@@ -74,7 +75,7 @@ func (c *chart) build(s *Span, a, b float64, depth int) {
 	}
 	g[0] *= 0.5
 	tail := math.Abs(g[chartTerms-1]) + math.Abs(g[chartTerms-2])
-	if tail > chartTol*chartTerms*math.Abs(g[0]) && tail > chartFloor*c.size && depth < chartDepth {
+	if tail > chartTol*chartTerms*math.Abs(g[0]) && tail > chartFloor*c.size && tail > s.rounding()*math.Abs(half) && depth < chartDepth {
 		c.build(s, a, mid, depth+1)
 		c.build(s, mid, b, depth+1)
 		return
@@ -172,4 +173,14 @@ func (s *Span) quad(f func(t float64) float64) float64 {
 		sum += sign * quad.Fixed(f, lo, hi, chartTerms, quad.Legendre{}, 0)
 	}
 	return sum
+}
+
+// rounding is the size of the rounding error of the speed: the terms of the
+// velocity of a cubic cancel near the end of a short handle.
+func (s *Span) rounding() float64 {
+	if s.Kind != Bezier {
+		return 0
+	}
+	c := &s.Coef
+	return 4e-16 * (r2.Norm(c[1]) + 2*r2.Norm(c[2]) + 3*r2.Norm(c[3]))
 }

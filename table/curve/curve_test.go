@@ -218,6 +218,10 @@ func TestDegenerate(t *testing.T) {
 		{o, {X: 2, Y: 1}, {X: -2, Y: -1}, o},
 		{o, {X: 1e-9, Y: 1}, {X: -1e-9, Y: -1}, {X: 1}},
 		{o, {X: 1, Y: 1}, {X: 0, Y: 1}, {X: 1}}, // a cusp
+		{{X: math.Float64frombits(0x3fef34f0fb840000)}, // short handles whose terms cancel
+			{X: math.Float64frombits(0x3fead958347884d7), Y: math.Float64frombits(0x3fd7bece6036a032)},
+			{X: math.Float64frombits(0x3fd49173aa08de2a), Y: math.Float64frombits(0x3fefa6b27a70067a)},
+			{X: math.Float64frombits(0x3fd49173aa08de2a), Y: math.Float64frombits(0x3fefa6b27a70067a)}},
 		{{X: 1e6}, {X: 1e6, Y: 1e-6}, {X: 1e6, Y: 2e-6}, {X: 1e6, Y: 3e-6}},
 	} {
 		panels := 0

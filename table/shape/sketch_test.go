@@ -10,6 +10,7 @@ import (
 	"cavitywright/table/plane"
 
 	"gonum.org/v1/gonum/spatial/r2"
+	"pgregory.net/rapid"
 )
 
 // The outlines that a hand may follow, by an angle.
@@ -144,6 +145,22 @@ func TestSketchClosesTheStroke(t *testing.T) {
 			}
 		}
 	}
+}
+
+// TestSketchTakesAnything: a scribble is refused or made a wall that follows it.
+func TestSketchTakesAnything(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		n := rapid.IntRange(0, 40).Draw(t, "n")
+		s := make([]r2.Vec, n)
+		jump := rapid.SampledFrom([]float64{0, 0.1, 1, 5}).Draw(t, "jump")
+		for i := range s {
+			s[i] = r2.Add(ellipseAt(fullTurn*float64(i)/float64(n)), drawVec(t, "jump", jump))
+		}
+		f, err := Sketch(s, rapid.SampledFrom([]float64{0, 0.003, 0.1, 0.5}).Draw(t, "tol"))
+		if err == nil {
+			checkLoops(t, loopsOf(t, f))
+		}
+	})
 }
 
 func TestSketchRefuses(t *testing.T) {

@@ -64,11 +64,14 @@ func cleaned(stroke []r2.Vec, tol float64) (trail, error) {
 		return t, misfit("the stroke is too small for the tolerance; draw it larger")
 	}
 	t.thin(math.Max(tol/2, coincident*size))
-	if len(t.kept) < leastPoints {
+	lo, hi := 0, len(t.kept)-1
+	path := t.path()
+	if len(path) >= leastPoints {
+		lo, hi = withoutOverlap(path)
+	}
+	if hi-lo+1 < leastPoints {
 		return t, misfit("the stroke is too short; draw a longer one")
 	}
-	path := t.path()
-	lo, hi := withoutOverlap(path)
 	path = path[lo : hi+1]
 	s := lengths(path)
 	if gap := r2.Norm(r2.Sub(path[0], path[len(path)-1])); gap > widestGap*s[len(s)-1] {

@@ -33,10 +33,14 @@ type portrait struct {
 	rounds  int
 	bounces int64
 	stops   measure.Stops
+	few     bool    // so few orbits of their own that each can be drawn bold
 	pace    float64 // bounces a second in the last round
 }
 
 const (
+	// fewOrbits is the number of orbits of their own up to which their dots are
+	// drawn larger than the sea's.
+	fewOrbits = 4
 	// firstRound is the bounces of the first round: enough to tell an island
 	// from the sea, few enough for the first frame.
 	firstRound = 120
@@ -72,6 +76,7 @@ func (p *portrait) restart() {
 	p.density.Clear()
 	p.each, p.rounds, p.bounces, p.stops = 0, 0, 0, measure.Stops{}
 	p.next = measure.NewPortrait(p.tracer, study.Launches, 0)
+	p.few = p.next.Coloured().Orbits() <= fewOrbits
 }
 
 // layout draws the axes.
@@ -146,7 +151,7 @@ func (p *portrait) keep(t *measure.PortraitTally) {
 			x, y := p.section.At(set.X[i], set.Y[i])
 			px, py := p.plot.ToX(x)-p.plot.Frame.Min.X, p.plot.ToY(y)-p.plot.Frame.Min.Y
 			p.density.Add(px, py, set.Hue)
-			if set.Hue >= 0 { // an orbit of its own stands out from the sea
+			if set.Hue >= 0 && p.few { // an orbit of its own stands out from the sea
 				p.density.Add(px+1, py, set.Hue)
 				p.density.Add(px, py+1, set.Hue)
 				p.density.Add(px+1, py+1, set.Hue)

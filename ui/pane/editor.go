@@ -24,15 +24,17 @@ import (
 // Editor is the pane in which the table is drawn and reshaped.
 type Editor struct {
 	*Surface
-	desk    *Desk
-	tool    *tool.Editor
-	mark    ring
-	breath  ring
-	picture *image.RGBA
-	canvas  *pixel.Canvas
-	outline []figure.Line
-	of      *table.Table // whose outline it is, drawn at scale
-	scale   float64
+	desk   *Desk
+	tool   *tool.Editor
+	mark   ring
+	breath ring
+
+	breathing *fyne.Animation
+	picture   *image.RGBA
+	canvas    *pixel.Canvas
+	outline   []figure.Line
+	of        *table.Table // whose outline it is, drawn at scale
+	scale     float64
 }
 
 // NewEditor is the editor's pane on a desk.
@@ -78,6 +80,7 @@ func (e *Editor) hold() {
 // Press takes hold, or draws.
 func (e *Editor) Press(x, y float64, k tool.Keys) {
 	e.hold()
+	e.stopBreath()
 	e.desk.Point(Place{})
 	p, reach := e.at(x, y)
 	e.tool.Press(p, reach, k)
@@ -359,7 +362,17 @@ func (e *Editor) Breathe() {
 		}
 	})
 	a.RepeatCount = 2
+	e.breathing = a
 	a.Start()
+}
+
+// stopBreath ends it: the hand has found what to do.
+func (e *Editor) stopBreath() {
+	if e.breathing != nil {
+		e.breathing.Stop()
+		e.breathing = nil
+		e.breath.hide()
+	}
 }
 
 // breathTime is the time of one breath.

@@ -103,6 +103,12 @@ func (w *Window) menu() *fyne.MainMenu {
 
 // loose takes a key that no field has.
 func (w *Window) loose(k fyne.KeyName) {
+	if top := w.win.Canvas().Overlays().Top(); top != nil {
+		if k == fyne.KeyEscape {
+			w.win.Canvas().Overlays().Remove(top)
+		}
+		return
+	}
 	for _, c := range w.commands {
 		if c.bare != "" && c.bare == k {
 			c.run()

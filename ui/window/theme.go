@@ -1,6 +1,8 @@
 package window
 
 import (
+	"bytes"
+	"fmt"
 	"image/color"
 
 	"cavitywright/assets"
@@ -104,7 +106,22 @@ func (dress) Size(n fyne.ThemeSizeName) float32 {
 	return theme.DefaultTheme().Size(n)
 }
 
-// icon is one of our own icons in the theme's ink.
-func icon(name string) fyne.Resource {
-	return theme.NewThemedResource(fyne.NewStaticResource(name+".svg", assets.Stroke(name)))
+// glyph is one of our own icons in the ink of the theme that stands. The ink is
+// part of its name, since the toolkit keeps drawn icons by name.
+type glyph string
+
+func (g glyph) ink() string {
+	r, gr, b, _ := theme.Color(theme.ColorNameForeground).RGBA()
+	return fmt.Sprintf("#%02x%02x%02x", r>>8, gr>>8, b>>8)
 }
+
+// Name is the icon's name with the ink.
+func (g glyph) Name() string { return string(g) + g.ink() + ".svg" }
+
+// Content is the drawing in that ink.
+func (g glyph) Content() []byte {
+	return bytes.ReplaceAll(assets.Stroke(string(g)), []byte("#000000"), []byte(g.ink()))
+}
+
+// icon is the icon called name.
+func icon(name string) fyne.Resource { return glyph(name) }
