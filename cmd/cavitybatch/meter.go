@@ -47,7 +47,8 @@ func (r *runner) run(m measure.Measurement) (measure.Tally, error) {
 	if r.bars == nil {
 		return run.Run(r.ctx, job)
 	}
-	bar := r.bars.New(1, mpb.BarStyle().Rbound(" "), mpb.BarRemoveOnComplete(),
+	// A total of 0 leaves it open until the first block is done.
+	bar := r.bars.New(0, mpb.BarStyle(), mpb.BarRemoveOnComplete(),
 		mpb.PrependDecorators(decor.Name(r.title, decor.WC{W: 18, C: decor.DindentRight})),
 		mpb.AppendDecorators(decor.Percentage()))
 	job.Progress = func(done, total int, _ measure.Tally) {

@@ -2,7 +2,6 @@ package main
 
 import (
 	"context"
-	"errors"
 	"fmt"
 	"runtime"
 	"text/tabwriter"
@@ -31,13 +30,15 @@ type speeds struct {
 const (
 	leastSeconds = 0.05
 	mostSeconds  = 3600
-	// warmUp is the part of a run's time that is run before it and not
-	// counted: it fills the caches and wakes the processors.
-	warmUp = 0.1
-	// endless is more orbits than any run finishes.
-	endless = 1 << 40
 	// each is the number of bounces of an orbit, so that starts cost little.
 	each = 500
+	// first is the number of orbits a worker runs before anything is known of
+	// the speed, and growth the most by which the next run is larger. The
+	// smaller runs fill the caches and wake the processors.
+	first  = 20
+	growth = 10
+	// enough is the part of the time that a run must take to count.
+	enough = 0.6
 )
 
 // Run measures.
@@ -51,14 +52,11 @@ func (c *pace) Run(ctx context.Context, std streams) error {
 	}
 	tr := sim.Compile(t)
 	s := speeds{Workers: runtime.GOMAXPROCS(0), Seconds: c.Seconds}
-	for _, r := range []struct {
-		seconds float64
-		workers int
-		speed   *float64
-	}{{warmUp * c.Seconds, 1, new(float64)}, {c.Seconds, 1, &s.One}, {warmUp * c.Seconds, s.Workers, new(float64)}, {c.Seconds, s.Workers, &s.All}} {
-		if *r.speed, err = speed(ctx, tr, r.seconds, r.workers); err != nil {
-			return err
-		}
+	if s.One, err = speed(ctx, tr, c.Seconds, 1); err != nil {
+		return err
+	}
+	if s.All, err = speed(ctx, tr, c.Seconds, s.Workers); err != nil {
+		return err
 	}
 	if c.JSON {
 		return writeJSON(std.out, s)
@@ -68,22 +66,20 @@ func (c *pace) Run(ctx context.Context, std streams) error {
 	return w.Flush()
 }
 
-// speed traces real orbits for a time, and counts the bounces of the blocks
-// that were finished in it.
+// speed traces real orbits, more each time until a run takes about as long as
+// asked, and gives the bounces a second of that run.
 func speed(ctx context.Context, tr *sim.Tracer, seconds float64, workers int) (float64, error) {
-	ctx, cancel := context.WithTimeout(ctx, time.Duration(seconds*float64(time.Second)))
-	defer cancel()
-	start, last := time.Now(), 0.0
-	job := run.Job{
-		Tracer: tr, Measure: measure.Chord{Tracer: tr, N: endless, Each: each}, Seed: 1, Workers: workers,
-		Progress: func(int, int, measure.Tally) { last = time.Since(start).Seconds() },
+	for orbits := first * workers; ; {
+		start := time.Now()
+		job := run.Job{Tracer: tr, Measure: measure.Chord{Tracer: tr, N: orbits, Each: each}, Seed: 1, Workers: workers}
+		sum, err := run.Run(ctx, job)
+		if err != nil {
+			return 0, err
+		}
+		took := time.Since(start).Seconds()
+		if took >= enough*seconds {
+			return float64(sum.(*measure.ChordTally).Count) / took, nil
+		}
+		orbits = int(float64(orbits) * min(seconds/took, growth))
 	}
-	sum, err := run.Run(ctx, job)
-	if err != nil && !errors.Is(err, context.DeadlineExceeded) {
-		return 0, err
-	}
-	if last == 0 {
-		return 0, fmt.Errorf("no block of bounces was finished in %g s; give it more --seconds", seconds)
-	}
-	return float64(sum.(*measure.ChordTally).Count) / last, nil
 }

@@ -59,7 +59,8 @@ func eachKind(t *testing.T, check func(t *rapid.T, k *Kind)) {
 }
 
 // checkLoops holds loops to the contract of Shape.
-func checkLoops(t *rapid.T, loops []Loop) {
+func checkLoops(t failer, loops []Loop) {
+	t.Helper()
 	for li, l := range loops {
 		area, box := 0.0, plane.Around()
 		var spans []curve.Span
@@ -71,15 +72,15 @@ func checkLoops(t *rapid.T, loops []Loop) {
 		for i := range spans {
 			a, b := &spans[i], &spans[(i+1)%len(spans)]
 			if gap := r2.Norm(r2.Sub(b.A, a.B)); !(gap <= 1e-12*size) {
-				t.Fatalf("loop %d: gap of %g of its size after span %d", li, gap/size, i)
+				t.Fatal("loop", li, "has a gap, in its sizes, of", gap/size, "after span", i)
 			}
 			if !(a.Length > 0) {
-				t.Fatalf("loop %d: span %d has length %g", li, i, a.Length)
+				t.Fatal("loop", li, "span", i, "has the length", a.Length)
 			}
 			area += a.Swept(spans[0].A)
 		}
 		if (area > 0) != (l.Side == Outer) {
-			t.Fatalf("loop %d: side %d, but area %g", li, l.Side, area)
+			t.Fatal("loop", li, "of side", l.Side, "has the area", area)
 		}
 	}
 }

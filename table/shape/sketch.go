@@ -45,7 +45,7 @@ const (
 	// beyond.
 	stride = 12
 	// hopeless is the distance in tolerances beyond which shifting the knots
-	// is not tried.
+	// is not tried; half of it beyond the stride, where a shift takes longer.
 	hopeless = 4
 	// patience is the number of fits that cross themselves within the
 	// tolerance after which it is the stroke that does.
@@ -65,6 +65,10 @@ func (c *samples) placed(n int, tol float64) (*periodic, bool) {
 	now := c.follow(c.startKnots(n))
 	var good *periodic
 	shift := 0.2 / float64(n)
+	reach := tol * hopeless
+	if n > stride {
+		reach /= 2
+	}
 	for left := sweeps; now.spline != nil; left-- {
 		switch greatest := now.samples.greatest(now.spline); {
 		case greatest <= tol:
@@ -72,7 +76,7 @@ func (c *samples) placed(n int, tol float64) (*periodic, bool) {
 				left = min(left, polish)
 			}
 			good = now.spline
-		case good == nil && greatest > hopeless*tol:
+		case good == nil && greatest > reach:
 			return nil, false
 		}
 		if left == 0 {

@@ -3,7 +3,7 @@ package window
 import (
 	"bytes"
 	"context"
-	"fmt"
+	"errors"
 	"strings"
 
 	"cavitywright/render/export"
@@ -11,8 +11,11 @@ import (
 	"cavitywright/sim/figure"
 	"cavitywright/sim/measure"
 	"cavitywright/sim/run"
+	"cavitywright/table"
 	"cavitywright/table/tablefile"
+	"cavitywright/ui/live"
 	"cavitywright/ui/pane"
+	"cavitywright/ui/store"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/dialog"
@@ -64,53 +67,75 @@ func (w *Window) exportBeside() {
 	w.ExportFigure(strings.TrimSuffix(p, ".cavity.json")+"-portrait.png", false, export.Options{WidthMM: 85, DPI: 600})
 }
 
-// ExportFigure writes the portrait, or the table with its rays, to a file.
+// ExportFigure writes the portrait, or the table with its rays, to a file. It
+// works beside the window, with progress, and can be stopped.
 func (w *Window) ExportFigure(path string, rays bool, o export.Options) {
 	format, err := export.FormatOf(path)
 	if err != nil {
 		w.foot.say(err.Error())
 		return
 	}
-	fig, err := w.figure(rays)
-	if err != nil {
-		w.foot.say(err.Error())
+	if w.task != nil {
+		w.say("Another figure is being written; stop it, or wait until it is done.")
 		return
 	}
-	var file bytes.Buffer
-	if err := tablefile.Write(&file, w.session.Table().Design()); err != nil {
-		w.foot.say(err.Error())
-		return
-	}
-	o.Table = file.Bytes()
-	var out bytes.Buffer
-	if err := export.Write(&out, format, fig, o); err != nil {
-		w.foot.say(err.Error())
-		return
-	}
-	if err := writeFile(path, out.Bytes()); err != nil {
-		w.foot.say(err.Error())
-		return
-	}
-	w.say("Written: %s.", path)
+	t, drawn := w.session.Table(), w.session.Settings.Drawn
+	w.foot.busy("Computing the figure", 0)
+	w.task = live.Start(w.post, func(ctx context.Context, share func(float64)) error {
+		return exportFigure(ctx, share, t, path, format, rays, drawn, o)
+	}, func(x float64) {
+		w.foot.busy("Computing the figure", x)
+	}, func(err error) {
+		w.task = nil
+		w.foot.idle()
+		switch {
+		case errors.Is(err, context.Canceled):
+			w.say("Stopped; nothing was written.")
+		case err != nil:
+			w.foot.say(err.Error())
+		default:
+			w.say("Written: %s.", path)
+		}
+	})
 }
 
-// figure computes the figure from the study alone, as the batch program does.
-func (w *Window) figure(rays bool) (figure.Figure, error) {
-	t := w.session.Table()
+// stopTask stops the long work, if there is one.
+func (w *Window) stopTask() {
+	if w.task != nil {
+		w.task.Stop()
+	}
+}
+
+// exportFigure computes the figure from the study alone, as the batch program
+// does, and writes it with the table inside.
+func exportFigure(ctx context.Context, share func(float64), t *table.Table, path string, format export.Format, rays bool, drawn int, o export.Options) error {
+	fig, err := studyFigure(ctx, share, t, rays, drawn)
+	if err != nil {
+		return err
+	}
+	var file, out bytes.Buffer
+	if err := tablefile.Write(&file, t.Design()); err != nil {
+		return err
+	}
+	o.Table = file.Bytes()
+	if err := export.Write(&out, format, fig, o); err != nil {
+		return err
+	}
+	return store.WriteFile(path, out.Bytes())
+}
+
+func studyFigure(ctx context.Context, share func(float64), t *table.Table, rays bool, drawn int) (figure.Figure, error) {
 	tr := sim.Compile(t)
 	study := t.Design().Study
-	each := study.Bounces
+	var m measure.Measurement = measure.NewPortrait(tr, study.Launches, study.Bounces)
 	if rays {
-		each = w.session.Settings.Drawn
-	}
-	var m measure.Measurement = measure.NewPortrait(tr, study.Launches, each)
-	if rays {
-		m = measure.NewRays(tr, study.Launches, each)
+		m = measure.NewRays(tr, study.Launches, drawn)
 	}
 	if m.Orbits() == 0 {
-		return nil, fmt.Errorf("nothing is launched yet; launch a ray or seed the section first")
+		return nil, errors.New("nothing is launched yet; launch a ray or seed the section first")
 	}
-	tally, err := run.Run(context.Background(), run.Job{Tracer: tr, Measure: m, Seed: study.Seed})
+	tally, err := run.Run(ctx, run.Job{Tracer: tr, Measure: m, Seed: study.Seed,
+		Progress: func(done, total int, _ measure.Tally) { share(float64(done) / float64(total)) }})
 	if err != nil {
 		return nil, err
 	}

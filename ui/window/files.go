@@ -66,9 +66,6 @@ func readDesign(path string) (table.Design, error) {
 	return tablefile.Read(bytes.NewReader(inside))
 }
 
-// writeFile writes an exported file whole or not at all.
-func writeFile(path string, data []byte) error { return store.WriteFile(path, data) }
-
 // OpenPath opens a file. What is open stays where that fails.
 func (w *Window) OpenPath(path string) {
 	t, err := ReadTable(path)

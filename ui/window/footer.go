@@ -14,6 +14,7 @@ import (
 	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/layout"
 	"fyne.io/fyne/v2/theme"
+	"fyne.io/fyne/v2/widget"
 )
 
 // footer is the bottom line, and the line of readings under the portrait.
@@ -27,6 +28,7 @@ type footer struct {
 	reading  *caption
 	line     *canvas.Rectangle
 	rail     *fyne.Container
+	halt     *widget.Button // stops long work
 	held     live.Filling
 	standing string // the sentence that stays until the next
 	status   live.Status
@@ -37,7 +39,9 @@ func newFooter(w *Window) *footer {
 	f.line = canvas.NewRectangle(theme.Color(theme.ColorNameForeground))
 	f.rail = container.New(&thin{f}, f.line)
 	cells := container.New(&thirds{}, f.left, f.middle, f.right)
-	f.box = container.NewVBox(container.New(layout.NewCustomPaddedLayout(1, 4, 10, 10), cells))
+	f.halt = quiet("stop", "Stop", w.stopTask)
+	f.halt.Hide()
+	f.box = container.New(layout.NewCustomPaddedLayout(1, 4, 10, 10), container.NewBorder(nil, nil, nil, f.halt, cells))
 	f.readings = container.NewVBox(f.rail, container.New(layout.NewCustomPaddedLayout(0, 2, 10, 10), f.reading))
 	return f
 }
@@ -85,6 +89,15 @@ func (f *footer) say(s string) {
 	f.standing = s
 	f.left.set(s)
 }
+
+// busy says how far long work is, with a button that stops it.
+func (f *footer) busy(what string, share float64) {
+	f.say(fmt.Sprintf("%s, %.0f %%", what, 100*share))
+	f.halt.Show()
+}
+
+// idle takes the button away.
+func (f *footer) idle() { f.halt.Hide() }
 
 // refresh writes the exact readings of the table.
 func (f *footer) refresh() {

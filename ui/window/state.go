@@ -26,7 +26,7 @@ func (w *Window) state(s live.Status) State {
 	t := w.session.Table()
 	st := State{
 		Revision: w.session.Revision(), Name: t.Design().Name, Path: w.session.Path(), Unsaved: w.session.Unsaved(),
-		Said: w.foot.standing, Length: t.Length(), Status: s, Panes: map[string][4]int{},
+		Said: w.foot.standing, Length: t.Length(), Status: s, Panes: map[string][4]int{}, FrameRate: w.rate.PerSecond,
 	}
 	k := w.win.Canvas().Scale()
 	for _, p := range w.editor.HandlePlaces() {

@@ -45,6 +45,8 @@ type Window struct {
 	play     *widget.Button
 	commands []command
 	disk     disk
+	task     *live.Task // long work beside the window; nil for none
+	rate     rate
 	variant  fyne.ThemeVariant
 	watch    func(State)
 }
@@ -101,7 +103,10 @@ func (w *Window) ShowAndRun() {
 		})
 		time.AfterFunc(700*time.Millisecond, func() { w.post(w.editor.Breathe) })
 	})
-	w.app.Lifecycle().SetOnStopped(w.engine.Close)
+	w.app.Lifecycle().SetOnStopped(func() {
+		w.stopTask()
+		w.engine.Close()
+	})
 	w.win.ShowAndRun()
 }
 
@@ -185,6 +190,7 @@ func (w *Window) shown(s live.Status) {
 	w.rays.Show()
 	w.portrait.Show()
 	w.foot.progress(s)
+	w.rate.count(time.Now())
 	if w.watch != nil {
 		w.watch(w.state(s))
 	}
@@ -206,4 +212,19 @@ func (w *Window) toggleVariant() {
 	w.app.Preferences().SetInt("variant", int(w.variant))
 	w.app.Settings().SetTheme(dress{w.variant})
 	w.changed()
+}
+
+// rate counts frames: PerSecond is that of the last second or so.
+type rate struct {
+	since     time.Time
+	frames    int
+	PerSecond float64
+}
+
+func (r *rate) count(now time.Time) {
+	r.frames++
+	if d := now.Sub(r.since).Seconds(); d >= 1 {
+		r.PerSecond = float64(r.frames) / d
+		r.since, r.frames = now, 0
+	}
 }

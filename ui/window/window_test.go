@@ -16,6 +16,7 @@ import (
 	"cavitywright/ui/session"
 
 	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/storage"
 	"fyne.io/fyne/v2/test"
 	"fyne.io/fyne/v2/widget"
 )
@@ -149,7 +150,7 @@ func TestBadFiles(t *testing.T) {
 // TestSaveAndOpen: what is saved opens as the same table; a folder that is not
 // there is answered with a sentence and changes nothing.
 func TestSaveAndOpen(t *testing.T) {
-	w, _ := opened(t, 4, fyne.NewSize(1280, 800))
+	w, pump := opened(t, 4, fyne.NewSize(1280, 800))
 	path := filepath.Join(t.TempDir(), "plate")
 	if w.SaveTo(filepath.Join(path, "none", "x")) {
 		t.Error("saved into a folder that is not there")
@@ -168,8 +169,13 @@ func TestSaveAndOpen(t *testing.T) {
 	}
 	figure := filepath.Join(t.TempDir(), "f.png")
 	w.ExportFigure(figure, true, export.Options{WidthMM: 60, DPI: 100})
+	for range 100 {
+		if pump(); w.task == nil {
+			break
+		}
+	}
 	w.openTable(mustGallery(t, 0), "")
-	w.OpenPath(figure)
+	w.dropped([]fyne.URI{storage.NewFileURI(figure)})
 	if w.session.Table().Length() != length || w.session.Path() != "" {
 		t.Errorf("the table does not open from its figure: %q", w.foot.standing)
 	}
