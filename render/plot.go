@@ -72,11 +72,10 @@ func (p Plot) FromY(u float64) float64 { return p.y.from(u) }
 
 // rule maps the values of one axis to canvas positions.
 type rule struct {
-	lo, hi   float64 // ends of the axis; of their logarithms where log
-	from0    float64 // canvas position of lo
-	to0      float64 // canvas position of hi
-	log      bool
-	reversed bool
+	lo, hi float64 // ends of the axis; of their logarithms where log
+	from0  float64 // canvas position of lo
+	to0    float64 // canvas position of hi
+	log    bool
 }
 
 // newRule makes a rule of an axis, whose ends are mended where they cannot

@@ -56,7 +56,7 @@ func watchMemory() {
 // drawing draws random tables and counts how many designs were no table.
 type drawing struct {
 	*rand.Rand
-	refused, drawn int
+	refused int
 }
 
 func draw(seed, number uint64) *drawing {
@@ -87,7 +87,6 @@ func (r *drawing) table() *table.Table {
 		for n := r.IntN(5); n > 0; n-- {
 			tab = r.withPost(tab)
 		}
-		r.drawn++
 		return tab
 	}
 }

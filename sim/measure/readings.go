@@ -138,18 +138,16 @@ const (
 	dwellEach = 1000
 )
 
-// slowness is how many times longer a bounce takes than on lines and arcs,
-// roughly: it divides the work of a reading, so that a reading takes about the
-// same time on any table.
+// slowness is how many times longer a bounce takes than on a stadium, roughly
+// (measured: three times on smooth spans, and growing as the root of the
+// number of pieces, most of which a flight passes by): it divides the work of
+// a reading, so that a reading takes about the same time on any table.
 func slowness(t *table.Table) float64 {
-	slow := 1.0
 	pieces := t.Pieces()
+	slow := math.Max(1, math.Sqrt(float64(len(pieces)))/2)
 	for i := range pieces {
-		switch pieces[i].Kind {
-		case curve.Bezier, curve.Harmonic:
-			return 5
-		case curve.Oval:
-			slow = 3
+		if k := pieces[i].Kind; k == curve.Bezier || k == curve.Harmonic {
+			return 3 * slow
 		}
 	}
 	return slow

@@ -176,11 +176,21 @@ func (s *Span) quad(f func(t float64) float64) float64 {
 }
 
 // rounding is the size of the rounding error of the speed: the terms of the
-// velocity of a cubic cancel near the end of a short handle.
+// velocity cancel near the end of a short handle, near a dent that comes close
+// to the centre of its harmonics, and at the tip of a slender ellipse.
 func (s *Span) rounding() float64 {
-	if s.Kind != Bezier {
-		return 0
+	size := 0.0
+	switch s.Kind {
+	case Oval:
+		size = s.Radius + s.Minor
+	case Bezier:
+		c := &s.Coef
+		size = r2.Norm(c[1]) + 2*r2.Norm(c[2]) + 3*r2.Norm(c[3])
+	case Harmonic:
+		size = math.Abs(s.Form.Mean)
+		for k := range s.Form.Cos {
+			size += float64(k+2) * (math.Abs(s.Form.Cos[k]) + math.Abs(s.Form.Sin[k]))
+		}
 	}
-	c := &s.Coef
-	return 4e-16 * (r2.Norm(c[1]) + 2*r2.Norm(c[2]) + 3*r2.Norm(c[3]))
+	return 4e-16 * size
 }

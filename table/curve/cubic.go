@@ -2,6 +2,7 @@ package curve
 
 import (
 	"math"
+	"sort"
 
 	"cavitywright/table/plane"
 
@@ -29,38 +30,69 @@ func NewCubic(p [4]r2.Vec) Cubic {
 	return c
 }
 
-// cubicBends are the zeros of the curvature in (0, 1): the cross product of
-// first and second derivative is a quadratic, its cubic term cancels.
+// cubicBends are the cuts in (0, 1) that a cubic needs whatever it turns by: the
+// zeros of its curvature (the cross product of first and second derivative is a
+// quadratic, its cubic term cancels), and the cusps, where it turns right about.
 func cubicBends(s *Span) []float64 {
 	c := &s.Coef
 	k0 := 2 * plane.Cross(c[1], c[2])
 	k1 := 6 * plane.Cross(c[1], c[3])
 	k2 := 6 * plane.Cross(c[2], c[3])
-	size2 := plane.Dot(c[1], c[1]) + plane.Dot(c[2], c[2]) + plane.Dot(c[3], c[3])
-	roots := quadraticRoots(k2, k1, k0)
-	if math.Abs(k0)+math.Abs(k1)+math.Abs(k2) <= collinear*size2 {
-		// All on one line: the tangent turns right about where the speed along
-		// it vanishes.
-		u := c[1]
-		for _, v := range c[2:] {
-			if plane.Dot(v, v) > plane.Dot(u, u) {
-				u = v
-			}
-		}
-		roots = quadraticRoots(3*plane.Dot(c[3], u), 2*plane.Dot(c[2], u), plane.Dot(c[1], u))
-	}
-	var in []float64
-	for _, t := range roots {
-		if t > 1e-12 && t < 1-1e-12 {
+	in := cubicCusps(s)
+	cusps := in[:len(in):len(in)]
+	for _, t := range quadraticRoots(k2, k1, k0) {
+		if t > 1e-12 && t < 1-1e-12 && !nearAny(t, cusps) {
 			in = append(in, t)
 		}
 	}
 	return in
 }
 
-// collinear is the size of a cross product, relative to the squares of the
-// vectors, that counts as none.
-const collinear = 1e-14
+// cuspReach is the distance in the parameter within which a zero of the
+// curvature counts as part of a cusp: a double zero is found to the root of the
+// rounding.
+const cuspReach = 1e-7
+
+func nearAny(t float64, at []float64) bool {
+	for _, u := range at {
+		if math.Abs(t-u) < cuspReach {
+			return true
+		}
+	}
+	return false
+}
+
+// cubicCusps are the places in (0, 1) where the speed is least and counts as
+// none: zeros of the product of first and second derivative, a cubic.
+func cubicCusps(s *Span) []float64 {
+	c := &s.Coef
+	f := func(t float64) float64 {
+		_, d1, d2 := s.Jet(t)
+		return plane.Dot(d1, d2)
+	}
+	slope0 := 4*plane.Dot(c[2], c[2]) + 6*plane.Dot(c[1], c[3])
+	at := []float64{0}
+	for _, t := range quadraticRoots(54*plane.Dot(c[3], c[3]), 36*plane.Dot(c[2], c[3]), slope0) {
+		if t > 0 && t < 1 {
+			at = append(at, t)
+		}
+	}
+	at = append(at, 1)
+	sort.Float64s(at)
+	var in []float64
+	for i := 1; i < len(at); i++ {
+		lo, hi := f(at[i-1]), f(at[i])
+		if !(lo < 0 && hi >= 0) { // only where the speed has a minimum
+			continue
+		}
+		t := Root(f, at[i-1], at[i], lo, hi)
+		_, d1, d2 := s.Jet(t)
+		if t > 1e-12 && t < 1-1e-12 && plane.Dot(d1, d1) <= cuspSpeed2*plane.Dot(d2, d2) {
+			in = append(in, t)
+		}
+	}
+	return in
+}
 
 // quadraticRoots are the real roots of a t^2 + b t + c, a double one once.
 // The stable form: no difference of nearly equal numbers.

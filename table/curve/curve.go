@@ -137,11 +137,17 @@ func cutTurn(s *Span, lo, hi float64, out []float64) []float64 {
 		for at[k] >= turn*j/n && j < n {
 			f := (turn*j/n - at[k-1]) / (at[k] - at[k-1])
 			t := lo + (hi-lo)*(float64(k-1)+f)/turnSamples
+			j++
+			if t <= edge || t >= hi {
+				continue // a turn within the rounding of the parameter
+			}
 			out = cutTurn(s, edge, t, out)
 			out = append(out, t)
 			edge = t
-			j++
 		}
+	}
+	if edge == lo {
+		return out
 	}
 	return cutTurn(s, edge, hi, out)
 }

@@ -45,8 +45,9 @@ const (
 	// beyond.
 	stride = 12
 	// hopeless is the distance in tolerances beyond which shifting the knots
-	// is not tried; half of it beyond the stride, where a shift takes longer.
-	hopeless = 4
+	// is not tried, gain the part of its distance to which each sweep must
+	// bring it to go on, unless it is within the headroom.
+	hopeless, gain, headroom = 4, 0.9, 1.5
 	// patience is the number of fits that cross themselves within the
 	// tolerance after which it is the stroke that does.
 	patience = 3
@@ -62,13 +63,10 @@ const (
 // farther than tol from it, and a little further to lie better; false where
 // that does not succeed.
 func (c *samples) placed(n int, tol float64) (*periodic, bool) {
-	now := c.follow(c.startKnots(n))
+	now := c.follow(c.startKnots(n), 4)
 	var good *periodic
 	shift := 0.2 / float64(n)
-	reach := tol * hopeless
-	if n > stride {
-		reach /= 2
-	}
+	last := hopeless * tol
 	for left := sweeps; now.spline != nil; left-- {
 		switch greatest := now.samples.greatest(now.spline); {
 		case greatest <= tol:
@@ -76,8 +74,10 @@ func (c *samples) placed(n int, tol float64) (*periodic, bool) {
 				left = min(left, polish)
 			}
 			good = now.spline
-		case good == nil && greatest > reach:
+		case good == nil && greatest > last:
 			return nil, false
+		default:
+			last = math.Max(greatest*gain, headroom*tol)
 		}
 		if left == 0 {
 			break
@@ -99,7 +99,7 @@ func (a attempt) swept(shift float64) (best attempt, moved bool) {
 			if !ok {
 				continue
 			}
-			if next := best.samples.follow(knot); next.spline != nil && next.fourth < best.fourth {
+			if next := best.samples.follow(knot, 2); next.spline != nil && next.fourth < best.fourth {
 				best, moved = next, true
 				break
 			}
@@ -116,13 +116,13 @@ type attempt struct {
 	fourth  float64
 }
 
-// follow fits a spline on the knots and lets the parameters follow it, leaving
-// c as it is.
-func (c *samples) follow(knot []float64) attempt {
+// follow fits a spline on the knots and lets the parameters follow it, some
+// rounds, leaving c as it is.
+func (c *samples) follow(knot []float64, rounds int) attempt {
 	own := *c
 	own.u = slices.Clone(c.u)
 	a := attempt{samples: &own}
-	for range 4 {
+	for range rounds {
 		p, ok := own.fitted(knot)
 		if !ok {
 			return attempt{}

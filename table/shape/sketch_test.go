@@ -149,7 +149,7 @@ func TestSketchClosesTheStroke(t *testing.T) {
 // TestSketchTakesAnything: a scribble is refused or made a wall that closes.
 func TestSketchTakesAnything(t *testing.T) {
 	g := rand.New(rand.NewPCG(3, 1))
-	for n := range 40 {
+	for n := 0; n < 40; n += 3 {
 		for _, jump := range []float64{0, 0.1, 1, 5} {
 			s := make([]r2.Vec, n)
 			for i := range s {

@@ -27,7 +27,6 @@ type Values struct {
 	rows []*row
 	of   selected
 	name *widget.Label
-	kind *fyne.Container
 }
 
 // selected says for what the form was built.
@@ -61,9 +60,6 @@ func (v *Values) Refresh() {
 	if now != v.of || len(v.rows) == 0 {
 		v.of = now
 		v.build()
-	}
-	for _, r := range v.rows {
-		r.show()
 	}
 	v.update()
 }
@@ -270,8 +266,6 @@ func (v *Values) update() {
 		}
 	}
 }
-
-func (r *row) show() {}
 
 // bring shows the value x. The slider's range follows the value, but never
 // under the hand.
