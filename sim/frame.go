@@ -16,7 +16,7 @@ func (s *span) frame(h *hit) (f curve.Frame, x, t float64) {
 	case curve.Segment:
 		return curve.Frame{Point: h.at, Tangent: s.tanA}, h.t, h.t
 	case curve.Circle:
-		n := r2.Scale(s.sense/s.radius, r2.Sub(h.at, s.centre))
+		n := r2.Scale(s.sense, plane.Unit(r2.Sub(h.at, s.centre)))
 		t = s.param(h.at, h.t)
 		return curve.Frame{Point: h.at, Tangent: plane.Left(n), Curvature: s.kappa}, s.clip(math.Abs(t-s.t0) * s.radius), t
 	case curve.Oval:

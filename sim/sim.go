@@ -38,7 +38,7 @@ func (s State) Reversed() State { return State{s.S, -s.P} }
 type Bounce struct {
 	State
 	N      int     // 0 opens an orbit
-	Piece  int     // index in the table's pieces; -1 away from the wall
+	Piece  int     // index in the table's pieces; -1 where State is none: inside, or at an undecided place
 	Point  r2.Vec  // where
 	Dir    r2.Vec  // unit direction in which the ray goes on
 	Flight float64 // path length since the bounce before; +Inf when it escaped into the open plane

@@ -45,6 +45,8 @@ type span struct {
 	t0, t1     float64
 	width      float64 // |t1 - t0|
 	s0         float64
+	loop0      float64 // the loop's arclength is [loop0, loop1)
+	loop1      float64
 	length     float64
 	src        *curve.Span
 }
@@ -65,6 +67,8 @@ func Compile(t *table.Table) *Tracer {
 	tr.spans = make([]span, len(pieces))
 	for i := range pieces {
 		tr.spans[i] = compileSpan(&pieces[i], pieces)
+		l := t.Loops()[pieces[i].Loop]
+		tr.spans[i].loop0, tr.spans[i].loop1 = l.S0, l.S1
 	}
 	tr.layLaws(t.Stretches())
 	tr.grow()

@@ -76,6 +76,7 @@ func (w *Walker) Next(u float64) Bounce {
 	b.Exit, b.ExitP = 0, 0
 	if h.edge < h.u {
 		b.Flight, b.Stop = h.edge, h.edgeStop
+		b.Piece, b.State = -1, State{math.NaN(), math.NaN()}
 		b.Point = r2.Add(w.ray.p, r2.Scale(h.edge, w.ray.d))
 		return *b
 	}
@@ -99,8 +100,8 @@ func (w *Walker) land(h *hit) {
 	b.Piece, b.Point, b.Flight = h.span, h.at, h.u
 	f, x, t := s.frame(h)
 	b.S = s.s0 + x
-	if l := w.tr.table.Length(); b.S >= l {
-		b.S -= l
+	if b.S >= s.loop1 { // the end of a loop is its start
+		b.S = s.loop0
 	}
 	// Only the ratio of the two components is used: it does not depend on the
 	// lengths of the two vectors, whose rounding has a bias that would add up.
