@@ -47,6 +47,7 @@ type ball struct {
 const (
 	mostBalls    = 240  // balls on the table at once
 	mostSegments = 3000 // ray segments drawn at once
+	fullyDrawn   = 10   // rays up to which each is drawn for all its bounces
 	trailed      = 40   // balls that carry a trail
 	trailLength  = 0.45 // of the table's size
 )
@@ -77,7 +78,10 @@ func (b *balls) launch(tr *sim.Tracer) {
 	if drawn.Orbits() == 0 || b.req.Settings.Drawn == 0 {
 		return
 	}
-	drawn.Each = max(1, min(b.req.Settings.Drawn, mostSegments/drawn.Orbits()))
+	// Of many rays each is drawn for a shorter while, so that one can still be
+	// told from another.
+	drawn.Each = max(4, min(b.req.Settings.Drawn, fullyDrawn*b.req.Settings.Drawn/drawn.Orbits()))
+	drawn.Each = max(1, min(drawn.Each, mostSegments/drawn.Orbits()))
 	tally, err := run.Run(context.Background(), run.Job{Tracer: tr, Measure: drawn, Seed: study.Seed})
 	if err == nil {
 		b.figure.Lines = tally.(*measure.RaysTally).Lines()
