@@ -38,7 +38,7 @@ func startXvfb(ctx context.Context) (*screen, error) {
 	cmd := exec.CommandContext(live, "Xvfb", "-displayfd", "3", "-screen", "0", screenSize, "-nolisten", "tcp")
 	cmd.ExtraFiles = []*os.File{report}
 	cmd.Cancel = func() error { return cmd.Process.Signal(syscall.SIGTERM) }
-	cmd.WaitDelay = graceAfterStop
+	cmd.WaitDelay = screenGrace
 	err = cmd.Start()
 	report.Close() // ours; the child has its own, so that its end is seen as the end of the pipe
 	if err != nil {
@@ -55,7 +55,22 @@ func startXvfb(ctx context.Context) (*screen, error) {
 		shut()
 		return nil, err
 	}
-	return &screen{display: display, close: shut}, nil
+	return &screen{display: display, close: func() {
+		shut()
+		sweep(display)
+	}}, nil
+}
+
+// screenGrace is how long Xvfb may take to end. It forgets a request to end that
+// comes while it is still opening, and has then to be killed.
+const screenGrace = 2 * time.Second
+
+// sweep removes what a killed Xvfb leaves of its display.
+func sweep(display string) {
+	number := strings.TrimPrefix(display, ":")
+	for _, left := range []string{"/tmp/.X11-unix/X" + number, "/tmp/.X" + number + "-lock"} {
+		_ = os.Remove(left) // mostly it is gone already
+	}
 }
 
 // displayNumber reads the number that Xvfb reports once its display is open, and returns it as DISPLAY takes it.

@@ -34,7 +34,7 @@ var testSteps = []step{
 		return s.goTool(ctx, withC, "test", tagged(s), "-timeout=12m", "./...")
 	}},
 	{"race", []string{"sim/run", "ui/live"}, func(ctx context.Context, s *site, patterns []string) error {
-		return s.goTool(ctx, withC, append([]string{"test", "-race", tagged(s), "-timeout=10m"}, patterns...)...)
+		return s.goTool(ctx, withC, append([]string{"test", "-race", "-short", tagged(s), "-timeout=10m"}, patterns...)...)
 	}},
 	{"real window", []string{"cmd/cavitywright"}, testWindow},
 }

@@ -54,7 +54,7 @@ func TestSuiteRunsEverythingAndClosesTheScreen(t *testing.T) {
 		"CGO_ENABLED=1 go vet -tags=gles,no_emoji ./...",
 		"CGO_ENABLED=1 go tool staticcheck -tags=gles,no_emoji ./...",
 		"CGO_ENABLED=1 go test -tags=gles,no_emoji -timeout=12m ./...",
-		"CGO_ENABLED=1 go test -race -tags=gles,no_emoji -timeout=10m ./sim/run/... ./ui/live/...",
+		"CGO_ENABLED=1 go test -race -short -tags=gles,no_emoji -timeout=10m ./sim/run/... ./ui/live/...",
 		"CAVITYWRIGHT_WINDOW=1 DISPLAY=:42 WAYLAND_DISPLAY= LANG=en_US.UTF-8 LIBGL_ALWAYS_SOFTWARE=1 CGO_ENABLED=1 " +
 			"go test -count=1 -v -tags=gles,no_emoji -timeout=8m ./cmd/cavitywright/...",
 	}
