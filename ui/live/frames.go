@@ -13,6 +13,7 @@ type Frames struct {
 	shown   *image.RGBA
 	ready   *image.RGBA
 	spare   *image.RGBA
+	taken   int
 	pending bool // a post to the window is under way
 }
 
@@ -23,8 +24,23 @@ func (f *Frames) Take() *image.RGBA {
 	defer f.mu.Unlock()
 	if f.ready != nil {
 		f.spare, f.shown, f.ready = f.shown, f.ready, nil
+		f.taken++
 	}
 	return f.shown
+}
+
+// Taken is how many pictures Take has handed out.
+func (f *Frames) Taken() int {
+	f.mu.Lock()
+	defer f.mu.Unlock()
+	return f.taken
+}
+
+// Fresh reports whether a picture is finished that Take has not handed out.
+func (f *Frames) Fresh() bool {
+	f.mu.Lock()
+	defer f.mu.Unlock()
+	return f.ready != nil
 }
 
 // publish draws the next picture. draw gets the spare one, which may be nil or

@@ -164,6 +164,19 @@ func (w *Window) changed() {
 	w.foot.refresh()
 	w.show()
 	w.disk.changed()
+	w.pickUp()
+}
+
+// pickUp puts frames on the screen that are finished already. While events
+// come faster than the window is painted, what the engine posts waits its turn
+// behind them; a frame must not.
+func (w *Window) pickUp() {
+	if w.engine.RaysFrames.Fresh() {
+		w.rays.Show()
+	}
+	if w.engine.PortraitFrames.Fresh() {
+		w.portrait.Show()
+	}
 }
 
 // show asks the engine for what the session holds now.
@@ -190,8 +203,8 @@ func (w *Window) shown(s live.Status) {
 	w.rays.Show()
 	w.portrait.Show()
 	w.foot.progress(s)
-	w.rate.count(time.Now())
 	if w.watch != nil {
+		w.rate.count(time.Now(), w.engine.PortraitFrames.Taken())
 		w.watch(w.state(s))
 	}
 }
@@ -214,17 +227,16 @@ func (w *Window) toggleVariant() {
 	w.changed()
 }
 
-// rate counts frames: PerSecond is that of the last second or so.
+// rate is the number of frames of the portrait painted a second.
 type rate struct {
 	since     time.Time
-	frames    int
+	before    int
 	PerSecond float64
 }
 
-func (r *rate) count(now time.Time) {
-	r.frames++
+func (r *rate) count(now time.Time, taken int) {
 	if d := now.Sub(r.since).Seconds(); d >= 1 {
-		r.PerSecond = float64(r.frames) / d
-		r.since, r.frames = now, 0
+		r.PerSecond = float64(taken-r.before) / d
+		r.since, r.before = now, taken
 	}
 }
