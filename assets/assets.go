@@ -65,3 +65,10 @@ func GalleryNames() []string {
 	}
 	return names
 }
+
+// Version is the programs' version, and Program the name and version that
+// figures carry. FyneApp.toml holds the same.
+const (
+	Version = "0.1.0"
+	Program = "Cavitywright " + Version
+)

@@ -8,33 +8,39 @@ import (
 	"gonum.org/v1/gonum/spatial/r2"
 )
 
-// distance is the signed distance of the wall from the ray's line at the
-// parameter t of the span, with its derivative by t.
-func (s *span) distance(t float64, r *ray) (f, slope float64) {
-	c, d1, _ := s.src.Jet(t)
+// quantity is what is brought to zero along a span: the signed distance of the
+// wall from the ray's line, or its derivative by the parameter.
+type quantity uint8
+
+const (
+	distance quantity = iota
+	slope
+)
+
+// value is the quantity at the parameter t of the span, with its derivative by
+// t.
+func (q quantity) value(s *span, t float64, r *ray) (f, df float64) {
+	c, d1, d2 := s.src.Jet(t)
+	if q == slope {
+		return float64(r.d.X*d1.Y) - float64(r.d.Y*d1.X), float64(r.d.X*d2.Y) - float64(r.d.Y*d2.X)
+	}
 	f = float64(r.d.X*(c.Y-r.p.Y)) - float64(r.d.Y*(c.X-r.p.X))
 	return f, float64(r.d.X*d1.Y) - float64(r.d.Y*d1.X)
 }
 
-// slope is the derivative of distance by t, with its own derivative.
-func (s *span) slope(t float64, r *ray) (g, bend float64) {
-	_, d1, d2 := s.src.Jet(t)
-	return float64(r.d.X*d1.Y) - float64(r.d.Y*d1.X), float64(r.d.X*d2.Y) - float64(r.d.Y*d2.X)
-}
-
-// crossing is the zero of distance between lo and hi, where it has the signs
-// loLeft and its opposite (true: positive): Newton's method held to the
+// zero is where the quantity vanishes between lo and hi, where it has the sign
+// loLeft (true: positive) and its opposite: Newton's method held to the
 // bracket, from the guess t.
-func (s *span) crossing(lo, hi, t float64, loLeft bool, r *ray) float64 {
+func (s *span) zero(q quantity, lo, hi, t float64, loLeft bool, r *ray) float64 {
 	last := math.Inf(1)
 	for range newtonSteps {
-		f, slope := s.distance(t, r)
+		f, df := q.value(s, t, r)
 		if (f >= 0) == loLeft {
 			lo = t
 		} else {
 			hi = t
 		}
-		step := f / slope
+		step := f / df
 		if s.settled(math.Abs(step), last, t) {
 			return t
 		}
@@ -48,29 +54,14 @@ func (s *span) crossing(lo, hi, t float64, loLeft bool, r *ray) float64 {
 	return t
 }
 
-// extremum is the zero of slope between lo and hi, where it has different
-// signs, with the sign loLeft at lo.
+// crossing is the zero of the distance between lo and hi.
+func (s *span) crossing(lo, hi, t float64, loLeft bool, r *ray) float64 {
+	return s.zero(distance, lo, hi, t, loLeft, r)
+}
+
+// extremum is the zero of the slope between lo and hi.
 func (s *span) extremum(lo, hi float64, loLeft bool, r *ray) float64 {
-	t, last := 0.5*(lo+hi), math.Inf(1)
-	for range newtonSteps {
-		g, bend := s.slope(t, r)
-		if (g >= 0) == loLeft {
-			lo = t
-		} else {
-			hi = t
-		}
-		step := g / bend
-		if s.settled(math.Abs(step), last, t) {
-			return t
-		}
-		next := t - step
-		last = math.Abs(step)
-		if !between(next, lo, hi) {
-			next, last = 0.5*(lo+hi), math.Inf(1)
-		}
-		t = next
-	}
-	return t
+	return s.zero(slope, lo, hi, 0.5*(lo+hi), loLeft, r)
 }
 
 // settled reports whether Newton's iteration is at its end: its step is the
@@ -117,7 +108,7 @@ func (tr *Tracer) meetSmooth(k int, s *span, sa, sb bool, r *ray, h *hit) {
 		return
 	}
 	te := s.extremum(s.t0, s.t1, (ga >= 0) == (s.sense > 0), r)
-	f, _ := s.distance(te, r)
+	f, _ := distance.value(s, te, r)
 	if math.Abs(f) < passTol*tr.size {
 		h.graze(plane.Dot(r.d, r2.Sub(s.at(te), r.p)))
 		return

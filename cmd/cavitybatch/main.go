@@ -20,14 +20,13 @@ import (
 	"unicode"
 	"unicode/utf8"
 
+	"cavitywright/assets"
+
 	"github.com/alecthomas/kong"
 )
 
-// version is the program's; it stands in the captions of figures.
-const (
-	version = "0.1.0"
-	program = "Cavitywright " + version
-)
+// program stands in the captions of figures.
+const program = assets.Program
 
 // The exit codes.
 const (

@@ -47,7 +47,7 @@ func run(path, state string) error {
 		return errors.New("there is no X display to open a window on; start it in a desktop session, or set DISPLAY")
 	}
 	app.SetMetadata(fyne.AppMetadata{
-		ID: "org.cavitywright.designer", Name: "Cavitywright", Version: "0.1.0",
+		ID: "org.cavitywright.designer", Name: "Cavitywright", Version: assets.Version,
 		Icon:       fyne.NewStaticResource("icon.png", assets.Icon),
 		Migrations: map[string]bool{"fyneDo": true},
 	})

@@ -6,6 +6,7 @@ import (
 	"errors"
 	"strings"
 
+	"cavitywright/assets"
 	"cavitywright/render/export"
 	"cavitywright/sim"
 	"cavitywright/sim/figure"
@@ -140,10 +141,7 @@ func studyFigure(ctx context.Context, share func(float64), t *table.Table, rays 
 		return nil, err
 	}
 	if rays {
-		return measure.RaysFigure(t, tally.(*measure.RaysTally), Program), nil
+		return measure.RaysFigure(t, tally.(*measure.RaysTally), assets.Program), nil
 	}
-	return measure.PortraitFigure(t, tally.(*measure.PortraitTally), Program), nil
+	return measure.PortraitFigure(t, tally.(*measure.PortraitTally), assets.Program), nil
 }
-
-// Program is the name and version that figures carry.
-const Program = "Cavitywright 0.1.0"
