@@ -12,6 +12,7 @@ import (
 	"os"
 	"path/filepath"
 	"runtime"
+	"strings"
 
 	"cavitywright/assets"
 	"cavitywright/table"
@@ -45,6 +46,9 @@ func run(path, state string) error {
 	}
 	if runtime.GOOS == "linux" && os.Getenv("DISPLAY") == "" {
 		return errors.New("there is no X display to open a window on; start it in a desktop session, or set DISPLAY")
+	}
+	if l := os.Getenv("LANG"); l == "" || strings.HasPrefix(l, "C.") || l == "C" {
+		_ = os.Setenv("LANG", "en_US.UTF-8") // the toolkit complains of a locale without a language
 	}
 	app.SetMetadata(fyne.AppMetadata{
 		ID: "org.cavitywright.designer", Name: "Cavitywright", Version: assets.Version,
