@@ -55,7 +55,7 @@ type Stop uint8
 // no wall was hit.
 const (
 	Going   Stop = iota
-	Spent        // its weight was absorbed or fell below what is followed
+	Spent        // all its weight was absorbed
 	Escaped      // it left, through an opening or into the open plane
 	Corner       // it met a corner, where the bounce is not defined
 	Grazing      // it touched the wall along its tangent

@@ -146,7 +146,11 @@ func (w *Walker) bounce(u float64) {
 	o := law.Scatter(wall.Incidence{P: b.P, Curvature: w.kappa}, u)
 	b.Exit, b.ExitP = b.Weight*o.Through.Weight, o.Through.P
 	b.Weight *= o.Back.Weight
-	if !(b.Weight > 0) {
+	if o.Back.Weight > 0 {
+		// Something always returns: the orbit goes on, however little it
+		// carries. Who follows it decides when that is too little.
+		b.Weight = max(b.Weight, math.SmallestNonzeroFloat64)
+	} else {
 		b.Stop = Spent
 		if b.Exit > 0 {
 			b.Stop = Escaped

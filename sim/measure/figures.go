@@ -3,6 +3,7 @@ package measure
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"cavitywright/sim"
@@ -63,7 +64,7 @@ func PortraitFigure(t *table.Table, tally *PortraitTally, program string) figure
 		f.Sets = append(f.Sets, shown)
 	}
 	f.Caption = []string{
-		captionHead(t, len(tally.Sets()), tally.of.Each, tally.Stops),
+		captionHead(t, t.Design().Study.Launches, len(tally.Sets()), tally.of.Each, tally.Stops),
 		captionFoot(t, program),
 	}
 	return f
@@ -88,7 +89,11 @@ func RaysFigure(t *table.Table, tally *RaysTally, program string) figure.Paths {
 		}
 	}
 	f.Lines = append(f.Lines, tally.Lines()...)
-	f.Caption = []string{captionHead(t, len(tally.Lines()), tally.of.Each, tally.Stops), captionFoot(t, program)}
+	launches := t.Design().Study.Launches
+	if own := slices.DeleteFunc(slices.Clone(launches), func(l table.Launch) bool { return l.Pattern == table.Even }); len(own) > 0 {
+		launches = own // NewRays leaves the sea out
+	}
+	f.Caption = []string{captionHead(t, launches, len(tally.Lines()), tally.of.Each, tally.Stops), captionFoot(t, program)}
 	return f
 }
 
@@ -102,13 +107,13 @@ func resize(l figure.Line, h float64) {
 }
 
 // captionHead says what was computed.
-func captionHead(t *table.Table, orbits, each int, stops Stops) string {
+func captionHead(t *table.Table, launches []table.Launch, orbits, each int, stops Stops) string {
 	d := t.Design()
 	var b strings.Builder
 	if d.Name != "" {
 		b.WriteString(d.Name + ": ")
 	}
-	fmt.Fprintf(&b, "%s of up to %s, %s.", counted(orbits, "orbit"), counted(each, "bounce"), launched(t, d.Study.Launches))
+	fmt.Fprintf(&b, "%s of up to %s, %s.", counted(orbits, "orbit"), counted(each, "bounce"), launched(t, launches))
 	for _, w := range []struct {
 		stop sim.Stop
 		text string

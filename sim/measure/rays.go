@@ -12,15 +12,21 @@ import (
 )
 
 // Rays follows the launches of the study and keeps their paths in the plane.
-// Orbits and hues are those of the portrait of the same launches.
+// Hues are those of the portrait of the same launches.
 type Rays struct {
 	Portrait
 	size float64
 }
 
-// NewRays is the paths of the launches, of each bounces.
+// NewRays is the paths of the launches, of each bounces. The sea of an even
+// seeding is drawn only where nothing else is launched: it would cover the
+// rays.
 func NewRays(tr *sim.Tracer, launches []table.Launch, each int) Rays {
-	return Rays{NewPortrait(tr, launches, each), plane.Diagonal(tr.Table().Bounds())}
+	p := NewPortrait(tr, launches, each)
+	if own := p.Coloured(); own.Orbits() > 0 {
+		p = own
+	}
+	return Rays{p, plane.Diagonal(tr.Table().Bounds())}
 }
 
 // Tally is a *RaysTally.

@@ -74,8 +74,7 @@ func (b *balls) launch(tr *sim.Tracer) {
 	}
 	b.figure = figure.Paths{Unit: b.req.Table.Design().Unit.String()}
 	drawn := measure.NewRays(tr, study.Launches, 0)
-	drawn.Portrait = drawn.Coloured()
-	if drawn.Orbits() == 0 || b.req.Settings.Drawn == 0 {
+	if drawn.Orbits() == 0 || drawn.Hue(0) == measure.Sea || b.req.Settings.Drawn == 0 {
 		return
 	}
 	// Of many rays each is drawn for a shorter while, so that one can still be
