@@ -23,6 +23,7 @@ import (
 // and nudged with the wheel.
 type Values struct {
 	Box  *fyne.Container
+	View *container.Scroll // the box, scrolled where it is long
 	desk *Desk
 	rows []*row
 	of   selected
@@ -50,7 +51,16 @@ type row struct {
 func NewValues(d *Desk) *Values {
 	v := &Values{desk: d, Box: container.NewVBox(), name: widget.NewLabel("")}
 	v.name.TextStyle.Bold = true
+	v.View = container.NewVScroll(v.Box)
 	return v
+}
+
+// tallest is the height that the strip may take from the table's pane.
+const tallest = 178
+
+// fit gives the strip the height that it needs, up to the tallest.
+func (v *Values) fit() {
+	v.View.SetMinSize(fyne.NewSize(0, fyne.Min(v.Box.MinSize().Height, tallest)))
 }
 
 // Refresh brings the numbers up to date, and makes the form anew where another
@@ -60,6 +70,7 @@ func (v *Values) Refresh() {
 	if now != v.of || len(v.rows) == 0 {
 		v.of = now
 		v.build()
+		v.fit()
 	}
 	v.update()
 }

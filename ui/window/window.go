@@ -121,7 +121,7 @@ func (w *Window) Close() { w.engine.Close() }
 
 // layout puts the panes in their places.
 func (w *Window) layout() {
-	w.boxes[0] = container.NewBorder(w.editorBar(), container.NewPadded(w.values.Box), nil, nil, w.editor)
+	w.boxes[0] = container.NewBorder(w.editorBar(), container.NewPadded(w.values.View), nil, nil, w.editor)
 	w.boxes[1] = container.NewBorder(w.raysBar(), nil, nil, nil, w.rays)
 	w.boxes[2] = container.NewBorder(w.portraitBar(), w.foot.readings, nil, nil, w.portrait)
 	w.right = container.NewVSplit(w.boxes[1], w.boxes[2])
