@@ -2,6 +2,7 @@ package table
 
 import (
 	"fmt"
+	"strings"
 
 	"cavitywright/table/shape"
 
@@ -59,7 +60,7 @@ func (f *Fault) Unwrap() error { return f.cause }
 func (d Design) itemName(i int) string {
 	kind := d.Items[i].Shape.Kind()
 	if k := shape.Find(kind); k != nil {
-		kind = k.Name
+		kind = strings.ToLower(k.Title)
 	} else {
 		kind = "free wall"
 	}
@@ -69,6 +70,14 @@ func (d Design) itemName(i int) string {
 		}
 	}
 	return kind
+}
+
+// wallName is an item's wall as a sentence names it.
+func (d Design) wallName(i int) string {
+	if shape.Find(d.Items[i].Shape.Kind()) == nil {
+		return d.itemName(i)
+	}
+	return "wall of the " + d.itemName(i)
 }
 
 // place is a point as a sentence names it.

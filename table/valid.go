@@ -205,7 +205,7 @@ func (t *Table) crossing(i, j int, at r2.Vec) *Fault {
 	p, q := &t.pieces[i], &t.pieces[j]
 	d := t.design
 	if p.Loop == q.Loop {
-		return d.faultAt(SelfCross, p.Item, at, "The wall of the %s crosses itself at %s; drag the nodes there apart, or undo.", d.itemName(p.Item), d.place(at))
+		return d.faultAt(SelfCross, p.Item, at, "The %s crosses itself at %s; drag the nodes there apart, or undo.", d.wallName(p.Item), d.place(at))
 	}
 	if p.Item == q.Item {
 		return d.faultAt(Overlap, p.Item, at, "Two loops of the %s meet at %s; make them smaller or move them apart.", d.itemName(p.Item), d.place(at))

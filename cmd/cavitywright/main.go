@@ -40,9 +40,15 @@ func main() {
 }
 
 func run(path, state string) error {
-	t, path, err := first(path)
-	if err != nil {
-		return err
+	t, path, trouble := first(path)
+	if trouble != nil {
+		// Said in the terminal and in the window: who started it by a click
+		// sees no terminal.
+		fmt.Fprintln(os.Stderr, "cavitywright:", trouble)
+		var err error
+		if t, path, err = first(""); err != nil {
+			return err
+		}
 	}
 	if runtime.GOOS == "linux" && os.Getenv("DISPLAY") == "" {
 		return errors.New("there is no X display to open a window on; start it in a desktop session, or set DISPLAY")
@@ -60,7 +66,11 @@ func run(path, state string) error {
 	if state != "" {
 		o.Watch = func(s window.State) { writeState(state, s) }
 	}
-	window.New(a, t, path, o).ShowAndRun()
+	w := window.New(a, t, path, o)
+	if trouble != nil {
+		w.Say(trouble.Error())
+	}
+	w.ShowAndRun()
 	return nil
 }
 

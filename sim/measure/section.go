@@ -67,6 +67,9 @@ func (c Section) Axes(t *table.Table, g table.Region) figure.Dots {
 	if c.Display.Momentum == table.Angle {
 		f.Y.Label, f.Y.Unit = "χ", "°"
 	}
+	if c.Display.Sense == table.Clockwise {
+		f.X.Label += ", clockwise"
+	}
 	f.StripLo, _ = c.At(0, 0)
 	f.StripHi, _ = c.At(c.Length, 0)
 	for i, l := range t.Loops() {

@@ -46,7 +46,7 @@ func onItem(t *table.Table, i int, f func(it *table.Item) error) (*table.Table, 
 }
 
 // Place adds an item. A wall replaces the wall that is there, together with
-// what lay on it.
+// what lay on it and the name of the table: it is another table then.
 type Place struct{ Item table.Item }
 
 // Title names the change.
@@ -62,6 +62,7 @@ func (c Place) Apply(t *table.Table) (*table.Table, error) {
 				}
 			}
 			d.Items = slices.Insert(d.Items, 0, c.Item)
+			d.Name, d.Notes = "", ""
 			for k := range d.Coats {
 				d.Coats[k].Item++
 			}

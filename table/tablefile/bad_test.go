@@ -72,7 +72,7 @@ var refusals = []struct {
 	{"launch-surplus", is[*BadValue], `study.launches[0].region does not matter to a launch of this pattern and origin (line 8, column 71); take it out.`},
 	{"region", is[*BadValue], `study.launches[0].region has the number 1.5 (line 8, column 47); give [s0, s1, p0, p1] with s from 0 to 1 and p from -1 to 1.`},
 	{"no-items", is[*table.Fault], `Nothing is drawn yet; place a shape or draw a wall.`},
-	{"self-crossing", is[*table.Fault], `The wall of the free wall crosses itself at (0.2, 0.2) mm; drag the nodes there apart, or undo.`},
+	{"self-crossing", is[*table.Fault], `The free wall crosses itself at (0.2, 0.2) mm; drag the nodes there apart, or undo.`},
 	{"obstacle-through-wall", is[*table.Fault], `The disc (item 1) and the disc (item 2) meet at (0.970833, 0.239755) mm; move one of them away.`},
 	{"coat-nowhere", is[*table.Fault], `Coat 1 lies on side 5 of the disc, which has no such side.`},
 	{"launch-off-wall", is[*table.Fault], `Launch 1 starts at s/L = 1, p = 0; s/L must lie in [0, 1) and p between -1 and 1.`},

@@ -4,6 +4,8 @@ import (
 	"cavitywright/render"
 	"cavitywright/ui/live"
 	"cavitywright/ui/session"
+
+	"fyne.io/fyne/v2"
 )
 
 // Desk is what the panes share: the session, the engine, the look, and the
@@ -19,6 +21,8 @@ type Desk struct {
 	Say  func(string)
 	// Point shows a place in all panes.
 	Point func(Place)
+	// Key takes a key that means nothing to the pane it was pressed in.
+	Key func(fyne.KeyName)
 	// Changed asks for new pictures: a size, a view or a setting changed.
 	Changed func()
 }

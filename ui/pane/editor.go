@@ -40,7 +40,13 @@ type Editor struct {
 // NewEditor is the editor's pane on a desk.
 func NewEditor(d *Desk) *Editor {
 	e := &Editor{desk: d, tool: tool.NewEditor(d.Session), mark: newRing(), breath: newRing()}
-	e.Surface = newSurface(e, func() *image.RGBA { return e.picture }, func(int, int) { e.Redraw(); d.Changed() })
+	e.Surface = newSurface(e, func() *image.RGBA { return e.picture }, func(int, int) {
+		d.Session.Editor = render.View{} // another size is fitted anew
+		e.Redraw()
+		d.Changed()
+		e.Again()
+	})
+	e.Surface.keysElse = func(k fyne.KeyName) { d.Key(k) }
 	e.Surface.marks = append(e.mark.objects(), e.breath.objects()...)
 	return e
 }
@@ -83,6 +89,7 @@ func (e *Editor) Press(x, y float64, k tool.Keys) {
 	e.stopBreath()
 	e.desk.Point(Place{})
 	p, reach := e.at(x, y)
+	e.tool.Step = e.step()
 	e.tool.Press(p, reach, k)
 	e.sayRefusal()
 }

@@ -1,6 +1,7 @@
 package pane
 
 import (
+	"errors"
 	"fmt"
 	"math"
 	"strconv"
@@ -54,11 +55,20 @@ func (n *number) TypedKey(e *fyne.KeyEvent) {
 		n.nudge(-1)
 	case fyne.KeyEscape:
 		n.SetText(n.before)
+		n.release()
 	case fyne.KeyReturn, fyne.KeyEnter:
-		n.before = n.Text
 		n.Entry.TypedKey(e)
+		n.before = n.Text // what stands now is taken
+		n.release()
 	default:
 		n.Entry.TypedKey(e)
+	}
+}
+
+// release gives the keyboard back to the window.
+func (n *number) release() {
+	if c := fyne.CurrentApp().Driver().CanvasForObject(n); c != nil {
+		c.Unfocus()
 	}
 }
 
@@ -71,6 +81,9 @@ func (n *number) Scrolled(e *fyne.ScrollEvent) {
 // with a unit of length, "deg" or "°" behind it where that is wanted. A length
 // without a unit is in the given one.
 func Evaluate(text string, unit table.Unit) (float64, error) {
+	if strings.TrimSpace(text) == "" {
+		return 0, errors.New("nothing is typed; type a value such as 1.5, 3 mm or 10/3")
+	}
 	p := sum{text: strings.NewReplacer("−", "-", "·", "*", "×", "*", ",", ".").Replace(text), unit: unit}
 	v, ok := p.sum()
 	p.space()
@@ -146,6 +159,15 @@ func (p *sum) factor() (float64, bool) {
 		return v, ok && p.next(")") == ')'
 	}
 	p.space()
+	if strings.HasPrefix(p.text[p.at:], "sqrt(") {
+		p.at += len("sqrt(")
+		v, ok := p.sum()
+		return math.Sqrt(v), ok && p.next(")") == ')'
+	}
+	if strings.HasPrefix(p.text[p.at:], "pi") {
+		p.at += len("pi")
+		return math.Pi, true
+	}
 	end := p.at
 	for end < len(p.text) && (strings.IndexByte("0123456789.", p.text[end]) >= 0 ||
 		(p.text[end] == 'e' || p.text[end] == 'E') && end+1 < len(p.text) && strings.IndexByte("0123456789+-", p.text[end+1]) >= 0 ||

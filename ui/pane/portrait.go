@@ -3,6 +3,7 @@ package pane
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"cavitywright/render"
 	"cavitywright/sim/measure"
@@ -27,6 +28,7 @@ type Portrait struct {
 func NewPortrait(d *Desk) *Portrait {
 	p := &Portrait{desk: d, tool: tool.NewPortrait(d.Session), mark: newCross()}
 	p.Surface = newSurface(p, d.Engine.PortraitFrames.Take, func(int, int) { d.Changed() })
+	p.Surface.keysElse = func(k fyne.KeyName) { d.Key(k) }
 	p.Surface.marks = p.mark.objects()
 	p.Surface.cursor = desktop.CrosshairCursor
 	return p
@@ -87,7 +89,11 @@ func stateNote(t *table.Table, s, p float64) string {
 	if math.Abs(p) > 1 {
 		return ""
 	}
-	return fmt.Sprintf("s = %.5g %s (s/L = %.4f) · p = %.5f · χ = %.3f°", s, t.Design().Unit, s/t.Length(), p, math.Asin(p)*180/math.Pi)
+	shown := p
+	if t.Design().Study.Display.Sense == table.Clockwise {
+		shown = -p
+	}
+	return placeNote(t, s) + strings.ReplaceAll(fmt.Sprintf(" · p = %.5f · χ = %.3f°", shown, math.Asin(shown)*180/math.Pi), "-", "−")
 }
 
 // Leave takes the marks away.

@@ -3,6 +3,7 @@ package pane
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"cavitywright/render"
 	"cavitywright/table"
@@ -26,7 +27,11 @@ type Rays struct {
 // NewRays is the rays' pane on a desk.
 func NewRays(d *Desk) *Rays {
 	r := &Rays{desk: d, tool: tool.NewRays(d.Session), mark: newRing()}
-	r.Surface = newSurface(r, d.Engine.RaysFrames.Take, func(int, int) { d.Changed() })
+	r.Surface = newSurface(r, d.Engine.RaysFrames.Take, func(int, int) {
+		r.View = render.View{} // another size is fitted anew
+		d.Changed()
+	})
+	r.Surface.keysElse = func(k fyne.KeyName) { d.Key(k) }
 	r.Surface.marks = r.mark.objects()
 	r.Surface.cursor = desktop.CrosshairCursor
 	return r
@@ -145,9 +150,19 @@ func wallNote(t *table.Table, s float64) string {
 	} else if k < -1e-9/t.Length() {
 		bend = fmt.Sprintf("dispersing, radius %.4g %s", -1/k, t.Design().Unit)
 	}
-	return fmt.Sprintf("s = %.5g %s (s/L = %.4f) · %s", s, t.Design().Unit, s/t.Length(), bend)
+	return placeNote(t, s) + " · " + bend
+}
+
+// placeNote is a place on the wall in the convention of the display.
+func placeNote(t *table.Table, s float64) string {
+	sense := ""
+	if t.Design().Study.Display.Sense == table.Clockwise {
+		s, sense = t.Length()-s, ", clockwise"
+	}
+	return fmt.Sprintf("s = %.5g %s (s/L = %.4f%s)", s, t.Design().Unit, s/t.Length(), sense)
 }
 
 func pointNote(t *table.Table, p r2.Vec) string {
-	return fmt.Sprintf("x = %.5g, y = %.5g %s", p.X, p.Y, t.Design().Unit)
+	u := t.Design().Unit
+	return strings.ReplaceAll(fmt.Sprintf("x = %.5g %s, y = %.5g %s", p.X, u, p.Y, u), "-", "−")
 }

@@ -51,6 +51,9 @@ type Surface struct {
 	marks  []fyne.CanvasObject
 	px     image.Point
 
+	// keysElse takes the keys that mean nothing to the pane.
+	keysElse func(fyne.KeyName)
+
 	button  desktop.MouseButton
 	space   bool
 	last    fyne.Position
@@ -58,6 +61,7 @@ type Surface struct {
 	clicked time.Time
 	focused bool
 	cursor  desktop.StandardCursor
+	hover   hover
 }
 
 func newSurface(h Hands, picture func() *image.RGBA, resized func(w, h int)) *Surface {
@@ -181,6 +185,7 @@ func (s *Surface) MouseUp(e *desktop.MouseEvent) {
 		s.hands.Release()
 	}
 	s.button = 0
+	s.Again()
 }
 
 // Dragged follows the pointer while a button is held, outside the widget too.
@@ -193,6 +198,7 @@ func (s *Surface) Dragged(e *fyne.DragEvent) {
 		s.hands.Pan(dx, dy)
 	case s.button == desktop.MouseButtonPrimary:
 		x, y := s.pixel(e.Position)
+		s.hover.x, s.hover.y = x, y
 		s.hands.Drag(x, y, s.keys())
 	}
 }
@@ -215,12 +221,34 @@ func (s *Surface) MouseMoved(e *desktop.MouseEvent) {
 	}
 	x, y := s.pixel(e.Position)
 	if s.button == 0 {
+		s.hover = hover{x: x, y: y, state: Visible}
 		s.hands.Hover(x, y)
 	}
 }
 
+// hover is where the pointer is over the pane, in pixels.
+type hover struct {
+	x, y  float64
+	state Visibility
+	again Visibility // while the pane is told again
+}
+
+// Again tells the pane anew what the pointer is over: the table under it, or
+// the view, has changed.
+func (s *Surface) Again() {
+	if s.hover.state == Hidden || s.hover.again == Visible || s.button != 0 {
+		return
+	}
+	s.hover.again = Visible
+	s.hands.Hover(s.hover.x, s.hover.y)
+	s.hover.again = Hidden
+}
+
 // MouseOut takes the hover marks away.
-func (s *Surface) MouseOut() { s.hands.Leave() }
+func (s *Surface) MouseOut() {
+	s.hover.state = Hidden
+	s.hands.Leave()
+}
 
 // Scrolled zooms about the pointer.
 func (s *Surface) Scrolled(e *fyne.ScrollEvent) {
@@ -250,7 +278,9 @@ func (s *Surface) TypedKey(e *fyne.KeyEvent) {
 		s.hands.Cancel()
 		return
 	}
-	s.hands.Key(e.Name)
+	if !s.hands.Key(e.Name) && s.keysElse != nil {
+		s.keysElse(e.Name)
+	}
 }
 
 // KeyDown and KeyUp watch Space, which turns a drag into a pan.

@@ -16,6 +16,7 @@ import (
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/widget"
+	"gonum.org/v1/gonum/spatial/r2"
 )
 
 // Values is the strip of numbers of what is selected: a form made from the
@@ -113,16 +114,24 @@ func (v *Values) build() {
 		}
 	case shape.Freeform:
 		v.name.SetText("Free wall")
-		v.nodeRows(grid, s)
+		if span, ok := bowedSpan(s, v.of.handle); ok {
+			v.arcRows(grid, span)
+		} else {
+			v.nodeRows(grid, s)
+		}
 	}
 	v.placeRows(grid, it)
 	head := container.NewHBox(v.name)
 	if f, ok := it.Shape.(shape.Figure); ok {
-		about := widget.NewLabel(f.Family().About)
+		note := f.Family().About
+		if it.Role == table.Post {
+			note = "An obstacle; make it the wall by the Edit menu."
+		}
+		about := widget.NewLabel(note)
 		about.Truncation = fyne.TextTruncateEllipsis
 		v.Box.Add(container.NewBorder(nil, nil, head, nil, about))
 	} else {
-		v.Box.Add(container.NewHBox(v.name, v.spanControls(it.Shape.(shape.Freeform))))
+		v.Box.Add(container.NewHScroll(container.NewHBox(v.name, v.spanControls(it.Shape.(shape.Freeform)))))
 	}
 	v.Box.Add(grid)
 }
@@ -174,6 +183,41 @@ func (v *Values) nodeRows(grid *fyne.Container, f shape.Freeform) {
 	grid.Add(v.add(l, move(1)))
 }
 
+// bowedSpan is the arc whose middle handle h is.
+func bowedSpan(f shape.Freeform, h int) (span int, ok bool) {
+	if h < 0 || h >= len(f.Handles()) || f.Handles()[h].Role != shape.Bow {
+		return 0, false
+	}
+	return f.Handles()[h].Of, true
+}
+
+// arcRows are the radius and the sweep of an arc of a free wall.
+func (v *Values) arcRows(grid *fyne.Container, span int) {
+	bent := func(bulge func(now, chord float64) float64) edit.Command {
+		it := v.item()
+		f := it.Shape.(shape.Freeform)
+		n := f.Nodes()
+		chord := r2.Norm(r2.Sub(n[(span+1)%len(n)].At, n[span].At)) * it.Place.Scale
+		return edit.Reshape{Item: v.of.item, Shape: f.SetBulge(span, bulge(n[span].Bulge, chord)), Name: "bend an arc"}
+	}
+	r := param.Spec{Name: "radius", Unit: param.Length, Lo: 1e-9, Hi: 1e9}
+	grid.Add(v.add(r, func(x float64) edit.Command {
+		return bent(func(now, chord float64) float64 {
+			// A chord c of a circle of radius R spans 2 asin(c/2R); the larger
+			// arc keeps being the larger one.
+			half := math.Asin(math.Min(1, chord/(2*x)))
+			if math.Abs(now) > 1 {
+				half = math.Pi - half
+			}
+			return math.Copysign(math.Tan(half/2), now)
+		})
+	}))
+	a := param.Spec{Name: "sweep", Unit: param.Angle, Lo: -6.2, Hi: 6.2}
+	grid.Add(v.add(a, func(x float64) edit.Command {
+		return bent(func(float64, float64) float64 { return math.Tan(x / 4) })
+	}))
+}
+
 // spanControls choose the joint of the selected node and the span that leaves
 // it.
 func (v *Values) spanControls(f shape.Freeform) fyne.CanvasObject {
@@ -181,7 +225,7 @@ func (v *Values) spanControls(f shape.Freeform) fyne.CanvasObject {
 	if h < 0 || f.Handles()[h].Of < 0 {
 		return widget.NewLabel("Click a node to change it; click the wall twice to add one.")
 	}
-	node := f.Handles()[h].Of
+	node, name := f.Handles()[h].Of, f.Handles()[h].Name
 	reshape := func(g shape.Freeform, name string) {
 		if err := v.desk.Session.Do(edit.Reshape{Item: v.of.item, Shape: g, Name: name}); err != nil {
 			v.desk.Say(err.Error())
@@ -201,7 +245,7 @@ func (v *Values) spanControls(f shape.Freeform) fyne.CanvasObject {
 		reshape(f.SetSpan(node, shape.Straight+shape.SpanKind(span.SelectedIndex())), "change a span")
 	}
 	return container.NewHBox(
-		widget.NewLabel(fmt.Sprintf("node %d of %d, joint", node+1, len(f.Nodes()))), joint,
+		widget.NewLabel(fmt.Sprintf("%s of %d, joint", name, len(f.Nodes()))), joint,
 		widget.NewLabel("next span"), span,
 		widget.NewButton("Delete node", func() { reshape(f.DeleteNode(node), "delete a node") }))
 }
@@ -212,14 +256,13 @@ func (v *Values) add(spec param.Spec, set func(float64) edit.Command) fyne.Canva
 	r.entry = newNumber()
 	r.entry.OnSubmitted = func(text string) {
 		x, err := r.parse(text, v.desk.Session.Table().Design().Unit)
+		if err == nil {
+			err = v.desk.Session.Do(r.set(x))
+		}
 		if err != nil {
 			v.desk.Say(err.Error())
-			return
 		}
-		if err := v.desk.Session.Do(r.set(x)); err != nil {
-			v.desk.Say(err.Error())
-		}
-		r.value = math.NaN()
+		r.value, r.entry.focused = math.NaN(), false
 		v.Refresh()
 	}
 	r.entry.nudge = func(k float64) {
@@ -246,8 +289,8 @@ func (v *Values) add(spec param.Spec, set func(float64) edit.Command) fyne.Canva
 	}
 	v.rows = append(v.rows, r)
 	name := widget.NewLabel(spec.Name)
-	return container.NewBorder(nil, nil, container.NewGridWrap(fyne.NewSize(112, 30), name), nil,
-		container.NewGridWithColumns(2, r.entry, r.slider))
+	return container.NewBorder(nil, nil, container.NewGridWrap(fyne.NewSize(108, 30), name), nil,
+		container.NewBorder(nil, nil, container.NewGridWrap(fyne.NewSize(104, 30), r.entry), nil, r.slider))
 }
 
 // update reads the numbers off the document.
@@ -261,7 +304,12 @@ func (v *Values) update() {
 	case shape.Figure:
 		now = append(now, s.Values()...)
 	case shape.Freeform:
-		if h := v.of.handle; h >= 0 && h < len(s.Handles()) {
+		if span, ok := bowedSpan(s, v.of.handle); ok {
+			n := s.Nodes()
+			sweep := 4 * math.Atan(n[span].Bulge)
+			chord := r2.Norm(r2.Sub(n[(span+1)%len(n)].At, n[span].At)) * it.Place.Scale
+			now = append(now, chord/(2*math.Abs(math.Sin(sweep/2))), sweep)
+		} else if h := v.of.handle; h >= 0 && h < len(s.Handles()) {
 			p := it.Place.Apply(s.Handles()[h].At)
 			now = append(now, p.X, p.Y)
 		}

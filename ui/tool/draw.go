@@ -47,6 +47,8 @@ func (e *Editor) pressChain(p r2.Vec, reach float64, k Keys) {
 	}
 	if n > 0 && k.Has(Constrain) {
 		p = constrained(e.chain.nodes[n-1].At, p)
+	} else {
+		p = e.snapped(p, e.Step, k)
 	}
 	if n > 0 && r2.Norm(r2.Sub(e.chain.nodes[n-1].At, p)) <= reach/4 {
 		return // the second click of a double click

@@ -2,6 +2,7 @@ package tool
 
 import (
 	"math"
+	"strings"
 
 	"cavitywright/table"
 	"cavitywright/table/edit"
@@ -21,6 +22,9 @@ type Editor struct {
 	place plane.Similarity // of the item held, then
 	chain chain
 	trail []r2.Vec
+
+	// Step is the grid's step, 0 for none: where new nodes snap to.
+	Step float64
 }
 
 // grip is what the pointer holds.
@@ -216,7 +220,7 @@ func (e *Editor) Hint(p r2.Vec, reach float64) string {
 		if _, ok := e.s.Table().Design().Items[i].Shape.(shape.Freeform); ok {
 			return "Drag to move the wall; click twice to add a node."
 		}
-		return "Drag to move the " + e.s.Table().Design().Items[i].Shape.Kind() + "."
+		return "Drag to move the " + strings.ToLower(e.s.Table().Design().Items[i].Shape.(shape.Figure).Family().Title) + "."
 	}
 	return "Drag a handle to reshape the wall; wheel zooms, middle button or Space pans."
 }

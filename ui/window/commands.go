@@ -25,6 +25,7 @@ type command struct {
 	bare fyne.KeyName  // a key without a modifier, taken where no field has the focus
 	keys string        // how the key is written
 	run  func()
+	on   func() bool // whether it is ticked in the menu; nil for a command without a tick
 }
 
 func ctrl(k fyne.KeyName) fyne.Shortcut {
@@ -43,38 +44,41 @@ func (w *Window) allCommands() []command {
 			w.editor.Cancel()
 		}
 	}
+	shows := func(is func(table.Display) bool) func() bool {
+		return func() bool { return is(w.session.Table().Design().Study.Display) }
+	}
 	return []command{
-		{"File", "New table from the gallery…", ctrl(fyne.KeyN), "", "Ctrl+N", w.openGallery},
-		{"File", "Open…", ctrl(fyne.KeyO), "", "Ctrl+O", w.askOpen},
-		{"File", "Save", ctrl(fyne.KeyS), "", "Ctrl+S", w.save},
-		{"File", "Save as…", ctrlShift(fyne.KeyS), "", "Ctrl+Shift+S", w.saveAs},
-		{"File", "Export figure…", ctrl(fyne.KeyE), "", "Ctrl+E", w.askFigure},
-		{"File", "Portrait as PNG beside the table file", ctrlShift(fyne.KeyE), "", "Ctrl+Shift+E", w.exportBeside},
-		{"Edit", "Undo", &fyne.ShortcutUndo{}, "", "Ctrl+Z", w.undo},
-		{"Edit", "Redo", &fyne.ShortcutRedo{}, "", "Ctrl+Y", w.redo},
-		{"Edit", "Delete what is selected", nil, fyne.KeyDelete, "Delete", func() { w.sayErr(w.editor.Tool().Delete()) }},
-		{"Edit", "Make it an obstacle or the wall", nil, "", "", w.toggleRole},
-		{"Edit", "Name and notes…", nil, "", "", w.askName},
-		{"Draw", "Reshape: drag handles and shapes", nil, fyne.KeyV, "V", tools(session.Hand)},
-		{"Draw", "Nodes: click a wall node by node", nil, fyne.KeyN, "N", tools(session.Chain)},
-		{"Draw", "Freehand: draw a wall in one stroke", nil, fyne.KeyD, "D", tools(session.Stroke)},
-		{"Draw", "Place a shape…", nil, fyne.KeyA, "A", w.openShapes},
-		{"Draw", "Snap to the grid", nil, fyne.KeyG, "G", func() { w.session.Settings.Snap = 1 - w.session.Settings.Snap; w.session.Touch() }},
-		{"Launch", "Seed what the portrait shows, evenly", nil, fyne.KeyE, "E", func() { w.sayErr(tool.SeedEvenly(w.session)) }},
-		{"Launch", "Take out all launches", nil, fyne.KeyC, "C", func() { w.sayErr(tool.ClearLaunches(w.session)) }},
-		{"Launch", "Let the balls run or stand", nil, fyne.KeyP, "P", w.toggleMotion},
-		{"Launch", "Stop or go on filling the portrait", nil, fyne.KeyS, "S", w.toggleFilling},
-		{"Launch", "Bundle: fan angle, beam width, number…", nil, fyne.KeyB, "B", w.askBundle},
-		{"View", "Table fills the window", nil, fyne.Key1, "1", func() { w.grow(0) }},
-		{"View", "Rays fill the window", nil, fyne.Key2, "2", func() { w.grow(1) }},
-		{"View", "Portrait fills the window", nil, fyne.Key3, "3", func() { w.grow(2) }},
-		{"View", "Fit the table, the rays and the whole section", nil, fyne.KeyF, "F", w.fitAll},
-		{"View", "Axes: s or s/L", nil, "", "", w.display(func(d *table.Display) { d.Position = 1 - d.Position })},
-		{"View", "Axes: p or χ in degrees", nil, "", "", w.display(func(d *table.Display) { d.Momentum = 1 - d.Momentum })},
-		{"View", "Axes: counter-clockwise or clockwise", nil, "", "", w.display(func(d *table.Display) { d.Sense = 1 - d.Sense })},
-		{"View", "Light or dark", nil, fyne.KeyL, "L", w.toggleVariant},
-		{"Help", "All commands…", ctrl(fyne.KeyK), "", "Ctrl+K", w.askCommand},
-		{"Help", "What is what", nil, fyne.KeyF1, "F1", w.help},
+		{"File", "New table from the gallery…", ctrl(fyne.KeyN), "", "Ctrl+N", w.openGallery, nil},
+		{"File", "Open…", ctrl(fyne.KeyO), "", "Ctrl+O", w.askOpen, nil},
+		{"File", "Save", ctrl(fyne.KeyS), "", "Ctrl+S", w.save, nil},
+		{"File", "Save as…", ctrlShift(fyne.KeyS), "", "Ctrl+Shift+S", w.saveAs, nil},
+		{"File", "Export figure…", ctrl(fyne.KeyE), "", "Ctrl+E", w.askFigure, nil},
+		{"File", "Portrait as PNG beside the table file", ctrlShift(fyne.KeyE), "", "Ctrl+Shift+E", w.exportBeside, nil},
+		{"Edit", "Undo", &fyne.ShortcutUndo{}, "", "Ctrl+Z", w.undo, nil},
+		{"Edit", "Redo", &fyne.ShortcutRedo{}, "", "Ctrl+Y", w.redo, nil},
+		{"Edit", "Delete what is selected", nil, fyne.KeyDelete, "Delete", func() { w.sayErr(w.editor.Tool().Delete()) }, nil},
+		{"Edit", "Make it an obstacle or the wall", nil, "", "", w.toggleRole, nil},
+		{"Edit", "Name and notes…", nil, "", "", w.askName, nil},
+		{"Draw", "Reshape: drag handles and shapes", nil, fyne.KeyV, "V", tools(session.Hand), nil},
+		{"Draw", "Nodes: click a wall node by node", nil, fyne.KeyN, "N", tools(session.Chain), nil},
+		{"Draw", "Freehand: draw a wall in one stroke", nil, fyne.KeyD, "D", tools(session.Stroke), nil},
+		{"Draw", "Place a shape…", nil, fyne.KeyA, "A", w.openShapes, nil},
+		{"Draw", "Snap to the grid", nil, fyne.KeyG, "G", func() { w.session.Settings.Snap = 1 - w.session.Settings.Snap; w.session.Touch() }, nil},
+		{"Launch", "Seed what the portrait shows, evenly", nil, fyne.KeyE, "E", func() { w.sayErr(tool.SeedEvenly(w.session)) }, nil},
+		{"Launch", "Take out all launches", nil, fyne.KeyC, "C", func() { w.sayErr(tool.ClearLaunches(w.session)) }, nil},
+		{"Launch", "Let the balls run or stand", nil, fyne.KeyP, "P", w.toggleMotion, nil},
+		{"Launch", "Stop or go on filling the portrait", nil, fyne.KeyS, "S", w.toggleFilling, nil},
+		{"Launch", "Bundle: fan angle, beam width, number…", nil, fyne.KeyB, "B", w.askBundle, nil},
+		{"View", "Table fills the window", nil, fyne.Key1, "1", func() { w.grow(0) }, nil},
+		{"View", "Rays fill the window", nil, fyne.Key2, "2", func() { w.grow(1) }, nil},
+		{"View", "Portrait fills the window", nil, fyne.Key3, "3", func() { w.grow(2) }, nil},
+		{"View", "Fit the table, the rays and the whole section", nil, fyne.KeyF, "F", w.fitAll, nil},
+		{"View", "Axes: s/L instead of s", nil, "", "", w.display(func(d *table.Display) { d.Position = 1 - d.Position }), shows(func(d table.Display) bool { return d.Position == table.Fraction })},
+		{"View", "Axes: χ in degrees instead of p", nil, "", "", w.display(func(d *table.Display) { d.Momentum = 1 - d.Momentum }), shows(func(d table.Display) bool { return d.Momentum == table.Angle })},
+		{"View", "Axes: clockwise", nil, "", "", w.display(func(d *table.Display) { d.Sense = 1 - d.Sense }), shows(func(d table.Display) bool { return d.Sense == table.Clockwise })},
+		{"View", "Light or dark", nil, fyne.KeyL, "L", w.toggleVariant, nil},
+		{"Help", "All commands…", ctrl(fyne.KeyK), "", "Ctrl+K", w.askCommand, nil},
+		{"Help", "What is what", nil, fyne.KeyF1, "F1", w.help, nil},
 	}
 }
 
@@ -93,8 +97,11 @@ func (w *Window) menu() *fyne.MainMenu {
 		if c.bare != "" {
 			name += "   " + c.keys
 		}
-		it := fyne.NewMenuItem(name, c.run)
+		it := fyne.NewMenuItem(name, func() { w.unlessAsked(c.run) })
 		it.Shortcut = c.key
+		if c.on != nil {
+			it.Checked = c.on()
+		}
 		m.Items = append(m.Items, it)
 	}
 	at["File"].Items = append(at["File"].Items, w.recentMenu())
@@ -159,6 +166,15 @@ func (w *Window) display(change func(*table.Display)) func() {
 		study := w.session.Table().Design().Study
 		change(&study.Display)
 		w.sayErr(w.session.Do(edit.SetStudy{Study: study, Name: "axes"}))
+		w.win.SetMainMenu(w.menu())
+	}
+}
+
+// unlessAsked runs a command unless a question stands in the window: one thing
+// at a time.
+func (w *Window) unlessAsked(run func()) {
+	if w.win.Canvas().Overlays().Top() == nil {
+		run()
 	}
 }
 

@@ -22,9 +22,9 @@ func newChoice(icons, names []string, chosen func(int)) *choice {
 	c := &choice{box: container.NewHBox()}
 	c.box.Layout = layout.NewCustomPaddedHBoxLayout(1)
 	for i, n := range names {
-		b := widget.NewButton(n, nil)
+		b := quiet("", n, nil)
 		if icons != nil {
-			b.SetIcon(icon(icons[i]))
+			b.Icon = icon(icons[i])
 		}
 		b.OnTapped = func() {
 			c.show(i)
@@ -55,11 +55,11 @@ func (c *choice) show(i int) {
 
 // quiet is a button that shows its name and icon without a frame.
 func quiet(iconName, name string, tapped func()) *widget.Button {
-	b := widget.NewButton(name, tapped)
+	b := &widget.Button{Text: name, OnTapped: tapped, Importance: widget.LowImportance}
 	if iconName != "" {
-		b.SetIcon(icon(iconName))
+		b.Icon = icon(iconName)
 	}
-	b.Importance = widget.LowImportance
+	b.ExtendBaseWidget(b)
 	return b
 }
 

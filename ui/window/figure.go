@@ -51,7 +51,13 @@ func (w *Window) askFigure() {
 		o := export.Options{WidthMM: mm, DPI: res}
 		rays := what.SelectedIndex() == 1
 		name := strings.TrimSuffix(w.fileName(), ".cavity.json") + map[bool]string{false: "-portrait.", true: "-rays."}[rays] + kind.Selected
-		w.askPath("Export the figure as", name, func(path string) { w.ExportFigure(path, rays, o) })
+		w.askPath(question{what: "Export the figure as", folder: w.folder(), name: name}, func(path string) error {
+			if err := store.CanWrite(path); err != nil {
+				return err
+			}
+			w.ExportFigure(path, rays, o)
+			return nil
+		})
 	}, w.win)
 	f.Resize(fyne.NewSize(420, 300))
 	f.Show()

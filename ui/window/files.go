@@ -17,6 +17,7 @@ import (
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/dialog"
+	"fyne.io/fyne/v2/layout"
 	"fyne.io/fyne/v2/storage"
 	"fyne.io/fyne/v2/widget"
 )
@@ -134,29 +135,41 @@ func (w *Window) saveThen(then func()) {
 		}
 		return
 	}
-	w.askPath("Save the table as", w.fileName(), func(path string) {
-		if w.SaveTo(path) {
-			then()
-		}
-	})
+	w.askSave(then)
 }
 
-func (w *Window) saveAs() {
-	w.askPath("Save the table as", w.fileName(), func(path string) { w.SaveTo(path) })
+func (w *Window) saveAs() { w.askSave(func() {}) }
+
+// askSave asks for a file to save the table to, and goes on once it is there.
+func (w *Window) askSave(then func()) {
+	w.askPath(question{what: "Save the table as", folder: w.folder(), name: w.fileName()}, func(path string) error {
+		if err := w.saveFile(path); err != nil {
+			return err
+		}
+		then()
+		return nil
+	})
 }
 
 // SaveTo writes the document; false, with a sentence, where that fails.
 func (w *Window) SaveTo(path string) bool {
-	path = store.EnsureExt(path)
-	if err := store.Save(path, w.session.Table().Design()); err != nil {
+	if err := w.saveFile(path); err != nil {
 		w.foot.say(err.Error())
 		return false
+	}
+	return true
+}
+
+func (w *Window) saveFile(path string) error {
+	path = store.EnsureExt(path)
+	if err := store.Save(path, w.session.Table().Design()); err != nil {
+		return err
 	}
 	w.session.Saved(path)
 	w.disk.clear()
 	w.remember(path)
 	w.say("Saved: %s.", path)
-	return true
+	return nil
 }
 
 // fileName is a name for the document's file.
@@ -194,12 +207,17 @@ func (w *Window) folder() string {
 	return home
 }
 
+// question is what a file is asked for, with what stands in its fields.
+type question struct {
+	what, folder, name string
+	trouble            string // why the last answer could not be used
+}
+
 // askPath asks for a file to write: a folder and a name. Nothing is touched
-// before the answer, and an existing file is asked about.
-func (w *Window) askPath(what, name string, then func(path string)) {
-	where, file := widget.NewEntry(), widget.NewEntry()
-	where.SetText(w.folder())
-	file.SetText(name)
+// before the answer, and an existing file is asked about. Where then fails, the
+// question comes again with the reason.
+func (w *Window) askPath(q question, then func(path string) error) {
+	where, file := newField(q.folder), newField(q.name)
 	browse := widget.NewButton("Browse…", func() {
 		d := dialog.NewFolderOpen(func(u fyne.ListableURI, err error) {
 			if err == nil && u != nil {
@@ -209,34 +227,70 @@ func (w *Window) askPath(what, name string, then func(path string)) {
 		d.Resize(fyne.NewSize(800, 560))
 		d.Show()
 	})
-	var d dialog.Dialog
-	accept := func(ok bool) {
-		if !ok || strings.TrimSpace(file.Text) == "" {
+	var d *dialog.CustomDialog
+	write := func() {
+		d.Hide()
+		q.folder, q.name = where.Text, file.Text
+		path := filepath.Join(q.folder, q.name)
+		finish := func() {
+			if err := then(path); err != nil {
+				q.trouble = sentence(err.Error())
+				w.askPath(q, then)
+				return
+			}
+			w.app.Preferences().SetString("folder", q.folder)
+		}
+		if strings.TrimSpace(q.name) == "" {
+			q.trouble = "Type a name for the file."
+			w.askPath(q, then)
 			return
 		}
-		path := filepath.Join(where.Text, file.Text)
-		w.app.Preferences().SetString("folder", where.Text)
 		if _, err := os.Stat(path); err == nil && path != w.session.Path() {
 			dialog.ShowConfirm("Replace the file?", filepath.Base(path)+" is there already.", func(yes bool) {
 				if yes {
-					then(path)
+					finish()
 				}
 			}, w.win)
 			return
 		}
-		then(path)
+		finish()
 	}
-	d = dialog.NewForm(what, "Write", "Cancel", []*widget.FormItem{
-		widget.NewFormItem("Name", file),
-		widget.NewFormItem("Folder", container.NewBorder(nil, nil, nil, browse, where)),
-	}, accept, w.win)
-	file.OnSubmitted = func(string) {
-		d.Hide()
-		accept(true)
+	trouble := widget.NewLabel(q.trouble)
+	trouble.Wrapping = fyne.TextWrapWord
+	form := widget.NewForm(widget.NewFormItem("Name", file), widget.NewFormItem("Folder", container.NewBorder(nil, nil, nil, browse, where)))
+	ok := widget.NewButton("Write", write)
+	ok.Importance = widget.HighImportance
+	cancel := widget.NewButton("Cancel", func() { d.Hide() })
+	d = dialog.NewCustomWithoutButtons(q.what, container.NewBorder(nil, container.NewHBox(layout.NewSpacer(), cancel, ok), nil, nil, container.NewVBox(form, trouble)), w.win)
+	for _, f := range []*field{where, file} {
+		f.OnSubmitted = func(string) { write() }
+		f.escape = func() { d.Hide() }
 	}
-	d.Resize(fyne.NewSize(620, 220))
+	d.Resize(fyne.NewSize(640, 250))
 	d.Show()
 	w.win.Canvas().Focus(file)
+}
+
+// field is an entry of a question: Escape takes the question back.
+type field struct {
+	widget.Entry
+	escape func()
+}
+
+func newField(text string) *field {
+	f := &field{}
+	f.ExtendBaseWidget(f)
+	f.SetText(text)
+	return f
+}
+
+// TypedKey gives up on Escape.
+func (f *field) TypedKey(e *fyne.KeyEvent) {
+	if e.Name == fyne.KeyEscape {
+		f.escape()
+		return
+	}
+	f.Entry.TypedKey(e)
 }
 
 // askOpen asks for a file to read.

@@ -4,6 +4,8 @@ import (
 	"fmt"
 	"math"
 	"strings"
+	"unicode"
+	"unicode/utf8"
 
 	"cavitywright/sim"
 	"cavitywright/table"
@@ -31,6 +33,7 @@ type footer struct {
 	halt     *widget.Button // stops long work
 	held     live.Filling
 	standing string // the sentence that stays until the next
+	saidAt   uint64 // the revision it was said at
 	status   live.Status
 }
 
@@ -86,8 +89,23 @@ func (f *footer) hint(s string) {
 func (f *footer) note(s string) { f.middle.set(s) }
 
 func (f *footer) say(s string) {
-	f.standing = s
-	f.left.set(s)
+	f.standing, f.saidAt = sentence(s), f.w.session.Revision()
+	f.left.set(f.standing)
+}
+
+// sentence begins with a capital and ends with a stop.
+func sentence(s string) string {
+	if s == "" {
+		return s
+	}
+	if word, _, _ := strings.Cut(s, " "); !strings.ContainsAny(word, "./:\"") { // not the name of a file
+		first, size := utf8.DecodeRuneInString(s)
+		s = string(unicode.ToUpper(first)) + s[size:]
+	}
+	if last := s[len(s)-1]; last != '.' && last != '?' && last != '%' {
+		s += "."
+	}
+	return s
 }
 
 // busy says how far long work is, with a button that stops it.
@@ -101,6 +119,10 @@ func (f *footer) idle() { f.halt.Hide() }
 
 // refresh writes the exact readings of the table.
 func (f *footer) refresh() {
+	if f.standing != "" && f.w.session.Revision() > f.saidAt && f.w.session.Refusal == nil {
+		f.standing = "" // what was said is past
+		f.left.set("")
+	}
 	t := f.w.session.Table()
 	f.reading.set(exactReadings(t))
 	f.line.FillColor = theme.Color(theme.ColorNameForeground)

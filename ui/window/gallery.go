@@ -3,6 +3,7 @@ package window
 import (
 	"bytes"
 	"image"
+	"strings"
 
 	"cavitywright/assets"
 	"cavitywright/render"
@@ -93,6 +94,20 @@ func firstLine(s string) string {
 	return s
 }
 
+// mostBrief is what of a shape's facts fits under its picture.
+const mostBrief = 92
+
+// brief is the first clause of a text, cut where it is long.
+func brief(s string) string {
+	if i := strings.IndexAny(s, ";:("); i > 20 {
+		s = strings.TrimSpace(s[:i])
+	}
+	if r := []rune(s); len(r) > mostBrief {
+		s = string(r[:mostBrief-1]) + "…"
+	}
+	return s
+}
+
 // openShapes shows the families of shapes; a click places one.
 func (w *Window) openShapes() {
 	grid := container.NewGridWrap(fyne.NewSize(232, 262))
@@ -109,7 +124,7 @@ func (w *Window) openShapes() {
 		if err != nil {
 			continue
 		}
-		grid.Add(card(thumbnail(t, w.desk.Look), k.Title, k.About, func() {
+		grid.Add(card(thumbnail(t, w.desk.Look), k.Title, brief(k.About), func() {
 			d.Hide()
 			w.place(f, role.Selected == "as an obstacle")
 		}))
@@ -117,6 +132,21 @@ func (w *Window) openShapes() {
 	d = dialog.NewCustom("Place a shape", "Close", container.NewBorder(role, nil, nil, nil, container.NewVScroll(grid)), w.win)
 	d.Resize(fyne.NewSize(1000, 640))
 	d.Show()
+}
+
+// sized is the figure with every length multiplied by k.
+func sized(f shape.Figure, k float64) shape.Figure {
+	v := append(param.Values(nil), f.Values()...)
+	for i, s := range f.Family().Specs {
+		if s.Unit == param.Length {
+			v[i] = s.Clamp(v[i] * k)
+		}
+	}
+	g, err := shape.New(f.Kind(), v)
+	if err != nil {
+		return f
+	}
+	return g
 }
 
 // place puts a shape on the table: as the wall at its own size, or as an
@@ -128,7 +158,7 @@ func (w *Window) place(f shape.Figure, obstacle bool) {
 		it.Role = table.Post
 		one, err := table.New(table.Design{Unit: table.Millimetre, Items: []table.Item{{Shape: f, Place: plane.Identity()}}})
 		if err == nil {
-			it.Place.Scale = 0.2 * plane.Diagonal(t.Bounds()) / plane.Diagonal(one.Bounds())
+			it.Shape = sized(f, 0.2*plane.Diagonal(t.Bounds())/plane.Diagonal(one.Bounds()))
 		}
 		it.Place.Shift = plane.Lerp(t.Bounds().Min, t.Bounds().Max, 0.5)
 	}

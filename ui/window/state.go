@@ -30,23 +30,12 @@ func (w *Window) state(s live.Status) State {
 	}
 	k := w.win.Canvas().Scale()
 	for _, p := range w.editor.HandlePlaces() {
-		at := fyne.CurrentApp().Driver().AbsolutePositionForObject(w.editor).Add(p)
+		at := fyne.CurrentApp().Driver().AbsolutePositionForObject(w.editor.Surface).Add(p)
 		st.Handles = append(st.Handles, [2]float32{at.X * k, at.Y * k})
 	}
 	for name, p := range map[string]*pane.Surface{"table": w.editor.Surface, "rays": w.rays.Surface, "portrait": w.portrait.Surface} {
-		o := paneObject(w, name)
-		at := fyne.CurrentApp().Driver().AbsolutePositionForObject(o)
+		at := fyne.CurrentApp().Driver().AbsolutePositionForObject(p)
 		st.Panes[name] = [4]int{int(at.X * k), int(at.Y * k), p.Pixels().X, p.Pixels().Y}
 	}
 	return st
-}
-
-func paneObject(w *Window, name string) fyne.CanvasObject {
-	switch name {
-	case "table":
-		return w.editor
-	case "rays":
-		return w.rays
-	}
-	return w.portrait
 }

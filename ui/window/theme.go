@@ -49,7 +49,7 @@ func (d dress) Color(n fyne.ThemeColorName, _ fyne.ThemeVariant) color.Color {
 	case theme.ColorNameInputBorder, theme.ColorNameSeparator:
 		return mix(l.Paper, l.Faint, 0.75)
 	case theme.ColorNameButton:
-		return mix(l.Paper, l.Ink, 0.05)
+		return mix(l.Paper, l.Ink, 0.13)
 	case theme.ColorNameDisabledButton:
 		return mix(l.Paper, l.Ink, 0.03)
 	case theme.ColorNameHover:

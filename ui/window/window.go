@@ -73,7 +73,7 @@ func New(a fyne.App, t *table.Table, path string, o Options) *Window {
 	w.session = session.New(t, path)
 	w.engine = live.New(w.post, w.shown)
 	w.desk = &pane.Desk{Session: w.session, Engine: w.engine, Look: look(w.variant, 1)}
-	w.desk.Changed = w.show
+	w.desk.Changed, w.desk.Key = w.show, w.loose
 	w.disk = newDisk(w, o.Recovery)
 	w.foot = newFooter(w)
 	w.desk.Hint, w.desk.Note, w.desk.Say, w.desk.Point = w.foot.hint, w.foot.note, w.foot.say, w.point
@@ -121,9 +121,9 @@ func (w *Window) Close() { w.engine.Close() }
 
 // layout puts the panes in their places.
 func (w *Window) layout() {
-	w.boxes[0] = container.NewBorder(w.editorBar(), container.NewPadded(w.values.View), nil, nil, w.editor)
-	w.boxes[1] = container.NewBorder(w.raysBar(), nil, nil, nil, w.rays)
-	w.boxes[2] = container.NewBorder(w.portraitBar(), w.foot.readings, nil, nil, w.portrait)
+	w.boxes[0] = container.NewBorder(w.editorBar(), container.NewPadded(w.values.View), nil, nil, w.editor.Surface)
+	w.boxes[1] = container.NewBorder(w.raysBar(), nil, nil, nil, w.rays.Surface)
+	w.boxes[2] = container.NewBorder(w.portraitBar(), w.foot.readings, nil, nil, w.portrait.Surface)
 	w.right = container.NewVSplit(w.boxes[1], w.boxes[2])
 	w.columns = container.NewHSplit(w.boxes[0], w.right)
 	p := w.app.Preferences()
@@ -165,6 +165,9 @@ func (w *Window) changed() {
 	w.show()
 	w.disk.changed()
 	w.pickUp()
+	for _, s := range []*pane.Surface{w.editor.Surface, w.rays.Surface, w.portrait.Surface} {
+		s.Again()
+	}
 }
 
 // pickUp puts frames on the screen that are finished already. While events
@@ -215,6 +218,9 @@ func (w *Window) point(p pane.Place) {
 	w.rays.Point(p)
 	w.portrait.Point(p)
 }
+
+// Say shows one sentence, which stays until something changes.
+func (w *Window) Say(s string) { w.foot.say(s) }
 
 // say shows one sentence.
 func (w *Window) say(format string, args ...any) { w.foot.say(fmt.Sprintf(format, args...)) }

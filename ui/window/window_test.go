@@ -71,7 +71,7 @@ func place(o fyne.CanvasObject) image.Rectangle {
 func TestPanesLegible(t *testing.T) {
 	for _, size := range []fyne.Size{{Width: 1280, Height: 800}, {Width: 1100, Height: 700}, {Width: 1920, Height: 1080}} {
 		w, _ := opened(t, 0, size)
-		panes := []fyne.CanvasObject{w.editor, w.rays, w.portrait, w.values.View, w.head.box, w.foot.box}
+		panes := []fyne.CanvasObject{w.editor.Surface, w.rays.Surface, w.portrait.Surface, w.values.View, w.head.box, w.foot.box}
 		frame := image.Rect(-3, -4, int(size.Width)+3, int(size.Height)+4)
 		for i, a := range panes {
 			if r := place(a); !r.In(frame) {
