@@ -274,7 +274,11 @@ func (e *Editor) drawOrigin(t *table.Table, v render.View, look render.Look) {
 	} else if n.X > 0.4 {
 		h = render.Right
 	}
-	e.canvas.Text(render.Text{At: out(-9, 19), Size: look.Small, String: "s = 0", H: h, V: render.Middle, Color: look.Ink})
+	at := out(-9, 19)
+	if w, room := float64(e.Pixels().X), 3*look.Small; h == render.Left && at.X > w-room || h == render.Right && at.X < room {
+		at, h = out(-9, -12), render.Left+render.Right-h // no room outside
+	}
+	e.canvas.Text(render.Text{At: at, Size: look.Small, String: "s = 0", H: h, V: render.Middle, Color: look.Ink})
 }
 
 func (e *Editor) dot(c render.Point, radius float64, rim bool) {
