@@ -52,8 +52,8 @@ func TestReadingsStadium(t *testing.T) {
 	if math.Abs(c.Value-2.1818117971465539) > 3*c.StdErr || c.StdErr > 0.01 {
 		t.Errorf("mean-chord is %g ± %g, want 2.1818", c.Value, c.StdErr)
 	}
-	if len(got) != 4 {
-		t.Errorf("a closed table has %d readings, want 4", len(got))
+	if len(got) != 8 {
+		t.Errorf("a closed table has %d readings, want 8", len(got))
 	}
 	for name, unit := range map[string]string{"perimeter": "mm", "area": "mm²", "mean-chord": "mm"} {
 		if got[name].Unit != unit {
@@ -120,10 +120,10 @@ func TestWanted(t *testing.T) {
 		tr   *sim.Tracer
 		want []string
 	}{
-		{"closed", traced(t, "disc", []float64{1}), []string{"perimeter", "area", "mean-chord", "mean-chord-exact"}},
+		{"closed", traced(t, "disc", []float64{1}), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact"}, chaosReadings...)},
 		{"posts", traced(t, "three-posts", []float64{1, 6}), []string{"perimeter", "escape-rate"}},
-		{"open", traced(t, "disc", []float64{1}, opening(0, 0, 0.1)), []string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate", "mean-dwell"}},
-		{"glass", traced(t, "disc", []float64{1}, glass), []string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate"}},
+		{"open", traced(t, "disc", []float64{1}, opening(0, 0, 0.1)), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate", "mean-dwell"}, chaosReadings...)},
+		{"glass", traced(t, "disc", []float64{1}, glass), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate"}, chaosReadings...)},
 		{"rough", traced(t, "disc", []float64{1}, table.Coat{Side: 0, To: 1, Law: wall.Rough{Share: 1}}), []string{"perimeter", "area", "mean-chord", "mean-chord-exact"}},
 	} {
 		all, err := measure.Wanted(c.tr.Table(), nil)
