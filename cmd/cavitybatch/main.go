@@ -43,7 +43,7 @@ type commands struct {
 	Portrait portrait  `cmd:"" help:"Write the Birkhoff portrait of a table (png, svg, pdf or csv)."`
 	Rays     rays      `cmd:"" help:"Write the drawing of a table with its rays (png, svg, pdf or csv)."`
 	Pace     pace      `cmd:"" help:"Measure the bounces per second, on one worker and on all."`
-	Orbits   orbits    `cmd:"" help:"List the periodic orbits (not in this version)."`
+	Orbits   orbits    `cmd:"" help:"List the periodic orbits of a table, with length and stability."`
 	Emission emission  `cmd:"" help:"Write the far field of what leaves (not in this version)."`
 
 	Version kong.VersionFlag `help:"Print the version."`

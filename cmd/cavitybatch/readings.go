@@ -113,7 +113,11 @@ func list(rows []figure.Scalar, std streams) error {
 		if s.Bounces > 0 {
 			note += "; " + strconv.FormatInt(s.Bounces, 10) + " bounces, seed " + strconv.FormatUint(s.Seed, 10)
 		}
-		fmt.Fprintf(w, "%s\t%s %s\t%s\n", s.Name, render.Written(s), s.Unit, note)
+		unit := s.Unit
+		if unit == "1" { // a pure number
+			unit = ""
+		}
+		fmt.Fprintf(w, "%s\t%s\t%s\n", s.Name, strings.TrimSpace(fmt.Sprint(render.Written(s), " ", unit)), note)
 	}
 	return w.Flush()
 }

@@ -1,0 +1,102 @@
+package orbit
+
+import "math"
+
+const (
+	// seedMiss is the miss in p of the law of reflection with which a seed is
+	// given up: those that lead to an orbit begin within a cell of it.
+	seedMiss = 0.25
+	// stride, relative to the length of the wall, bounds Newton's steps.
+	stride = 0.05
+)
+
+// grow polishes a seed and enters it into the book.
+func (b *book) grow(c *chain) {
+	if !c.fill() || c.miss() > seedMiss || b.woven(c) || b.known(c) {
+		return
+	}
+	if c.polish(stride * b.mirror.Length()) {
+		b.add(c)
+	}
+}
+
+const (
+	// knownPlace and knownLength, relative to the length of the wall, are how
+	// near a seed lies to an orbit of the book to be left alone. The length
+	// differs by the square of the distance only. Two orbits nearer to each
+	// other than that are found only if the first seed of each is nearer still.
+	knownPlace  = 1e-4
+	knownLength = 1e-7
+)
+
+// known reports whether the seed lies at an orbit of the book.
+func (b *book) known(c *chain) bool {
+	n := len(c.s)
+	length := b.mirror.Length()
+	for i := range b.of[n] {
+		o := &b.of[n][i]
+		if math.Abs(o.Length-c.length) > knownLength*length {
+			continue
+		}
+		for k := range n {
+			if b.follows(c, o, k, 1) || b.follows(c, o, k, -1) {
+				return true
+			}
+		}
+	}
+	return false
+}
+
+// follows reports whether the chain's corners lie at the bounces of o from
+// number k on.
+func (b *book) follows(c *chain, o *Orbit, k, sense int) bool {
+	n := len(c.s)
+	for i, s := range c.s {
+		y := &o.Bounces[((k+sense*i)%n+n)%n]
+		if c.loop[i] != y.Loop || math.Abs(apart(&b.mirror.Loops()[y.Loop], s, y.S)) > knownPlace*b.mirror.Length() {
+			return false
+		}
+	}
+	return true
+}
+
+const (
+	// reach is how many cells from its node a state is looked for; it covers
+	// the cell's corners with a margin for what is not linear.
+	reach = 1.6
+	// nearMarginal is the ratio of the two singular values of the equation
+	// below which only the better determined part of the solution is asked to
+	// lie within reach, and what of the other part does not is left out: near
+	// a marginal family one part is all but free.
+	nearMarginal = 0.05
+)
+
+// meeting is the linear equation A (x, y) = b for the displacement, in cells,
+// with which the two ends meet.
+type meeting struct{ a11, a12, a21, a22, b1, b2 float64 }
+
+// solve answers the displacement; ok is false where it lies out of reach.
+func (m *meeting) solve() (x, y float64, ok bool) {
+	p := m.a11*m.a11 + m.a21*m.a21
+	q := m.a11*m.a12 + m.a21*m.a22
+	r := m.a12*m.a12 + m.a22*m.a22
+	angle := 0.5 * math.Atan2(2*q, p-r) // of the greater singular direction
+	sin, cos := math.Sincos(angle)
+	along := func(c, s float64) (part, square float64) {
+		u, v := m.a11*c+m.a12*s, m.a21*c+m.a22*s
+		square = u*u + v*v
+		return (u*m.b1 + v*m.b2) / square, square
+	}
+	great, square1 := along(cos, sin)
+	if !(math.Abs(great) <= reach) {
+		return 0, 0, false
+	}
+	small, square2 := along(-sin, cos)
+	if !(math.Abs(small) <= reach) {
+		if square2 > nearMarginal*nearMarginal*square1 {
+			return 0, 0, false
+		}
+		small = 0
+	}
+	return great*cos - small*sin, great*sin + small*cos, true
+}
