@@ -275,3 +275,24 @@ func TestCommands(t *testing.T) {
 		t.Errorf("after the keys: tool %v, pane %d fills the window", w.session.Settings.Tool, w.grown)
 	}
 }
+
+// TestReadings: the sheet measures what the table has, and closing it stops.
+func TestReadings(t *testing.T) {
+	w, pump := opened(t, 5, fyne.NewSize(1280, 800)) // the ellipse: integrable
+	w.openReadings()
+	if w.task == nil {
+		t.Fatal("nothing is measured")
+	}
+	for range 4 {
+		pump()
+	}
+	w.stopTask()
+	for range 100 {
+		if pump(); w.task == nil {
+			break
+		}
+	}
+	if w.task != nil {
+		t.Error("the measurement does not stop")
+	}
+}
