@@ -97,8 +97,9 @@ func TestCaption(t *testing.T) {
 	}
 }
 
-// TestRaysFigure wants the wall whole and closed, its places ascending, the
-// joints' marks small, and a ray through an opening drawn on for a stub.
+// TestRaysFigure wants the wall with a gap at its opening, its places ascending,
+// four joints and the two ends of the opening marked, the
+// marks small, and a ray through the opening drawn on for a stub.
 func TestRaysFigure(t *testing.T) {
 	// From the middle of a square's top side straight down.
 	s := table.Study{Launches: []table.Launch{{S: 5.0 / 8}}}
@@ -125,7 +126,7 @@ func TestRaysFigure(t *testing.T) {
 			}
 		}
 	}
-	if roles[figure.Wall] != 1 || roles[figure.Floor] != 1 || roles[figure.JointMark] != 4 || roles[figure.Ray] != 1 {
+	if roles[figure.Wall] != 1 || roles[figure.Floor] != 1 || roles[figure.JointMark] != 4+2 || roles[figure.Ray] != 1 {
 		t.Errorf("the drawing has the lines %v", roles)
 	}
 }

@@ -1,50 +1,102 @@
 package measure
 
 import (
+	"cmp"
 	"math"
+	"slices"
 
 	"cavitywright/sim/figure"
 	"cavitywright/table"
 	"cavitywright/table/curve"
+	"cavitywright/table/wall"
 
 	"gonum.org/v1/gonum/spatial/r2"
 )
 
 // Outline is the wall of a table as lines of a drawing: the floor, the wall
-// with the fraction s/L at each point, and the joints. Curves become chords
-// that stay within chordError (in the table's unit) of them; only the drawing
-// is made of chords, rays never run on them.
+// with the fraction s/L at each point and gaps at its openings, and marks at
+// the joints and at the ends of openings. Curves become chords that stay within
+// chordError (in the table's unit) of them; only the drawing is made of chords,
+// rays never run on them.
 func Outline(t *table.Table, chordError float64) []figure.Line {
 	var floor, walls, joints []figure.Line
 	for _, l := range t.Loops() {
-		w := figure.Line{Role: figure.Wall, Closed: true}
+		f := figure.Line{Role: figure.Floor, Closed: true}
+		w := figure.Line{Role: figure.Wall}
+		loop := len(walls)
 		for i := l.First; i < l.Last; i++ {
 			p := &t.Pieces()[i]
-			n := chords(&p.Span, chordError)
-			for k := range n {
-				x := p.T0 + (p.T1-p.T0)*float64(k)/float64(n)
-				at := p.FrameAt(x).Point
-				w.X, w.Y = append(w.X, at.X), append(w.Y, at.Y)
-				w.At = append(w.At, (p.S0+p.S(x))/t.Length())
+			along(t, &f, p, 0, p.Length, chordError)
+			at := 0.0
+			for _, o := range openings(t, i) {
+				along(t, &w, p, at, o.S0-p.S0, chordError)
+				walls = appendWall(walls, w)
+				w, at = figure.Line{Role: figure.Wall}, o.S1-p.S0
+				joints = append(joints, across(p, o.S0-p.S0, chordError), across(p, at, chordError))
 			}
+			along(t, &w, p, at, p.Length, chordError)
 		}
-		w.X, w.Y = append(w.X, w.X[0]), append(w.Y, w.Y[0])
-		w.At = append(w.At, l.S1/t.Length())
-		walls = append(walls, w)
-		floor = append(floor, figure.Line{Role: figure.Floor, Closed: true, X: w.X, Y: w.Y})
+		f.At = nil
+		floor = append(floor, f)
+		w.Closed = len(walls) == loop
+		walls = appendWall(walls, w)
 	}
 	if t.Open() {
 		floor = nil
 	}
 	for _, j := range t.Joints() {
-		p := &t.Pieces()[j.Piece]
-		n := r2.Scale(jointMark*chordError, p.FrameAt(p.T0).Normal())
-		joints = append(joints, figure.Line{
-			Role: figure.JointMark,
-			X:    []float64{j.At.X - n.X, j.At.X + n.X}, Y: []float64{j.At.Y - n.Y, j.At.Y + n.Y},
-		})
+		joints = append(joints, across(&t.Pieces()[j.Piece], 0, chordError))
 	}
 	return append(append(floor, walls...), joints...)
+}
+
+// openings are the stretches of piece i that let everything out, in order; the
+// wall is drawn with gaps there.
+func openings(t *table.Table, i int) []table.Stretch {
+	var all []table.Stretch
+	for _, o := range t.Stretches() {
+		if _, open := o.Law.(wall.Opening); open && o.Piece == i {
+			all = append(all, o)
+		}
+	}
+	slices.SortFunc(all, func(a, b table.Stretch) int { return cmp.Compare(a.S0, b.S0) })
+	return all
+}
+
+// appendWall adds a stretch of wall unless it is empty.
+func appendWall(walls []figure.Line, w figure.Line) []figure.Line {
+	if len(w.X) < 2 || w.At[0] == w.At[len(w.At)-1] {
+		return walls
+	}
+	return append(walls, w)
+}
+
+// along appends the wall of a piece between two lengths from its start.
+func along(t *table.Table, w *figure.Line, p *table.Piece, from, to, chordError float64) {
+	if from >= to {
+		return
+	}
+	n := chords(&p.Span, chordError)
+	t0, t1 := p.T(from), p.T(to)
+	for k := range n + 1 {
+		if k == 0 && len(w.X) > 0 {
+			continue // the end of the piece before
+		}
+		x := t0 + (t1-t0)*float64(k)/float64(n)
+		at := p.FrameAt(x).Point
+		w.X, w.Y = append(w.X, at.X), append(w.Y, at.Y)
+		w.At = append(w.At, (p.S0+p.S(x))/t.Length())
+	}
+}
+
+// across is the mark of a place on the wall: a short stroke across it.
+func across(p *table.Piece, local, chordError float64) figure.Line {
+	f := p.FrameAt(p.T(local))
+	n := r2.Scale(jointMark*chordError, f.Normal())
+	return figure.Line{
+		Role: figure.JointMark,
+		X:    []float64{f.Point.X - n.X, f.Point.X + n.X}, Y: []float64{f.Point.Y - n.Y, f.Point.Y + n.Y},
+	}
 }
 
 // jointMark is half the length of a joint's mark in chord errors: with a chord
