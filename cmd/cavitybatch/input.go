@@ -1,17 +1,13 @@
 package main
 
 import (
-	"bufio"
-	"bytes"
 	"errors"
 	"fmt"
-	"io"
 	"io/fs"
 	"os"
 
-	"cavitywright/render/export"
 	"cavitywright/table"
-	"cavitywright/table/tablefile"
+	"cavitywright/ui/store"
 )
 
 // readTable reads and compiles the table in a file, a figure, or standard
@@ -37,7 +33,7 @@ func quoted(name string) string { return `"` + name + `"` }
 
 func readDesign(name string, std streams) (table.Design, error) {
 	if name == "-" {
-		return decode(std.in)
+		return store.Decode(std.in)
 	}
 	info, err := os.Stat(name)
 	switch {
@@ -51,7 +47,7 @@ func readDesign(name string, std streams) (table.Design, error) {
 		return table.Design{}, unreadable(err)
 	}
 	defer f.Close()
-	return decode(f)
+	return store.Decode(f)
 }
 
 func unreadable(err error) error {
@@ -73,24 +69,4 @@ func bare(err error) error {
 		return e.Err
 	}
 	return err
-}
-
-// decode tells by its first bytes what a stream is, and reads the table in it.
-func decode(r io.Reader) (table.Design, error) {
-	b := bufio.NewReader(r)
-	head, _ := b.Peek(512) // what is wrong with the stream, reading it will say
-	var inside []byte
-	var err error
-	switch {
-	case bytes.HasPrefix(head, []byte("\x89PNG")):
-		inside, err = export.TableInPNG(b)
-	case bytes.HasPrefix(bytes.TrimLeft(bytes.TrimPrefix(head, []byte("\ufeff")), " \t\r\n"), []byte("<")):
-		inside, err = export.TableInSVG(b)
-	default:
-		return tablefile.Read(b)
-	}
-	if err != nil {
-		return table.Design{}, err
-	}
-	return tablefile.Read(bytes.NewReader(inside))
 }

@@ -33,16 +33,15 @@ func (c Chord) Tally() Tally { return &ChordTally{} }
 
 // ChordTally is the sum over orbits of their mean flights and its square.
 type ChordTally struct {
-	Stops     Stops
-	Count     int64 // flights
-	orbits    int64
-	sum, sum2 float64
-	path      float64 // of the orbit at hand
-	n         int64
+	Stops   Stops
+	Count   int64   // flights
+	sample          // the orbits' means
+	path    float64 // of the orbit at hand
+	flights int64
 }
 
 // Open begins an orbit.
-func (t *ChordTally) Open(int) { t.path, t.n = 0, 0 }
+func (t *ChordTally) Open(int) { t.path, t.flights = 0, 0 }
 
 // Add takes a bounce.
 func (t *ChordTally) Add(b *sim.Bounce) {
@@ -51,37 +50,23 @@ func (t *ChordTally) Add(b *sim.Bounce) {
 	}
 	if b.N > 0 && !math.IsInf(b.Flight, 0) {
 		t.path += b.Flight
-		t.n++
+		t.flights++
 		t.Count++
 	}
 }
 
 // Close ends the orbit.
 func (t *ChordTally) Close() {
-	if t.n == 0 {
+	if t.flights == 0 {
 		return
 	}
-	m := t.path / float64(t.n)
-	t.orbits++
-	t.sum += m
-	t.sum2 += m * m
+	t.take(t.path / float64(t.flights))
 }
 
 // Merge adds the next tally.
 func (t *ChordTally) Merge(next Tally) {
 	o := next.(*ChordTally)
-	t.orbits += o.orbits
 	t.Count += o.Count
-	t.sum += o.sum
-	t.sum2 += o.sum2
-	for i := range o.Stops {
-		t.Stops[i] += o.Stops[i]
-	}
-}
-
-// Mean is the mean flight with its standard error.
-func (t *ChordTally) Mean() (mean, stderr float64) {
-	n := float64(t.orbits)
-	mean = t.sum / n
-	return mean, math.Sqrt(math.Max(0, t.sum2/n-mean*mean) / (n - 1))
+	t.merge(o.sample)
+	t.Stops.add(o.Stops)
 }

@@ -1,7 +1,6 @@
 package measure
 
 import (
-	"math"
 	"slices"
 
 	"cavitywright/sim"
@@ -86,13 +85,13 @@ func (d Dwell) Tally() Tally { return &DwellTally{} }
 
 // DwellTally is the sum of the paths of the rays that left, and its square.
 type DwellTally struct {
-	Stops     Stops
-	Flights   int64
-	Left      int64 // rays that left
-	Kept      int64 // rays that were still inside at the last bounce
-	sum, sum2 float64
-	path      float64 // of the ray at hand
-	stop      sim.Stop
+	Stops   Stops
+	Flights int64
+	Left    int64   // rays that left
+	Kept    int64   // rays that were still inside at the last bounce
+	sample          // the paths of those that left
+	path    float64 // of the ray at hand
+	stop    sim.Stop
 }
 
 // Open begins a ray.
@@ -115,8 +114,7 @@ func (t *DwellTally) Close() {
 		return
 	case sim.Escaped:
 		t.Left++
-		t.sum += t.path
-		t.sum2 += t.path * t.path
+		t.take(t.path)
 	}
 	t.Stops[t.stop]++
 }
@@ -127,16 +125,6 @@ func (t *DwellTally) Merge(next Tally) {
 	t.Flights += o.Flights
 	t.Left += o.Left
 	t.Kept += o.Kept
-	t.sum += o.sum
-	t.sum2 += o.sum2
-	for i := range o.Stops {
-		t.Stops[i] += o.Stops[i]
-	}
-}
-
-// Mean is the mean path of the rays that left, with its standard error.
-func (t *DwellTally) Mean() (mean, stderr float64) {
-	n := float64(t.Left)
-	mean = t.sum / n
-	return mean, math.Sqrt(math.Max(0, t.sum2/n-mean*mean) / (n - 1))
+	t.merge(o.sample)
+	t.Stops.add(o.Stops)
 }

@@ -5,6 +5,8 @@
 package measure
 
 import (
+	"math"
+
 	"cavitywright/sim"
 )
 
@@ -37,6 +39,38 @@ type Tally interface {
 
 // Stops counts how orbits ended.
 type Stops [sim.Stops]int64
+
+// add counts those of the next block.
+func (s *Stops) add(next Stops) {
+	for i, n := range next {
+		s[i] += n
+	}
+}
+
+// sample is a sum of independent values and of their squares.
+type sample struct {
+	n         int64
+	sum, sum2 float64
+}
+
+func (s *sample) take(x float64) {
+	s.n++
+	s.sum += x
+	s.sum2 += x * x
+}
+
+func (s *sample) merge(next sample) {
+	s.n += next.n
+	s.sum += next.sum
+	s.sum2 += next.sum2
+}
+
+// Mean is the mean with its standard error, NaN for fewer than two values.
+func (s *sample) Mean() (mean, stderr float64) {
+	n := float64(s.n)
+	mean = s.sum / n
+	return mean, math.Sqrt(math.Max(0, s.sum2/n-mean*mean) / (n - 1))
+}
 
 // Undecided is the number of orbits that ended at a corner or a grazing
 // tangent.

@@ -20,6 +20,7 @@ import (
 // rays never run on them.
 func Outline(t *table.Table, chordError float64) []figure.Line {
 	var floor, walls, joints []figure.Line
+	gaps := openings(t)
 	for _, l := range t.Loops() {
 		f := figure.Line{Role: figure.Floor, Closed: true}
 		w := figure.Line{Role: figure.Wall}
@@ -28,7 +29,7 @@ func Outline(t *table.Table, chordError float64) []figure.Line {
 			p := &t.Pieces()[i]
 			along(t, &f, p, 0, p.Length, chordError)
 			at := 0.0
-			for _, o := range openings(t, i) {
+			for _, o := range gaps[i] {
 				along(t, &w, p, at, o.S0-p.S0, chordError)
 				walls = appendWall(walls, w)
 				w, at = figure.Line{Role: figure.Wall}, o.S1-p.S0
@@ -50,16 +51,18 @@ func Outline(t *table.Table, chordError float64) []figure.Line {
 	return append(append(floor, walls...), joints...)
 }
 
-// openings are the stretches of piece i that let everything out, in order; the
+// openings are, by piece, the stretches that let everything out, in order; the
 // wall is drawn with gaps there.
-func openings(t *table.Table, i int) []table.Stretch {
-	var all []table.Stretch
+func openings(t *table.Table) map[int][]table.Stretch {
+	all := map[int][]table.Stretch{}
 	for _, o := range t.Stretches() {
-		if _, open := o.Law.(wall.Opening); open && o.Piece == i {
-			all = append(all, o)
+		if _, open := o.Law.(wall.Opening); open {
+			all[o.Piece] = append(all[o.Piece], o)
 		}
 	}
-	slices.SortFunc(all, func(a, b table.Stretch) int { return cmp.Compare(a.S0, b.S0) })
+	for _, o := range all {
+		slices.SortFunc(o, func(a, b table.Stretch) int { return cmp.Compare(a.S0, b.S0) })
+	}
 	return all
 }
 

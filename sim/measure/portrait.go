@@ -111,9 +111,7 @@ func (t *PortraitTally) Merge(next Tally) {
 	o := next.(*PortraitTally)
 	t.sets = append(t.sets, o.sets...)
 	t.ends = append(t.ends, o.ends...)
-	for i := range o.Stops {
-		t.Stops[i] += o.Stops[i]
-	}
+	t.Stops.add(o.Stops)
 }
 
 // Ends are the last bounces of the orbits.

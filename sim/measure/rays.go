@@ -79,9 +79,7 @@ func (t *RaysTally) Close() {}
 func (t *RaysTally) Merge(next Tally) {
 	o := next.(*RaysTally)
 	t.lines = append(t.lines, o.lines...)
-	for i := range o.Stops {
-		t.Stops[i] += o.Stops[i]
-	}
+	t.Stops.add(o.Stops)
 }
 
 // Lines are the orbits' paths.

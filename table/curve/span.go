@@ -218,9 +218,6 @@ func (s *Span) Swept(origin r2.Vec) float64 {
 	})
 }
 
-// CurvatureIntegral is the integral of curvature over the span: its turning.
-func (s *Span) CurvatureIntegral() float64 { return s.Turn }
-
 // setTurn fills Turn of a smooth span from the tangents at its ends.
 func (s *Span) setTurn() {
 	a, b := s.Ends()

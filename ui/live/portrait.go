@@ -56,7 +56,7 @@ func (p *portrait) show(r *Request) {
 		p.tracer = sim.Compile(r.Table)
 		p.section = measure.NewSection(r.Table)
 	}
-	same := old != nil && old.Section == r.Section && old.Portrait == r.Portrait && sameRays(old.Table, r.Table)
+	same := old != nil && old.Section == r.Section && old.Portrait == r.Portrait && old.Table == r.Table
 	if same && reflect.DeepEqual(old.Look, r.Look) {
 		return
 	}
@@ -64,11 +64,6 @@ func (p *portrait) show(r *Request) {
 	if !same {
 		p.restart()
 	}
-}
-
-// sameRays reports whether two tables have the same wall, laws and launches.
-func sameRays(a, b *table.Table) bool {
-	return a == b
 }
 
 func (p *portrait) restart() {

@@ -59,7 +59,6 @@ type Surface struct {
 	last    fyne.Position
 	clickAt fyne.Position
 	clicked time.Time
-	focused bool
 	cursor  desktop.StandardCursor
 	hover   hover
 }
@@ -263,10 +262,10 @@ const zoomStep = 0.007
 
 // FocusGained, FocusLost, TypedRune and TypedKey make the surface reachable by
 // keys.
-func (s *Surface) FocusGained() { s.focused = true }
+func (s *Surface) FocusGained() {}
 
 // FocusLost forgets keys whose release it will not see.
-func (s *Surface) FocusLost() { s.focused, s.space = false, false }
+func (s *Surface) FocusLost() { s.space = false }
 
 // TypedRune does nothing: letters are commands, and come as keys.
 func (s *Surface) TypedRune(rune) {}

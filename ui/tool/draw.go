@@ -66,9 +66,6 @@ func (e *Editor) Hover(p r2.Vec) {
 	}
 }
 
-// Drawing reports whether a wall is being drawn.
-func (e *Editor) Drawing() bool { return len(e.chain.nodes) > 0 || len(e.trail) > 1 }
-
 // Draft are the points of the wall that is being drawn, and its nodes.
 func (e *Editor) Draft() (line, nodes []r2.Vec) {
 	if len(e.trail) > 0 {

@@ -1,17 +1,13 @@
 package window
 
 import (
-	"bytes"
 	"errors"
 	"fmt"
-	"io/fs"
 	"os"
 	"path/filepath"
 	"strings"
 
-	"cavitywright/render/export"
 	"cavitywright/table"
-	"cavitywright/table/tablefile"
 	"cavitywright/ui/store"
 
 	"fyne.io/fyne/v2"
@@ -25,46 +21,15 @@ import (
 // ReadTable reads a table from a table file, or out of an exported PNG or SVG
 // that carries one.
 func ReadTable(path string) (*table.Table, error) {
-	d, err := readDesign(path)
-	if err != nil {
-		return nil, fmt.Errorf("%s: %w", filepath.Base(path), err)
+	d, err := store.Load(path, store.Decode)
+	var t *table.Table
+	if err == nil {
+		t, err = table.New(d)
 	}
-	return table.New(d)
-}
-
-// mostBytes is the largest file that is looked at.
-const mostBytes = 256 << 20
-
-func readDesign(path string) (table.Design, error) {
-	info, err := os.Stat(path)
-	switch {
-	case errors.Is(err, fs.ErrNotExist):
-		return table.Design{}, fmt.Errorf("there is no such file; check the folder and the name")
-	case err != nil:
-		return table.Design{}, fmt.Errorf("the file cannot be opened (%w)", err)
-	case info.IsDir():
-		return table.Design{}, fmt.Errorf("this is a folder; choose a table file in it")
-	case info.Size() > mostBytes:
-		return table.Design{}, fmt.Errorf("the file is larger than any table; choose another")
+	if fault := (*store.Fault)(nil); err == nil || errors.As(err, &fault) {
+		return t, err // the disk's sentence names the file
 	}
-	f, err := os.Open(path)
-	if err != nil {
-		return table.Design{}, fmt.Errorf("the file cannot be opened; check its permissions")
-	}
-	defer f.Close()
-	var inside []byte
-	switch strings.ToLower(filepath.Ext(path)) {
-	case ".png":
-		inside, err = export.TableInPNG(f)
-	case ".svg":
-		inside, err = export.TableInSVG(f)
-	default:
-		return tablefile.Read(f)
-	}
-	if err != nil {
-		return table.Design{}, err
-	}
-	return tablefile.Read(bytes.NewReader(inside))
+	return nil, fmt.Errorf("%s: %w", filepath.Base(path), err)
 }
 
 // OpenPath opens a file. What is open stays where that fails.

@@ -125,7 +125,7 @@ func TestBadFiles(t *testing.T) {
 		"empty":         {write("f.cavity.json", nil), "f.cavity.json"},
 		"no items":      {write("g.cavity.json", []byte(`{"format":"cavity","version":1,"name":"","notes":"","unit":"mm","items":[]}`)), "g.cavity.json"},
 		"no table":      {write("h.png", plain.Bytes()), "table"},
-		"no picture":    {write("i.png", []byte("not a picture")), "PNG"},
+		"no picture":    {write("i.png", []byte("not a picture")), "no table file"},
 		"no such file":  {filepath.Join(dir, "none.cavity.json"), "no such file"},
 		"a folder":      {dir, "folder"},
 		"50 MB":         {write("j.cavity.json", bytes.Repeat([]byte(" "), 50<<20)), "j.cavity.json"},
