@@ -1,6 +1,7 @@
 package main
 
 import (
+	"cavitywright/sim/measure/reading"
 	"context"
 	"errors"
 	"fmt"
@@ -28,8 +29,8 @@ type takeAll struct {
 // Help explains the readings above the flags.
 func (*takeAll) Help() string {
 	text, awaited := "Readings:", []string{}
-	for _, r := range measure.Readings() {
-		if r.Kind == measure.Awaited {
+	for _, r := range reading.Readings() {
+		if r.Kind == reading.Awaited {
 			awaited = append(awaited, r.Name)
 			continue
 		}
@@ -50,9 +51,9 @@ func (c *takeAll) Run(ctx context.Context, std streams) error {
 	if err != nil {
 		return err
 	}
-	wanted, err := measure.Wanted(t, c.Only)
+	wanted, err := reading.Wanted(t, c.Only)
 	if err != nil {
-		if no := (*measure.NoReading)(nil); errors.As(err, &no) {
+		if no := (*reading.NoReading)(nil); errors.As(err, &no) {
 			return &wrongUse{err}
 		}
 		return err
@@ -88,7 +89,7 @@ func checkWorkers(n int) error {
 
 // take takes the readings in turn. A reading that turns out not to exist is an
 // error where it was named, else it is left out and said.
-func (c *takeAll) take(r *runner, wanted []measure.Reading) (rows []figure.Scalar, left []error, err error) {
+func (c *takeAll) take(r *runner, wanted []reading.Reading) (rows []figure.Scalar, left []error, err error) {
 	defer r.close()
 	for _, w := range wanted {
 		r.title = w.Name

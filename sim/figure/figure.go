@@ -5,7 +5,7 @@
 // Every Figure is complete in itself: whoever has it needs no table to draw it.
 package figure
 
-// Figure is one of Dots, Paths, Series or Scalars. The set is closed: render
+// Figure is one of Dots, Paths, Series, Grid, Polar or Scalars. The set is closed: render
 // switches over it once.
 type Figure interface{ isFigure() }
 
@@ -45,6 +45,7 @@ const (
 	Joint     MarkKind = iota // two sides of the wall meet here
 	LoopStart                 // a loop of the wall begins here
 	Critical                  // p = ±1/n
+	Event                     // something happens here: a birth, a limit, the end of a window
 )
 
 // Dots is a scatter of points in sets, each set one orbit: the Birkhoff
@@ -56,6 +57,7 @@ type Dots struct {
 	Sets             []DotSet
 	Strip            bool
 	StripLo, StripHi float64
+	Spots            []Spot   // marks that lie on top
 	Caption          []string // one line each: what was computed, with units
 }
 
@@ -138,3 +140,46 @@ func (Dots) isFigure()    {}
 func (Paths) isFigure()   {}
 func (Series) isFigure()  {}
 func (Scalars) isFigure() {}
+
+// Grid is a map of values over two axes: Columns by Rows cells that share the
+// plane from X.Lo to X.Hi and Y.Lo to Y.Hi evenly, row by row from Y.Lo, Values
+// in the unit and between the ends of Value. NaN is a cell without a value,
+// left blank. Strip is as in Dots.
+type Grid struct {
+	X, Y, Value      Axis
+	Columns, Rows    int
+	Values           []float64
+	Strip            bool
+	StripLo, StripHi float64
+	Caption          []string
+}
+
+// Polar is one or more curves of a quantity against direction: the far field.
+// The angles of a curve are in radians counter-clockwise from +x; R is the
+// quantity, on the axis Radius.
+type Polar struct {
+	Radius  Axis
+	Curves  []Curve // X the angle, Y the quantity, Err its standard error or nil
+	Caption []string
+}
+
+// Spot is a named mark in a plot: a periodic orbit's place on a portrait.
+type Spot struct {
+	X, Y float64
+	Kind SpotKind
+	Hue  int
+}
+
+// SpotKind says what a spot marks, and so how it is drawn.
+type SpotKind uint8
+
+// The kinds of spot.
+const (
+	Ring      SpotKind = iota // an elliptic orbit
+	Cross                     // a hyperbolic one
+	CrossRing                 // an inverse hyperbolic one
+	Bar                       // a family, drawn along x
+)
+
+func (Grid) isFigure()  {}
+func (Polar) isFigure() {}

@@ -35,10 +35,13 @@ func (c Chord) Tally() Tally { return &ChordTally{} }
 type ChordTally struct {
 	Stops   Stops
 	Count   int64   // flights
-	sample          // the orbits' means
+	means   Sample  // of the orbits
 	path    float64 // of the orbit at hand
 	flights int64
 }
+
+// Mean is the mean with its standard error, NaN for fewer than two orbits.
+func (t *ChordTally) Mean() (mean, stderr float64) { return t.means.Mean() }
 
 // Open begins an orbit.
 func (t *ChordTally) Open(int) { t.path, t.flights = 0, 0 }
@@ -60,13 +63,13 @@ func (t *ChordTally) Close() {
 	if t.flights == 0 {
 		return
 	}
-	t.take(t.path / float64(t.flights))
+	t.means.Take(t.path / float64(t.flights))
 }
 
 // Merge adds the next tally.
 func (t *ChordTally) Merge(next Tally) {
 	o := next.(*ChordTally)
 	t.Count += o.Count
-	t.merge(o.sample)
-	t.Stops.add(o.Stops)
+	t.means.Merge(o.means)
+	t.Stops.Add(o.Stops)
 }

@@ -1,6 +1,7 @@
 package measure_test
 
 import (
+	"cavitywright/sim/run/trial"
 	"math"
 	"strings"
 	"testing"
@@ -35,7 +36,7 @@ func studied(t *testing.T, name string, values []float64, s table.Study, coats .
 func portraitOf(t *testing.T, tr *sim.Tracer) figure.Dots {
 	t.Helper()
 	s := tr.Table().Design().Study
-	ran, err := runner(tr, s.Seed, 0)(measure.NewPortrait(tr, s.Launches, s.Bounces))
+	ran, err := trial.Runner(tr, s.Seed, 0)(measure.NewPortrait(tr, s.Launches, s.Bounces))
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -45,7 +46,7 @@ func portraitOf(t *testing.T, tr *sim.Tracer) figure.Dots {
 func raysOf(t *testing.T, tr *sim.Tracer, each int) figure.Paths {
 	t.Helper()
 	s := tr.Table().Design().Study
-	ran, err := runner(tr, s.Seed, 0)(measure.NewRays(tr, s.Launches, each))
+	ran, err := trial.Runner(tr, s.Seed, 0)(measure.NewRays(tr, s.Launches, each))
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -80,7 +81,7 @@ func TestPortraitFigure(t *testing.T) {
 // TestCaption wants every caption to say what, how much, from which seed and
 // with what.
 func TestCaption(t *testing.T) {
-	study := measure.WithLaunches(traced(t, "disc", []float64{1}).Table(), table.Study{Seed: 77, Bounces: 12}, 0)
+	study := measure.WithLaunches(trial.Traced(t, "disc", []float64{1}).Table(), table.Study{Seed: 77, Bounces: 12}, 0)
 	f := portraitOf(t, studied(t, "stadium", []float64{1, 1}, study))
 	text := strings.Join(f.Caption, "\n")
 	for _, want := range []string{"Plate 3", "60 orbits", "12 bounces", "even in ds dp", "10.28319 µm", "seed 77", "Program 9"} {
@@ -89,7 +90,7 @@ func TestCaption(t *testing.T) {
 		}
 	}
 	one := table.Study{Launches: []table.Launch{{From: table.Inside, Point: r2.Vec{X: 0.1}, Angle: math.Pi / 2}}}
-	g := raysOf(t, studied(t, "disc", []float64{1}, one, opening(0, 0, 1)), 5)
+	g := raysOf(t, studied(t, "disc", []float64{1}, one, trial.Opening(0, 0, 1)), 5)
 	for _, want := range []string{"1 orbit of up to 5 bounces, from (0.1, 0) µm at 90°.", "1 left."} {
 		if text := strings.Join(g.Caption, "\n"); !strings.Contains(text, want) {
 			t.Errorf("the caption lacks %q: %s", want, text)
@@ -103,7 +104,7 @@ func TestCaption(t *testing.T) {
 func TestRaysFigure(t *testing.T) {
 	// From the middle of a square's top side straight down.
 	s := table.Study{Launches: []table.Launch{{S: 5.0 / 8}}}
-	tr := studied(t, "rectangle", []float64{2, 2}, s, opening(0, 0, 1))
+	tr := studied(t, "rectangle", []float64{2, 2}, s, trial.Opening(0, 0, 1))
 	f := raysOf(t, tr, 3)
 	roles := map[figure.Role]int{}
 	for _, l := range f.Lines {
@@ -134,8 +135,8 @@ func TestRaysFigure(t *testing.T) {
 // TestDefaultRays wants something to draw on every kind of table, and a study
 // that launches something left alone.
 func TestDefaultRays(t *testing.T) {
-	posts := traced(t, "three-posts", []float64{1, 6}).Table()
-	disc := traced(t, "disc", []float64{1}).Table()
+	posts := trial.Traced(t, "three-posts", []float64{1, 6}).Table()
+	disc := trial.Traced(t, "disc", []float64{1}).Table()
 	for _, tab := range []*table.Table{posts, disc} {
 		s := measure.WithRays(tab, table.Study{})
 		if n := measure.NewRays(sim.Compile(tab), s.Launches, 3).Orbits(); n == 0 {

@@ -15,15 +15,33 @@ type Lattices struct {
 	Shifts []Shift   // one a lattice
 }
 
-// drawnLattices has about n points in all, at least one on each lattice.
-func drawnLattices(tr *sim.Tracer, run Runner, n int) (Lattices, error) {
+const (
+	// LeastLattices is the least number of lattices: their scatter then gives
+	// the error to one part in eight. mostLattices is reached where the next
+	// larger lattice would just be too large.
+	LeastLattices = 32
+	mostLattices  = 56
+)
+
+// DrawnShifts are as many shifts as a set of lattices may need, drawn by the
+// runner.
+func DrawnShifts(tr *sim.Tracer, run Runner) ([]Shift, error) {
 	moved, err := run(draws{tr, mostLattices})
+	if err != nil {
+		return nil, err
+	}
+	return moved.(*drawn).shifts, nil
+}
+
+// DrawnLattices has about n points in all, at least one on each lattice.
+func DrawnLattices(tr *sim.Tracer, run Runner, n int) (Lattices, error) {
+	shifts, err := DrawnShifts(tr, run)
 	if err != nil {
 		return Lattices{}, err
 	}
-	points := NewFibonacci(n / lattices)
-	count := min(max(n/points.Size(), lattices), mostLattices)
-	return Lattices{points, moved.(*drawn).shifts[:count]}, nil
+	points := NewFibonacci(n / LeastLattices)
+	count := min(max(n/points.Size(), LeastLattices), mostLattices)
+	return Lattices{points, shifts[:count]}, nil
 }
 
 // Size is the number of points of all lattices.
@@ -36,54 +54,54 @@ func (l Lattices) At(i int) (u, v float64) {
 	return l.Points.At(i%n, l.Shifts[i/n])
 }
 
-// lots are sums of one kind, a row for each lattice of size points.
-type lots[T any] struct {
-	size  int
+// Lots are sums of one kind, a row for each lattice of size points.
+type Lots[T any] struct {
+	Size  int
+	Rows  []T
 	first int // the lattice of the first row
-	rows  []T
 }
 
-// open makes the row of orbit i the last one.
-func (l *lots[T]) open(i int) {
-	k := i / l.size
-	if len(l.rows) == 0 {
+// Open makes the row of orbit i the last one.
+func (l *Lots[T]) Open(i int) {
+	k := i / l.Size
+	if len(l.Rows) == 0 {
 		l.first = k
 	}
-	for l.first+len(l.rows) <= k {
-		l.rows = append(l.rows, *new(T))
+	for l.first+len(l.Rows) <= k {
+		l.Rows = append(l.Rows, *new(T))
 	}
 }
 
-// last is the row of the orbit at hand.
-func (l *lots[T]) last() *T { return &l.rows[len(l.rows)-1] }
+// Last is the row of the orbit at hand.
+func (l *Lots[T]) Last() *T { return &l.Rows[len(l.Rows)-1] }
 
-// merge takes the rows of the orbits that come next.
-func (l *lots[T]) merge(next *lots[T], add func(into, from *T)) {
-	if len(l.rows) == 0 {
+// Merge takes the rows of the orbits that come next.
+func (l *Lots[T]) Merge(next *Lots[T], add func(into, from *T)) {
+	if len(l.Rows) == 0 {
 		l.first = next.first
 	}
-	for i := range next.rows {
-		if k := next.first + i - l.first; k == len(l.rows) {
-			l.rows = append(l.rows, next.rows[i])
+	for i := range next.Rows {
+		if k := next.first + i - l.first; k == len(l.Rows) {
+			l.Rows = append(l.Rows, next.Rows[i])
 		} else {
-			add(&l.rows[k], &next.rows[i])
+			add(&l.Rows[k], &next.Rows[i])
 		}
 	}
 }
 
-// ratio is the ratio of the sums of two numbers over the lattices, with the
+// Ratio is the ratio of the sums of two numbers over the lattices, with the
 // standard error of a ratio of means.
-func (l *lots[T]) ratio(of func(*T) (a, b float64)) (ratio, stderr float64) {
+func (l *Lots[T]) Ratio(of func(*T) (a, b float64)) (ratio, stderr float64) {
 	var sa, sb, sum float64
-	for i := range l.rows {
-		a, b := of(&l.rows[i])
+	for i := range l.Rows {
+		a, b := of(&l.Rows[i])
 		sa, sb = sa+a, sb+b
 	}
 	ratio = sa / sb
-	for i := range l.rows {
-		a, b := of(&l.rows[i])
+	for i := range l.Rows {
+		a, b := of(&l.Rows[i])
 		sum += (a - ratio*b) * (a - ratio*b)
 	}
-	n := float64(len(l.rows))
+	n := float64(len(l.Rows))
 	return ratio, math.Sqrt(sum*n/(n-1)) / sb
 }

@@ -5,6 +5,7 @@
 package measure
 
 import (
+	"fmt"
 	"math"
 
 	"cavitywright/sim"
@@ -37,36 +38,47 @@ type Tally interface {
 	Merge(next Tally)
 }
 
+// Runner carries out a measurement, on any number of workers and with a seed
+// that it knows.
+type Runner func(Measurement) (Tally, error)
+
+// NotMeasured is why a reading has no value on a table, in a sentence.
+type NotMeasured struct{ Name, Why string }
+
+func (e *NotMeasured) Error() string { return fmt.Sprintf("There is no %s here: %s.", e.Name, e.Why) }
+
 // Stops counts how orbits ended.
 type Stops [sim.Stops]int64
 
-// add counts those of the next block.
-func (s *Stops) add(next Stops) {
+// Add counts those of the next block.
+func (s *Stops) Add(next Stops) {
 	for i, n := range next {
 		s[i] += n
 	}
 }
 
-// sample is a sum of independent values and of their squares.
-type sample struct {
+// Sample is a sum of independent values and of their squares.
+type Sample struct {
 	n         int64
 	sum, sum2 float64
 }
 
-func (s *sample) take(x float64) {
+// Take adds a value.
+func (s *Sample) Take(x float64) {
 	s.n++
 	s.sum += x
 	s.sum2 += x * x
 }
 
-func (s *sample) merge(next sample) {
+// Merge adds the values of the next block.
+func (s *Sample) Merge(next Sample) {
 	s.n += next.n
 	s.sum += next.sum
 	s.sum2 += next.sum2
 }
 
 // Mean is the mean with its standard error, NaN for fewer than two values.
-func (s *sample) Mean() (mean, stderr float64) {
+func (s *Sample) Mean() (mean, stderr float64) {
 	n := float64(s.n)
 	mean = s.sum / n
 	return mean, math.Sqrt(math.Max(0, s.sum2/n-mean*mean) / (n - 1))
@@ -75,3 +87,14 @@ func (s *sample) Mean() (mean, stderr float64) {
 // Undecided is the number of orbits that ended at a corner or a grazing
 // tangent.
 func (s Stops) Undecided() int64 { return s[sim.Corner] + s[sim.Grazing] }
+
+// Remark says how many orbits could not be followed, as the end of a note.
+func (s Stops) Remark() string {
+	text := ""
+	for _, stop := range []sim.Stop{sim.Corner, sim.Grazing, sim.Lost} {
+		if s[stop] > 0 {
+			text += fmt.Sprintf("; %d stopped (%s)", s[stop], stop)
+		}
+	}
+	return text
+}

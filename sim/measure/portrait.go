@@ -111,7 +111,7 @@ func (t *PortraitTally) Merge(next Tally) {
 	o := next.(*PortraitTally)
 	t.sets = append(t.sets, o.sets...)
 	t.ends = append(t.ends, o.ends...)
-	t.Stops.add(o.Stops)
+	t.Stops.Add(o.Stops)
 }
 
 // Ends are the last bounces of the orbits.

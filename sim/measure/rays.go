@@ -79,7 +79,7 @@ func (t *RaysTally) Close() {}
 func (t *RaysTally) Merge(next Tally) {
 	o := next.(*RaysTally)
 	t.lines = append(t.lines, o.lines...)
-	t.Stops.add(o.Stops)
+	t.Stops.Add(o.Stops)
 }
 
 // Lines are the orbits' paths.

@@ -1,6 +1,7 @@
 package window
 
 import (
+	"cavitywright/sim/measure/reading"
 	"bytes"
 	"context"
 	"errors"
@@ -43,7 +44,7 @@ func (w *Window) openReadings() {
 		return
 	}
 	t := w.session.Table()
-	wanted, err := measure.Wanted(t, nil)
+	wanted, err := reading.Wanted(t, nil)
 	if err != nil {
 		w.foot.say(err.Error())
 		return
@@ -61,7 +62,7 @@ func (w *Window) openReadings() {
 }
 
 // measure takes the readings one by one beside the window.
-func (s *readingsSheet) measure(t *table.Table, wanted []measure.Reading) {
+func (s *readingsSheet) measure(t *table.Table, wanted []reading.Reading) {
 	seed := t.Design().Study.Seed
 	tr := sim.Compile(t)
 	at := ""
@@ -103,7 +104,7 @@ func (s *readingsSheet) measure(t *table.Table, wanted []measure.Reading) {
 }
 
 // add shows a reading.
-func (s *readingsSheet) add(r measure.Reading, row figure.Scalar) {
+func (s *readingsSheet) add(r reading.Reading, row figure.Scalar) {
 	s.rows = append(s.rows, row)
 	unit := row.Unit
 	if unit == "1" {

@@ -1,6 +1,7 @@
-package measure
+package chaos
 
 import (
+	"cavitywright/sim/measure"
 	"math"
 
 	"cavitywright/sim"
@@ -17,9 +18,9 @@ import (
 // and a table that is a little off an integrable one would be called so.
 const alike = 1e-14
 
-// integrable is why no orbit of the table off mirrors is chaotic, as a note;
+// Integrable is why no orbit of the table off mirrors is chaotic, as a note;
 // "" where that is not known beforehand.
-func integrable(t *table.Table) string {
+func Integrable(t *table.Table) string {
 	straight, round, oval := true, true, true
 	var first *table.Piece // the first curved one
 	for i := range t.Pieces() {
@@ -69,10 +70,10 @@ func onAxis(p, ellipse *table.Piece, tol float64) bool {
 	return passes(p, ellipse.Centre, tol) && math.Min(across, along) <= alike
 }
 
-// mirrors is why the table has no tangent map, "" where it has one: rays must
+// Mirrors is why the table has no tangent map, "" where it has one: rays must
 // stay inside, and return at the angle at which they came.
-func mirrors(t *table.Table) string {
-	if why := closed(t); why != "" {
+func Mirrors(t *table.Table) string {
+	if why := measure.Closed(t); why != "" {
 		return why
 	}
 	if scatters(t.Law()) {
@@ -88,11 +89,11 @@ func mirrors(t *table.Table) string {
 
 // scatters reports whether a law sends back rays at another angle.
 func scatters(l wall.Law) bool {
-	for i := range probes {
-		p := (2*float64(i)+1)/probes - 1
+	for i := range measure.ProbeAngles {
+		in := measure.Probe(i)
 		// A law that scatters a share of the rays does so for some u.
 		for _, u := range [...]float64{0, 0.25, 0.5, 0.75, 1 - 1e-12} {
-			if o := l.Scatter(wall.Incidence{P: p}, u); o.Back.Weight > 0 && o.Back.P != p {
+			if o := l.Scatter(in, u); o.Back.Weight > 0 && o.Back.P != in.P {
 				return true
 			}
 		}
@@ -100,8 +101,8 @@ func scatters(l wall.Law) bool {
 	return false
 }
 
-// bareMirrors reports whether every wall is a mirror.
-func bareMirrors(t *table.Table) bool {
+// BareMirrors reports whether every wall is a mirror.
+func BareMirrors(t *table.Table) bool {
 	if t.Law() != (wall.Mirror{}) {
 		return false
 	}
@@ -113,10 +114,10 @@ func bareMirrors(t *table.Table) bool {
 	return true
 }
 
-// mirrored is the table with bare mirrors for walls, made ready for rays.
-func mirrored(tr *sim.Tracer) (*sim.Tracer, error) {
+// Mirrored is the table with bare mirrors for walls, made ready for rays.
+func Mirrored(tr *sim.Tracer) (*sim.Tracer, error) {
 	t := tr.Table()
-	if bareMirrors(t) {
+	if BareMirrors(t) {
 		return tr, nil
 	}
 	d := t.Design()

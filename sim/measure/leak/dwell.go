@@ -1,6 +1,7 @@
-package measure
+package leak
 
 import (
+	"cavitywright/sim/measure"
 	"slices"
 
 	"cavitywright/sim"
@@ -81,18 +82,21 @@ func (d Dwell) Start(_ int, uniform func() float64) sim.Start {
 }
 
 // Tally is a *DwellTally.
-func (d Dwell) Tally() Tally { return &DwellTally{} }
+func (d Dwell) Tally() measure.Tally { return &DwellTally{} }
 
 // DwellTally is the sum of the paths of the rays that left, and its square.
 type DwellTally struct {
-	Stops   Stops
+	Stops   measure.Stops
 	Flights int64
-	Left    int64   // rays that left
-	Kept    int64   // rays that were still inside at the last bounce
-	sample          // the paths of those that left
-	path    float64 // of the ray at hand
+	Left    int64          // rays that left
+	Kept    int64          // rays that were still inside at the last bounce
+	paths   measure.Sample // of those that left
+	path    float64        // of the ray at hand
 	stop    sim.Stop
 }
+
+// Mean is the mean path with its standard error, NaN for fewer than two rays.
+func (t *DwellTally) Mean() (mean, stderr float64) { return t.paths.Mean() }
 
 // Open begins a ray.
 func (t *DwellTally) Open(int) { t.path, t.stop = 0, sim.Going }
@@ -114,17 +118,17 @@ func (t *DwellTally) Close() {
 		return
 	case sim.Escaped:
 		t.Left++
-		t.take(t.path)
+		t.paths.Take(t.path)
 	}
 	t.Stops[t.stop]++
 }
 
 // Merge adds the next tally.
-func (t *DwellTally) Merge(next Tally) {
+func (t *DwellTally) Merge(next measure.Tally) {
 	o := next.(*DwellTally)
 	t.Flights += o.Flights
 	t.Left += o.Left
 	t.Kept += o.Kept
-	t.merge(o.sample)
-	t.Stops.add(o.Stops)
+	t.paths.Merge(o.paths)
+	t.Stops.Add(o.Stops)
 }

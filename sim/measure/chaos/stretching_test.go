@@ -1,6 +1,9 @@
-package measure_test
+package chaos_test
 
 import (
+	"cavitywright/sim/measure/chaos"
+	"cavitywright/sim/measure/reading"
+	"cavitywright/sim/run/trial"
 	"errors"
 	"math"
 	"strings"
@@ -16,9 +19,9 @@ import (
 )
 
 // stretching follows orbits with a seed.
-func stretching(t testing.TB, tr *sim.Tracer, seed uint64, effort float64) *measure.StretchingTally {
+func stretching(t testing.TB, tr *sim.Tracer, seed uint64, effort float64) *chaos.StretchingTally {
 	t.Helper()
-	s, err := measure.MeasureStretching(tr, runner(tr, seed, 0), effort)
+	s, err := chaos.MeasureStretching(tr, trial.Runner(tr, seed, 0), effort)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -40,12 +43,12 @@ func TestStretching(t *testing.T) {
 		bounce, bounceSlack float64 // per bounce; 0 where no value is stated
 		effort, reach       float64 // and the relative error that it must reach
 	}{
-		{"stadium", traced(t, "stadium", []float64{1, 1}), 0.42968, 2e-5, 0.93750, 5e-5, 0.1, 0.003},
-		{"stadium twice as large", traced(t, "stadium", []float64{2, 2}), 0.21484, 1e-5, 0.93750, 5e-5, 0.05, 0.004},
-		{"longer stadium", traced(t, "stadium", []float64{2, 1}), 0.34397, 6e-5, 0, 0, 0.1, 0.004},
-		{"cardioid", traced(t, "limacon", []float64{1, 1}), 0.352774, 1e-5, 0.65291, 3e-5, 0.1, 0.002},
-		{"cut disc", traced(t, "cut-disc", []float64{1, 0.5}), 0.382, 0.002, 0.512, 0.0005, 0.05, 0.002},
-		{"limaçon 0.43", traced(t, "limacon", []float64{1, 0.43}), 0.1965, 0.002, 0, 0, 0.1, 0.01},
+		{"stadium", trial.Traced(t, "stadium", []float64{1, 1}), 0.42968, 2e-5, 0.93750, 5e-5, 0.1, 0.003},
+		{"stadium twice as large", trial.Traced(t, "stadium", []float64{2, 2}), 0.21484, 1e-5, 0.93750, 5e-5, 0.05, 0.004},
+		{"longer stadium", trial.Traced(t, "stadium", []float64{2, 1}), 0.34397, 6e-5, 0, 0, 0.1, 0.004},
+		{"cardioid", trial.Traced(t, "limacon", []float64{1, 1}), 0.352774, 1e-5, 0.65291, 3e-5, 0.1, 0.002},
+		{"cut disc", trial.Traced(t, "cut-disc", []float64{1, 0.5}), 0.382, 0.002, 0.512, 0.0005, 0.05, 0.002},
+		{"limaçon 0.43", trial.Traced(t, "limacon", []float64{1, 0.43}), 0.1965, 0.002, 0, 0, 0.1, 0.01},
 	} {
 		s := stretching(t, c.tracer, 11, c.effort)
 		l, le := s.PerLength()
@@ -62,7 +65,7 @@ func TestStretching(t *testing.T) {
 
 // TestStretchingErrors wants the truth within two errors for nine seeds of ten.
 func TestStretchingErrors(t *testing.T) {
-	tr := traced(t, "stadium", []float64{1, 1})
+	tr := trial.Traced(t, "stadium", []float64{1, 1})
 	const seeds = 80
 	inside, chi2 := 0, 0.0
 	for seed := range uint64(seeds) {
@@ -109,7 +112,7 @@ var chaosReadings = []string{"lyapunov-per-length", "lyapunov-per-bounce", "chao
 // Commun. Math. Phys. 111, 151 (1987), from memory; ellipses: Berry, Eur. J.
 // Phys. 2, 91 (1981); arcs about one centre and mirrors through it: closed.
 func TestIntegrable(t *testing.T) {
-	turned := traced(t, "cut-disc", []float64{1, 0}).Table().Design()
+	turned := trial.Traced(t, "cut-disc", []float64{1, 0}).Table().Design()
 	turned.Items[0].Place = plane.Similarity{Scale: 3, Angle: 0.7}
 	turned.Items[0].Place.Shift.X = 5
 	half, err := table.New(turned)
@@ -121,22 +124,22 @@ func TestIntegrable(t *testing.T) {
 		tracer *sim.Tracer
 		reason string // "" where it is measured
 	}{
-		{"disc", traced(t, "disc", []float64{1}), "angular momentum about it"},
+		{"disc", trial.Traced(t, "disc", []float64{1}), "angular momentum about it"},
 		{"half disc", sim.Compile(half), "angular momentum about it"},
 		{"ring", ring(t, 0), "angular momentum about it"},
-		{"ellipse", traced(t, "ellipse", []float64{2, 1}), "foci"},
-		{"rectangle", traced(t, "rectangle", []float64{2, 1}), "straight"},
-		{"glass rectangle", traced(t, "rectangle", []float64{2, 1}, opening(0, 0.1, 0.2)), "walls taken as mirrors"},
+		{"ellipse", trial.Traced(t, "ellipse", []float64{2, 1}), "foci"},
+		{"rectangle", trial.Traced(t, "rectangle", []float64{2, 1}), "straight"},
+		{"glass rectangle", trial.Traced(t, "rectangle", []float64{2, 1}, trial.Opening(0, 0.1, 0.2)), "walls taken as mirrors"},
 		{"ring off centre", ring(t, 1e-3), ""},
-		{"cut disc", traced(t, "cut-disc", []float64{1, 1e-3}), ""},
-		{"square with disc", traced(t, "square-with-disc", []float64{1, 0.2}), ""},
+		{"cut disc", trial.Traced(t, "cut-disc", []float64{1, 1e-3}), ""},
+		{"square with disc", trial.Traced(t, "square-with-disc", []float64{1, 0.2}), ""},
 	} {
 		names := chaosReadings
 		if c.reason == "" {
 			names = names[2:3]
 		}
 		for _, name := range names {
-			s := reading(t, c.tracer, name, 1e-3)
+			s := taken(t, c.tracer, name, 1e-3)
 			switch {
 			case c.reason == "" && (s.StdErr == 0 || s.Bounces == 0):
 				t.Errorf("%s: %s is said to be exact: %+v", c.name, name, s)
@@ -147,14 +150,14 @@ func TestIntegrable(t *testing.T) {
 	}
 }
 
-// reading takes one reading of a table with the seed 5.
-func reading(t testing.TB, tr *sim.Tracer, name string, effort float64) figure.Scalar {
+// taken takes one reading of a table with the seed 5.
+func taken(t testing.TB, tr *sim.Tracer, name string, effort float64) figure.Scalar {
 	t.Helper()
-	wanted, err := measure.Wanted(tr.Table(), []string{name})
+	wanted, err := reading.Wanted(tr.Table(), []string{name})
 	if err != nil {
 		t.Fatal(err)
 	}
-	s, err := wanted[0].Take(tr, runner(tr, 5, 0), effort, 5)
+	s, err := wanted[0].Take(tr, trial.Runner(tr, 5, 0), effort, 5)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -165,11 +168,11 @@ func reading(t testing.TB, tr *sim.Tracer, name string, effort float64) figure.S
 // table with mirrors for walls, and refusals where there is no tangent map.
 func TestChaosMirrors(t *testing.T) {
 	shape := []float64{1, 0.43}
-	bare := traced(t, "limacon", shape)
-	glass := traced(t, "limacon", shape, opening(0, 0.2, 0.3),
+	bare := trial.Traced(t, "limacon", shape)
+	glass := trial.Traced(t, "limacon", shape, trial.Opening(0, 0.2, 0.3),
 		table.Coat{Side: 0, From: 0.5, To: 1, Law: wall.Dielectric{Index: 1.5, Outside: 1}})
 	for _, name := range []string{chaosReadings[0], chaosReadings[2]} {
-		a, b := reading(t, bare, name, 0.01), reading(t, glass, name, 0.01)
+		a, b := taken(t, bare, name, 0.01), taken(t, glass, name, 0.01)
 		if a.Value != b.Value || a.StdErr != b.StdErr || a.Bounces != b.Bounces {
 			t.Errorf("%s is %+v with mirrors, %+v with openings", name, a, b)
 		}
@@ -177,10 +180,10 @@ func TestChaosMirrors(t *testing.T) {
 			t.Errorf("%s: the notes are %q and %q", name, a.Note, b.Note)
 		}
 	}
-	rough := traced(t, "disc", []float64{1}, table.Coat{Side: 0, To: 0.1, Law: wall.Rough{Share: 0.1}})
-	for _, tr := range []*sim.Tracer{rough, traced(t, "three-posts", []float64{1, 6})} {
+	rough := trial.Traced(t, "disc", []float64{1}, table.Coat{Side: 0, To: 0.1, Law: wall.Rough{Share: 0.1}})
+	for _, tr := range []*sim.Tracer{rough, trial.Traced(t, "three-posts", []float64{1, 6})} {
 		for _, name := range chaosReadings {
-			_, err := measure.Wanted(tr.Table(), []string{name})
+			_, err := reading.Wanted(tr.Table(), []string{name})
 			if no := (*measure.NotMeasured)(nil); !errors.As(err, &no) {
 				t.Errorf("%s is refused with %v", name, err)
 			}
@@ -191,7 +194,7 @@ func TestChaosMirrors(t *testing.T) {
 // TestNotChaotic measures a limaçon of eps 0, a disc that the program does not
 // know for one: no orbit is chaotic, and the exponent is 0 within its bound.
 func TestNotChaotic(t *testing.T) {
-	s := reading(t, traced(t, "limacon", []float64{1, 0}), "lyapunov-per-bounce", 1e-3)
+	s := taken(t, trial.Traced(t, "limacon", []float64{1, 0}), "lyapunov-per-bounce", 1e-3)
 	if s.Value != 0 || !(s.StdErr > 0 && s.StdErr < 0.02) || !strings.HasPrefix(s.Note, "0 of 32 orbits are chaotic") {
 		t.Errorf("the exponent is %+v", s)
 	}

@@ -1,11 +1,10 @@
-package measure
+package chaos
 
 import (
-	"fmt"
+	"cavitywright/sim/measure"
 	"math"
 
 	"cavitywright/sim"
-	"cavitywright/sim/figure"
 )
 
 // Stretching measures how fast neighbouring rays part: the largest Lyapunov
@@ -15,14 +14,14 @@ import (
 // the exponent is the ratio of their sums.
 //
 // An orbit whose growth over Each bounces is not exponential is followed to
-// patience times as many before it counts as regular; if it turns out chaotic, its
+// Patience times as many before it counts as regular; if it turns out chaotic, its
 // first Each bounces count like those of any other. Left out, those that stick
 // somewhere at first would make the exponent too large.
 //
 // All walls are taken as mirrors.
 type Stretching struct {
 	Tracer *sim.Tracer // of mirrors
-	Starts Lattices
+	Starts measure.Lattices
 	Each   int // bounces of an orbit that count
 	Skip   int // bounces before, in which the tangent vector turns to the direction that grows
 }
@@ -46,22 +45,22 @@ func (m Stretching) Start(i int, _ func() float64) sim.Start {
 }
 
 // Tally is a *StretchingTally.
-func (m Stretching) Tally() Tally {
-	return &StretchingTally{of: m, trail: newTrail(m.Tracer), lots: lots[grown]{size: m.Starts.Points.Size()}}
+func (m Stretching) Tally() measure.Tally {
+	return &StretchingTally{of: m, trail: newTrail(m.Tracer), lots: measure.Lots[grown]{Size: m.Starts.Points.Size()}}
 }
 
-// chaosPower is the power of n beyond which the growth over n bounces counts
+// ChaosPower is the power of n beyond which the growth over n bounces counts
 // as exponential. Regular orbits reach the power 1, with a factor that grows
 // near separatrices: up to 1.7 on an ellipse of axes 2:1 at n = 200, up to 1.5
 // at n = 2000. Long orbits of the chaotic sea lie far beyond, with hardly any
 // between 2 and 3.5 at n = 2000; at n = 200 those that stick to islands fill
 // the gap, and the share falls by 0.04 from the power 2 to the power 2.75 on a
 // limaçon of eps = 0.3: what sticks that long counts as regular.
-const chaosPower = 2.75
+const ChaosPower = 2.75
 
 // exponential reports whether a growth over n bounces, as a logarithm, is that
 // of a chaotic orbit.
-func exponential(growth float64, n int) bool { return growth > chaosPower*math.Log(float64(n)) }
+func exponential(growth float64, n int) bool { return growth > ChaosPower*math.Log(float64(n)) }
 
 // grown is what the chaotic orbits of a lattice grew by and flew, in how many
 // bounces.
@@ -75,7 +74,7 @@ func (g *grown) add(o *grown) {
 
 // StretchingTally is the sums over the chaotic orbits of each lattice.
 type StretchingTally struct {
-	Stops   Stops
+	Stops   measure.Stops
 	Chaotic int64 // orbits
 	Regular int64
 	Late    int64 // chaotic ones that did not show it in half of the bounces allowed
@@ -83,11 +82,11 @@ type StretchingTally struct {
 	of      Stretching
 	trail   trail
 	start   sim.State
-	lots    lots[grown]
+	lots    measure.Lots[grown]
 }
 
 // Open begins orbit i.
-func (t *StretchingTally) Open(i int) { t.lots.open(i) }
+func (t *StretchingTally) Open(i int) { t.lots.Open(i) }
 
 // Add takes the opening bounce; the rest is followed by Close.
 func (t *StretchingTally) Add(b *sim.Bounce) {
@@ -96,9 +95,9 @@ func (t *StretchingTally) Add(b *sim.Bounce) {
 	}
 }
 
-// patience is how many times the bounces that count an orbit is followed at
+// Patience is how many times the bounces that count an orbit is followed at
 // most, to see whether it is chaotic.
-const patience = 4
+const Patience = 4
 
 // Close follows the orbit.
 func (t *StretchingTally) Close() {
@@ -106,7 +105,7 @@ func (t *StretchingTally) Close() {
 	counted := grown{bounces: float64(t.of.Each)}
 	end := t.of.Skip + t.of.Each
 	chaotic, late := false, false
-	for n := end; !chaotic && n <= patience*end && b.Stop == sim.Going; n *= 2 {
+	for n := end; !chaotic && n <= Patience*end && b.Stop == sim.Going; n *= 2 {
 		for b.Stop == sim.Going && b.N < n {
 			if b = t.trail.next(); b.Stop != sim.Going {
 				break
@@ -122,7 +121,7 @@ func (t *StretchingTally) Close() {
 			}
 		}
 		if b.Stop == sim.Going {
-			chaotic, late = exponential(t.trail.growth(&b), n), 2*n > patience*end
+			chaotic, late = exponential(t.trail.growth(&b), n), 2*n > Patience*end
 		}
 	}
 	t.Walked += int64(b.N)
@@ -136,18 +135,18 @@ func (t *StretchingTally) Close() {
 		if late {
 			t.Late++
 		}
-		t.lots.last().add(&counted)
+		t.lots.Last().add(&counted)
 	}
 }
 
 // Merge adds the next tally.
-func (t *StretchingTally) Merge(next Tally) {
+func (t *StretchingTally) Merge(next measure.Tally) {
 	o := next.(*StretchingTally)
 	t.Chaotic, t.Regular, t.Late, t.Walked = t.Chaotic+o.Chaotic, t.Regular+o.Regular, t.Late+o.Late, t.Walked+o.Walked
 	for i := range o.Stops {
 		t.Stops[i] += o.Stops[i]
 	}
-	t.lots.merge(&o.lots, (*grown).add)
+	t.lots.Merge(&o.lots, (*grown).add)
 }
 
 // PerLength is the exponent per path length (1/length) with its standard
@@ -165,7 +164,7 @@ func (t *StretchingTally) PerBounce() (rate, stderr float64) {
 // share of orbits that were late: where orbits stick with a probability that
 // falls as the inverse of time, as many again are left out.
 func (t *StretchingTally) rate(of func(*grown) (a, b float64)) (rate, stderr float64) {
-	rate, stderr = t.lots.ratio(of)
+	rate, stderr = t.lots.Ratio(of)
 	return rate, math.Hypot(stderr, rate*float64(t.Late)/float64(t.Chaotic))
 }
 
@@ -230,77 +229,30 @@ func cosine(p float64) float64 { return math.Sqrt((1 - p) * (1 + p)) }
 
 const (
 	// stretchWork is the number of bounces that count at effort 1,
-	// stretchBounces that of each orbit and stretchSkip of those before: the
+	// StretchBounces that of each orbit and StretchSkip of those before: the
 	// part of the vector across the growing direction vanishes as the square
 	// of its growth.
 	stretchWork    = 2e7
-	stretchBounces = 1000
-	stretchSkip    = 100
-	// stretchOrbits is the least number of orbits from which a rate is read.
-	stretchOrbits = 8
+	StretchBounces = 1000
+	StretchSkip    = 100
+	// StretchOrbits is the least number of orbits from which a rate is read.
+	StretchOrbits = 8
 )
 
 // MeasureStretching follows orbits of the table off mirrors; effort multiplies
 // their number. The table must be one that has a tangent map.
-func MeasureStretching(tr *sim.Tracer, run Runner, effort float64) (*StretchingTally, error) {
-	bare, err := mirrored(tr)
+func MeasureStretching(tr *sim.Tracer, run measure.Runner, effort float64) (*StretchingTally, error) {
+	bare, err := Mirrored(tr)
 	if err != nil {
 		return nil, err
 	}
-	starts, err := drawnLattices(bare, run, int(stretchWork*effort/slowness(bare.Table())/stretchBounces))
+	starts, err := measure.DrawnLattices(bare, run, int(stretchWork*effort/measure.Slowness(bare.Table())/StretchBounces))
 	if err != nil {
 		return nil, err
 	}
-	ran, err := run(Stretching{Tracer: bare, Starts: starts, Each: stretchBounces, Skip: stretchSkip})
+	ran, err := run(Stretching{Tracer: bare, Starts: starts, Each: StretchBounces, Skip: StretchSkip})
 	if err != nil {
 		return nil, err
 	}
 	return ran.(*StretchingTally), nil
-}
-
-func lyapunovPerLength(b bench) (figure.Scalar, error) {
-	return b.lyapunov("lyapunov-per-length", "1/"+b.unit(), (*StretchingTally).PerLength, sim.MeanChord(b.tracer.Table()))
-}
-
-func lyapunovPerBounce(b bench) (figure.Scalar, error) {
-	return b.lyapunov("lyapunov-per-bounce", "1/bounce", (*StretchingTally).PerBounce, 1)
-}
-
-// lyapunov is the exponent by a clock that advances by step a bounce.
-func (b bench) lyapunov(name, unit string, rate func(*StretchingTally) (float64, float64), step float64) (figure.Scalar, error) {
-	if why := integrable(b.tracer.Table()); why != "" {
-		return figure.Scalar{Unit: unit, Note: why + b.asMirrors()}, nil
-	}
-	t, err := MeasureStretching(b.tracer, b.run, b.effort)
-	if err != nil {
-		return figure.Scalar{}, err
-	}
-	s := figure.Scalar{Unit: unit, Bounces: t.Walked}
-	all := t.Chaotic + t.Regular
-	if all == 0 {
-		return s, &NotMeasured{name, noneFollowed}
-	}
-	horizon := patience * (stretchSkip + stretchBounces)
-	if t.Chaotic < stretchOrbits {
-		s.StdErr = chaosPower * math.Log(float64(horizon)) / float64(horizon) / step
-		s.Note = fmt.Sprintf("%d of %d orbits are chaotic over %d bounces, too few; the error is the least rate that would show", t.Chaotic, all, horizon)
-	} else {
-		s.Value, s.StdErr = rate(t)
-		s.Note = fmt.Sprintf("starts even in ds dp; %d bounces of each of the %d of %d orbits that are chaotic within %d", stretchBounces, t.Chaotic, all, horizon)
-	}
-	if t.Late > 0 {
-		s.Note += fmt.Sprintf("; %d of them stuck for half of these, and as many may be missed, which the error takes in", t.Late)
-	}
-	s.Note += b.asMirrors() + t.Stops.remark()
-	return s, nil
-}
-
-const noneFollowed = "every orbit met a corner or touched the wall along its tangent"
-
-// asMirrors says, as the end of a note, that coats were disregarded.
-func (b bench) asMirrors() string {
-	if bareMirrors(b.tracer.Table()) {
-		return ""
-	}
-	return "; all walls taken as mirrors"
 }

@@ -1,6 +1,7 @@
-package measure
+package leak
 
 import (
+	"cavitywright/sim/measure"
 	"math"
 
 	"cavitywright/sim"
@@ -18,9 +19,9 @@ import (
 type Escape struct {
 	Tracer *sim.Tracer
 	Cells  Cells
-	Points Fibonacci // of each lattice
-	Shifts []Shift   // one a lattice
-	Marks  []int     // counts of bounces, ascending, at least 1
+	Points measure.Fibonacci // of each lattice
+	Shifts []measure.Shift   // one a lattice
+	Marks  []int             // counts of bounces, ascending, at least 1
 	// Rate is a guess (1/length), Flight the mean flight of what is left: the
 	// sums are kept in a form that is exact for rates up to 2 Rate.
 	Rate, Flight float64
@@ -42,7 +43,7 @@ func (e Escape) Start(i int, _ func() float64) sim.Start {
 func (e Escape) step() float64 { return 2 * e.Rate / (nodes - 1) }
 
 // Tally is an *EscapeTally.
-func (e Escape) Tally() Tally { return &EscapeTally{of: e} }
+func (e Escape) Tally() measure.Tally { return &EscapeTally{of: e} }
 
 const (
 	// nodes is the number of rates, from 0 to 2 Rate in equal steps, about
@@ -76,7 +77,7 @@ func (l *Left) add(o *Left) {
 
 // EscapeTally is what is left of each lattice at each mark.
 type EscapeTally struct {
-	Stops   Stops
+	Stops   measure.Stops
 	Flights int64 // that ended on the wall
 	of      Escape
 	first   int      // the lattice of the first row
@@ -128,7 +129,7 @@ func (t *EscapeTally) Add(b *sim.Bounce) {
 func (t *EscapeTally) Close() {}
 
 // Merge adds the next tally.
-func (t *EscapeTally) Merge(next Tally) {
+func (t *EscapeTally) Merge(next measure.Tally) {
 	o := next.(*EscapeTally)
 	t.Flights += o.Flights
 	for i := range o.Stops {

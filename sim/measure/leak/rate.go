@@ -1,15 +1,12 @@
-package measure
+package leak
 
 import (
+	"cavitywright/sim/measure"
 	"fmt"
 	"math"
 
 	"cavitywright/sim"
 )
-
-// Runner carries out a measurement, on any number of workers and with a seed
-// that it knows.
-type Runner func(Measurement) (Tally, error)
 
 // EscapeRate is the escape rate of a table, with its window and what follows
 // it.
@@ -18,7 +15,7 @@ type EscapeRate struct {
 	Next    Decay // over the window after it, of the same length
 	HasNext bool
 	Flights int64
-	Stops   Stops
+	Stops   measure.Stops
 }
 
 // Slows reports whether what is left falls more slowly after the window than
@@ -32,11 +29,6 @@ const (
 	slowShare  = 0.02 // of the rate
 	slowErrors = 4    // standard errors
 	uncertain  = 0.3  // share of error beyond which a rate is none
-	// lattices is the least number of lattices: their scatter then gives the
-	// error to one part in eight. mostLattices is reached where the next
-	// larger lattice would just be too large.
-	lattices     = 32
-	mostLattices = 56
 	// The pilot's size: it finds the survival a bounce to a few hundredths,
 	// which sizes the windows.
 	pilotPoints  = 6765
@@ -69,12 +61,12 @@ const (
 // MeasureEscape measures the escape rate of a table; effort multiplies the
 // number of flights. The error is a *NotMeasured where there is no rate, or the
 // runner's.
-func MeasureEscape(tr *sim.Tracer, run Runner, effort float64) (EscapeRate, error) {
-	moved, err := run(draws{tr, mostLattices})
+func MeasureEscape(tr *sim.Tracer, run measure.Runner, effort float64) (EscapeRate, error) {
+	shifts, err := measure.DrawnShifts(tr, run)
 	if err != nil {
 		return EscapeRate{}, err
 	}
-	p := plan{tracer: tr, run: run, shifts: moved.(*drawn).shifts}
+	p := plan{tracer: tr, run: run, shifts: shifts}
 	if err := p.pilot(); err != nil {
 		return EscapeRate{}, err
 	}
@@ -103,8 +95,8 @@ func MeasureEscape(tr *sim.Tracer, run Runner, effort float64) (EscapeRate, erro
 // plan is what a pilot finds out before an escape rate is measured.
 type plan struct {
 	tracer   *sim.Tracer
-	run      Runner
-	shifts   []Shift
+	run      measure.Runner
+	shifts   []measure.Shift
 	keep     float64 // weight kept a bounce, once the start is forgotten
 	flight   float64 // mean path of a flight
 	share    [3]float64
@@ -115,7 +107,7 @@ type plan struct {
 }
 
 func (p *plan) pilot() error {
-	e := Escape{Tracer: p.tracer, Points: NewFibonacci(pilotPoints), Shifts: p.shifts[:pilotShifts]}
+	e := Escape{Tracer: p.tracer, Points: measure.NewFibonacci(pilotPoints), Shifts: p.shifts[:pilotShifts]}
 	for n := 1; n <= pilotBounces; n = max(n+1, n*5/4) {
 		e.Marks = append(e.Marks, n)
 	}
@@ -160,7 +152,7 @@ func (p *plan) search(effort float64) error {
 	if p.rays > sparse {
 		return nil
 	}
-	l := Lasting{Tracer: p.tracer, Points: NewFibonacci(int(max(searchPoints*min(effort, 1), searchLeast))), Shift: p.shifts[0], Each: 2}
+	l := Lasting{Tracer: p.tracer, Points: measure.NewFibonacci(int(max(searchPoints*min(effort, 1), searchLeast))), Shift: p.shifts[0], Each: 2}
 	if p.share[2] < 0.01 {
 		l.Each = 1
 	}
@@ -179,9 +171,9 @@ func (p *plan) main(effort float64) Escape {
 	if p.rays < 1 {
 		flights = p.staying * p.rays * (1 - math.Pow(p.rays, float64(next))) / (1 - p.rays)
 	}
-	starts := escapeWork * effort / (1 + flights/p.cells.Share()) / slowness(p.tracer.Table())
-	points := NewFibonacci(int(starts / lattices))
-	n := min(max(int(starts)/points.Size(), lattices), mostLattices)
+	starts := escapeWork * effort / (1 + flights/p.cells.Share()) / measure.Slowness(p.tracer.Table())
+	points := measure.NewFibonacci(int(starts / measure.LeastLattices))
+	n := min(max(int(starts)/points.Size(), measure.LeastLattices), len(p.shifts))
 	return Escape{
 		Tracer: p.tracer, Cells: p.cells, Points: points, Shifts: p.shifts[:n],
 		Marks: []int{p.from, p.to, next},
@@ -190,5 +182,5 @@ func (p *plan) main(effort float64) Escape {
 }
 
 func escapeFault(format string, args ...any) error {
-	return &NotMeasured{Name: "escape-rate", Why: fmt.Sprintf(format, args...)}
+	return &measure.NotMeasured{Name: "escape-rate", Why: fmt.Sprintf(format, args...)}
 }

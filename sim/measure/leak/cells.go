@@ -1,7 +1,8 @@
-package measure
+package leak
 
 import (
 	"cavitywright/sim"
+	"cavitywright/sim/measure"
 )
 
 // cellsASide is the number of cells along s and along p of the grid in which
@@ -39,8 +40,8 @@ func (c Cells) At(u, v float64) (float64, float64) {
 // cells from which one lasts Each bounces.
 type Lasting struct {
 	Tracer *sim.Tracer
-	Points Fibonacci
-	Shift  Shift
+	Points measure.Fibonacci
+	Shift  measure.Shift
 	Each   int
 }
 
@@ -56,7 +57,7 @@ func (l Lasting) Start(i int, _ func() float64) sim.Start {
 }
 
 // Tally is a *LastingTally.
-func (l Lasting) Tally() Tally { return &LastingTally{of: l} }
+func (l Lasting) Tally() measure.Tally { return &LastingTally{of: l} }
 
 // LastingTally is the starts of the rays that lasted.
 type LastingTally struct {
@@ -84,7 +85,9 @@ func (t *LastingTally) Add(b *sim.Bounce) {
 func (t *LastingTally) Close() {}
 
 // Merge appends the next starts.
-func (t *LastingTally) Merge(next Tally) { t.starts = append(t.starts, next.(*LastingTally).starts...) }
+func (t *LastingTally) Merge(next measure.Tally) {
+	t.starts = append(t.starts, next.(*LastingTally).starts...)
+}
 
 // Cells are the cells from which a ray lasted, with all cells that touch them;
 // the whole section where none did.

@@ -1,61 +1,27 @@
-package measure_test
+package leak_test
 
 import (
-	"context"
+	"cavitywright/sim/measure/leak"
+	"cavitywright/sim/run/trial"
 	"errors"
 	"math"
 	"testing"
 
 	"cavitywright/sim"
 	"cavitywright/sim/measure"
-	"cavitywright/sim/run"
 	"cavitywright/table"
 	"cavitywright/table/plane"
 	"cavitywright/table/shape"
 	"cavitywright/table/wall"
 )
 
-// traced is a table of one shape, ready for rays.
-func traced(t testing.TB, name string, values []float64, coats ...table.Coat) *sim.Tracer {
+func escape(t testing.TB, tr *sim.Tracer, seed uint64, effort float64) leak.EscapeRate {
 	t.Helper()
-	f, err := shape.New(name, values)
-	if err != nil {
-		t.Fatal(err)
-	}
-	tab, err := table.New(table.Design{
-		Unit: table.Millimetre, Coats: coats,
-		Items: []table.Item{{Shape: f, Place: plane.Identity()}},
-	})
-	if err != nil {
-		t.Fatal(err)
-	}
-	return sim.Compile(tab)
-}
-
-// runner runs measurements with a seed.
-func runner(tr *sim.Tracer, seed uint64, workers int) measure.Runner {
-	return func(m measure.Measurement) (measure.Tally, error) {
-		return run.Run(context.Background(), run.Job{Tracer: tr, Measure: m, Seed: seed, Workers: workers})
-	}
-}
-
-func escape(t testing.TB, tr *sim.Tracer, seed uint64, effort float64) measure.EscapeRate {
-	t.Helper()
-	r, err := measure.MeasureEscape(tr, runner(tr, seed, 0), effort)
+	r, err := leak.MeasureEscape(tr, trial.Runner(tr, seed, 0), effort)
 	if err != nil {
 		t.Fatal(err)
 	}
 	return r
-}
-
-func opening(side int, from, to float64) table.Coat {
-	return table.Coat{Side: side, From: from, To: to, Law: wall.Opening{}}
-}
-
-// cardioidHole is the cardioid of length 8 with an opening of length 0.2
-// centred at phi = 0, where s begins.
-func cardioidHole(t testing.TB) *sim.Tracer {
-	return traced(t, "limacon", []float64{1, 1}, opening(0, 0, 0.1/8), opening(0, 1-0.1/8, 1))
 }
 
 // TestEscapePublished holds the rate to published and independent values.
@@ -70,14 +36,14 @@ func TestEscapePublished(t *testing.T) {
 	}{
 		// Gaspard and Rice, J. Chem. Phys. 90, 2225 (1989); Cvitanović and
 		// Eckhardt, Phys. Rev. Lett. 63, 823 (1989).
-		{"three posts, separation 6", traced(t, "three-posts", []float64{1, 6}), 0.4103384077693464893, 0, 0.2, 0.006},
+		{"three posts, separation 6", trial.Traced(t, "three-posts", []float64{1, 6}), 0.4103384077693464893, 0, 0.2, 0.006},
 		// An independent cycle expansion.
-		{"three posts, separation 3", traced(t, "three-posts", []float64{1, 3}), 0.6779226895995361, 0, 0.2, 0.012},
+		{"three posts, separation 3", trial.Traced(t, "three-posts", []float64{1, 3}), 0.6779226895995361, 0, 0.2, 0.012},
 		// An independent run of another program.
-		{"cardioid with an opening", cardioidHole(t), 0.014102, 0.00005, 0.1, 0.02},
+		{"cardioid with an opening", trial.CardioidHole(t), 0.014102, 0.00005, 0.1, 0.02},
 		// A uniformly lossy mixing wall: (1 - R) / mean chord to leading order
 		// in the loss, here 1e-3 (common practice); 2.18... is pi A / L.
-		{"stadium, every bounce loses 1/1000", traced(t, "stadium", []float64{1, 1},
+		{"stadium, every bounce loses 1/1000", trial.Traced(t, "stadium", []float64{1, 1},
 			table.Coat{Side: table.AllSides, To: 1, Law: wall.Lossy{Reflectivity: 0.999}}),
 			0.001 / 2.1818117971465539, 0.001 * 0.01, 0.02, 0.02},
 	} {
@@ -104,8 +70,8 @@ func TestEscapeErrorHonest(t *testing.T) {
 		tracer *sim.Tracer
 		want   float64
 	}{
-		{"separation 6", traced(t, "three-posts", []float64{1, 6}), 0.4103384077693464893},
-		{"separation 3", traced(t, "three-posts", []float64{1, 3}), 0.6779226895995361},
+		{"separation 6", trial.Traced(t, "three-posts", []float64{1, 6}), 0.4103384077693464893},
+		{"separation 3", trial.Traced(t, "three-posts", []float64{1, 3}), 0.6779226895995361},
 	} {
 		within, mean, square := 0, 0.0, 0.0
 		for seed := range uint64(runs) {
@@ -129,16 +95,16 @@ func TestEscapeErrorHonest(t *testing.T) {
 // TestEscapeForgets shows why the window begins late: at the first bounce the
 // rate is wrong by more than a hundred errors, at the window it is not.
 func TestEscapeForgets(t *testing.T) {
-	tr := traced(t, "three-posts", []float64{1, 3})
-	e := measure.Escape{Tracer: tr, Points: measure.NewFibonacci(30000), Marks: []int{1, 3, 6, 8}, Rate: 0.68, Flight: 1.15}
+	tr := trial.Traced(t, "three-posts", []float64{1, 3})
+	e := leak.Escape{Tracer: tr, Points: measure.NewFibonacci(30000), Marks: []int{1, 3, 6, 8}, Rate: 0.68, Flight: 1.15}
 	for i := range 32 {
 		e.Shifts = append(e.Shifts, measure.Shift{U: math.Mod(float64(i)*0.618, 1), V: math.Mod(float64(i)*0.414, 1)})
 	}
-	ran, err := runner(tr, 1, 0)(e)
+	ran, err := trial.Runner(tr, 1, 0)(e)
 	if err != nil {
 		t.Fatal(err)
 	}
-	tally := ran.(*measure.EscapeTally)
+	tally := ran.(*leak.EscapeTally)
 	early, ok1 := tally.Decay(0, 1)
 	late, ok2 := tally.Decay(2, 3)
 	if !ok1 || !ok2 {
@@ -157,11 +123,11 @@ func TestEscapeForgets(t *testing.T) {
 // the end (Bunimovich and Dettmann, Phys. Rev. Lett. 94, 100201 (2005) for the
 // disc), and to one that is exponential.
 func TestEscapeSlows(t *testing.T) {
-	disc := traced(t, "disc", []float64{1}, opening(0, 0, 0.2/(2*math.Pi)))
+	disc := trial.Traced(t, "disc", []float64{1}, trial.Opening(0, 0, 0.2/(2*math.Pi)))
 	if r := escape(t, disc, 1, 0.05); !r.Slows() {
 		t.Errorf("the disc falls at %g ± %g, then at %g: not said to slow", r.Rate, r.Err, r.Next.Rate)
 	}
-	if r := escape(t, cardioidHole(t), 1, 0.05); r.Slows() {
+	if r := escape(t, trial.CardioidHole(t), 1, 0.05); r.Slows() {
 		t.Errorf("the cardioid falls at %g ± %g, then at %g: said to slow", r.Rate, r.Err, r.Next.Rate)
 	}
 }
@@ -172,9 +138,9 @@ func TestEscapeNone(t *testing.T) {
 		// A single convex post: no ray meets it twice.
 		"one post": postAlone(t),
 		// Beyond the critical angle the disc keeps its rays for ever.
-		"glass disc": traced(t, "disc", []float64{1}, table.Coat{Side: table.AllSides, To: 1, Law: wall.Dielectric{Index: 1.5, Outside: 1}}),
+		"glass disc": trial.Traced(t, "disc", []float64{1}, table.Coat{Side: table.AllSides, To: 1, Law: wall.Dielectric{Index: 1.5, Outside: 1}}),
 	} {
-		_, err := measure.MeasureEscape(tr, runner(tr, 1, 0), 0.02)
+		_, err := leak.MeasureEscape(tr, trial.Runner(tr, 1, 0), 0.02)
 		if no := (*measure.NotMeasured)(nil); !errors.As(err, &no) {
 			t.Errorf("%s: the error is %v, want a NotMeasured", name, err)
 		}
@@ -195,10 +161,10 @@ func postAlone(t testing.TB) *sim.Tracer {
 
 // TestEscapeWorkers wants equal bits from any number of workers.
 func TestEscapeWorkers(t *testing.T) {
-	tr := traced(t, "three-posts", []float64{1, 6})
-	var first measure.EscapeRate
+	tr := trial.Traced(t, "three-posts", []float64{1, 6})
+	var first leak.EscapeRate
 	for i, n := range []int{1, 2, 7} {
-		r, err := measure.MeasureEscape(tr, runner(tr, 3, n), 0.02)
+		r, err := leak.MeasureEscape(tr, trial.Runner(tr, 3, n), 0.02)
 		if err != nil {
 			t.Fatal(err)
 		}

@@ -1,6 +1,9 @@
-package measure_test
+package reading_test
 
 import (
+	"cavitywright/sim/measure/leak"
+	"cavitywright/sim/measure/reading"
+	"cavitywright/sim/run/trial"
 	"errors"
 	"math"
 	"slices"
@@ -16,20 +19,20 @@ import (
 // taken takes readings of a table by name.
 func taken(t *testing.T, tr *sim.Tracer, workers int, names ...string) map[string]figure.Scalar {
 	t.Helper()
-	wanted, err := measure.Wanted(tr.Table(), names)
+	wanted, err := reading.Wanted(tr.Table(), names)
 	if err != nil {
 		t.Fatal(err)
 	}
 	all := map[string]figure.Scalar{}
 	for _, w := range wanted {
-		s, err := w.Take(tr, runner(tr, 5, workers), 0.05, 5)
+		s, err := w.Take(tr, trial.Runner(tr, 5, workers), 0.05, 5)
 		if err != nil {
 			t.Fatalf("%s: %v", w.Name, err)
 		}
 		if s.Name != w.Name || s.Seed != 5 || s.Unit == "" || s.Note == "" {
 			t.Errorf("%s is incomplete: %+v", w.Name, s)
 		}
-		if (s.StdErr == 0) != (w.Kind == measure.Exact) || (s.Bounces == 0) != (w.Kind == measure.Exact) {
+		if (s.StdErr == 0) != (w.Kind == reading.Exact) || (s.Bounces == 0) != (w.Kind == reading.Exact) {
 			t.Errorf("%s has the error %g on %d bounces", w.Name, s.StdErr, s.Bounces)
 		}
 		all[w.Name] = s
@@ -40,7 +43,7 @@ func taken(t *testing.T, tr *sim.Tracer, workers int, names ...string) map[strin
 // TestReadingsStadium compares with the closed forms of a stadium of
 // half-length 1 and radius 1.
 func TestReadingsStadium(t *testing.T) {
-	got := taken(t, traced(t, "stadium", []float64{1, 1}), 0)
+	got := taken(t, trial.Traced(t, "stadium", []float64{1, 1}), 0)
 	for name, want := range map[string]float64{
 		"perimeter": 10.283185307179586, "area": 7.1415926535897932, "mean-chord-exact": 2.1818117971465539,
 	} {
@@ -65,7 +68,7 @@ func TestReadingsStadium(t *testing.T) {
 // TestMeanChordLeaky wants pi A / L on a table that rays leave, too: the law
 // holds for uniform ds dp whatever the walls do afterwards.
 func TestMeanChordLeaky(t *testing.T) {
-	tr := traced(t, "cut-disc", []float64{1, 0.5}, opening(0, 0.2, 0.9))
+	tr := trial.Traced(t, "cut-disc", []float64{1, 0.5}, trial.Opening(0, 0.2, 0.9))
 	c := taken(t, tr, 0, "mean-chord")["mean-chord"]
 	if want := sim.MeanChord(tr.Table()); math.Abs(c.Value-want) > 3*c.StdErr {
 		t.Errorf("mean-chord is %g ± %g, want %g", c.Value, c.StdErr, want)
@@ -76,11 +79,11 @@ func TestMeanChordLeaky(t *testing.T) {
 // section is reached, and less where a part is out of reach.
 func TestDwell(t *testing.T) {
 	for name, tr := range map[string]*sim.Tracer{
-		"cut disc":         traced(t, "cut-disc", []float64{1, 0.5}, opening(0, 0.4, 0.6)),
-		"cut disc, arc":    traced(t, "cut-disc", []float64{1, 0.5}, opening(1, 0.1, 0.15), opening(1, 0.12, 0.2)),
-		"square with disc": traced(t, "square-with-disc", []float64{2, 0.5}, opening(0, 0, 0.2), opening(4, 0.1, 0.3)),
+		"cut disc":         trial.Traced(t, "cut-disc", []float64{1, 0.5}, trial.Opening(0, 0.4, 0.6)),
+		"cut disc, arc":    trial.Traced(t, "cut-disc", []float64{1, 0.5}, trial.Opening(1, 0.1, 0.15), trial.Opening(1, 0.12, 0.2)),
+		"square with disc": trial.Traced(t, "square-with-disc", []float64{2, 0.5}, trial.Opening(0, 0, 0.2), trial.Opening(4, 0.1, 0.3)),
 	} {
-		_, width := measure.Openings(tr.Table())
+		_, width := leak.Openings(tr.Table())
 		want := math.Pi * tr.Table().Area() / width
 		s := taken(t, tr, 0, "mean-dwell")["mean-dwell"]
 		t.Logf("%s: %.4f ± %.4f, want %.4f (%s)", name, s.Value, s.StdErr, want, s.Note)
@@ -89,8 +92,8 @@ func TestDwell(t *testing.T) {
 		}
 	}
 	// The cap's island of a mushroom cannot be reached from the stem's foot.
-	tr := traced(t, "mushroom", []float64{1, 0.5, 1}, opening(0, 0, 1))
-	_, width := measure.Openings(tr.Table())
+	tr := trial.Traced(t, "mushroom", []float64{1, 0.5, 1}, trial.Opening(0, 0, 1))
+	_, width := leak.Openings(tr.Table())
 	s := taken(t, tr, 0, "mean-dwell")["mean-dwell"]
 	// Its chaotic share of the energy surface (closed; Bunimovich, Chaos 11,
 	// 802 (2001)) is what rays from the foot visit.
@@ -104,12 +107,14 @@ func TestDwell(t *testing.T) {
 // wall to count.
 func TestOpenings(t *testing.T) {
 	mirror := func(from, to float64) table.Coat { return table.Coat{Side: 0, From: from, To: to, Law: wall.Mirror{}} }
-	tr := traced(t, "rectangle", []float64{4, 2}, opening(0, 0.25, 0.75), mirror(0.5, 0.6), opening(2, 0.9, 1))
-	doors, width := measure.Openings(tr.Table())
+	tr := trial.Traced(t, "rectangle", []float64{4, 2}, trial.Opening(0, 0.25, 0.75), mirror(0.5, 0.6), trial.Opening(2, 0.9, 1))
+	doors, width := leak.Openings(tr.Table())
 	if len(doors) != 3 || math.Abs(width-(1+0.6+0.4)) > 1e-12 {
 		t.Errorf("there are %d openings of %g together, want 3 of 2: %v", len(doors), width, doors)
 	}
 }
+
+var chaosReadings = []string{"lyapunov-per-length", "lyapunov-per-bounce", "chaotic-share-section", "chaotic-share-energy"}
 
 // TestWanted holds the list of readings to the tables that have them, and the
 // refusals to their kinds.
@@ -120,13 +125,13 @@ func TestWanted(t *testing.T) {
 		tr   *sim.Tracer
 		want []string
 	}{
-		{"closed", traced(t, "disc", []float64{1}), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact"}, chaosReadings...)},
-		{"posts", traced(t, "three-posts", []float64{1, 6}), []string{"perimeter", "escape-rate"}},
-		{"open", traced(t, "disc", []float64{1}, opening(0, 0, 0.1)), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate", "mean-dwell"}, chaosReadings...)},
-		{"glass", traced(t, "disc", []float64{1}, glass), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate"}, chaosReadings...)},
-		{"rough", traced(t, "disc", []float64{1}, table.Coat{Side: 0, To: 1, Law: wall.Rough{Share: 1}}), []string{"perimeter", "area", "mean-chord", "mean-chord-exact"}},
+		{"closed", trial.Traced(t, "disc", []float64{1}), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact"}, chaosReadings...)},
+		{"posts", trial.Traced(t, "three-posts", []float64{1, 6}), []string{"perimeter", "escape-rate"}},
+		{"open", trial.Traced(t, "disc", []float64{1}, trial.Opening(0, 0, 0.1)), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate", "mean-dwell"}, chaosReadings...)},
+		{"glass", trial.Traced(t, "disc", []float64{1}, glass), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate"}, chaosReadings...)},
+		{"rough", trial.Traced(t, "disc", []float64{1}, table.Coat{Side: 0, To: 1, Law: wall.Rough{Share: 1}}), []string{"perimeter", "area", "mean-chord", "mean-chord-exact"}},
 	} {
-		all, err := measure.Wanted(c.tr.Table(), nil)
+		all, err := reading.Wanted(c.tr.Table(), nil)
 		var got []string
 		for _, r := range all {
 			got = append(got, r.Name)
@@ -135,22 +140,22 @@ func TestWanted(t *testing.T) {
 			t.Errorf("%s: the readings are %v (%v), want %v", c.name, got, err, c.want)
 		}
 	}
-	disc := traced(t, "disc", []float64{1}).Table()
-	for _, r := range measure.Readings() {
-		if r.Kind != measure.Awaited {
+	disc := trial.Traced(t, "disc", []float64{1}).Table()
+	for _, r := range reading.Readings() {
+		if r.Kind != reading.Awaited {
 			continue
 		}
-		_, err := measure.Wanted(disc, []string{r.Name})
+		_, err := reading.Wanted(disc, []string{r.Name})
 		if no := (*measure.NotMeasured)(nil); !errors.As(err, &no) {
 			t.Errorf("%s, not measured yet, is refused with %v", r.Name, err)
 		}
 	}
-	_, err := measure.Wanted(disc, []string{"perimeter", "escape-rate"})
+	_, err := reading.Wanted(disc, []string{"perimeter", "escape-rate"})
 	if no := (*measure.NotMeasured)(nil); !errors.As(err, &no) {
 		t.Errorf("the escape rate of a closed disc is refused with %v", err)
 	}
-	_, err = measure.Wanted(disc, []string{"weight"})
-	if no := (*measure.NoReading)(nil); !errors.As(err, &no) {
+	_, err = reading.Wanted(disc, []string{"weight"})
+	if no := (*reading.NoReading)(nil); !errors.As(err, &no) {
 		t.Errorf("an unknown reading is refused with %v", err)
 	}
 }
@@ -158,13 +163,24 @@ func TestWanted(t *testing.T) {
 // TestReadingsWorkers wants equal bits from any number of workers.
 func TestReadingsWorkers(t *testing.T) {
 	rough := table.Coat{Side: 1, To: 1, Law: wall.Rough{Share: 0.3}}
-	tr := traced(t, "cut-disc", []float64{1, 0.5}, opening(0, 0.1, 0.9), rough)
+	tr := trial.Traced(t, "cut-disc", []float64{1, 0.5}, trial.Opening(0, 0.1, 0.9), rough)
 	one := taken(t, tr, 1)
 	for _, n := range []int{2, 7} {
 		for name, s := range taken(t, tr, n) {
 			if s != one[name] {
 				t.Errorf("%d workers give %+v, one gives %+v", n, s, one[name])
 			}
+		}
+	}
+}
+
+// TestChaosWorkers wants equal bits from any number of workers.
+func TestChaosWorkers(t *testing.T) {
+	tr := trial.Traced(t, "mushroom", []float64{1, 0.5, 1})
+	one := taken(t, tr, 1, chaosReadings...)
+	for name, s := range taken(t, tr, 5, chaosReadings...) {
+		if s != one[name] {
+			t.Errorf("5 workers give %+v, one gives %+v", s, one[name])
 		}
 	}
 }

@@ -1,11 +1,10 @@
-package measure
+package chaos
 
 import (
-	"fmt"
+	"cavitywright/sim/measure"
 	"math"
 
 	"cavitywright/sim"
-	"cavitywright/sim/figure"
 )
 
 // Sharing tells which orbits of a table are chaotic, in two independent ways:
@@ -15,7 +14,7 @@ import (
 // All walls are taken as mirrors.
 type Sharing struct {
 	Tracer *sim.Tracer // of mirrors
-	Starts Lattices
+	Starts measure.Lattices
 	Each   int // bounces an orbit
 }
 
@@ -32,8 +31,8 @@ func (m Sharing) Start(i int, _ func() float64) sim.Start {
 }
 
 // Tally is a *SharingTally.
-func (m Sharing) Tally() Tally {
-	return &SharingTally{of: m, trail: newTrail(m.Tracer), birkhoff: newBirkhoff(m.Tracer, m.Each), lots: lots[lot]{size: m.Starts.Points.Size()}}
+func (m Sharing) Tally() measure.Tally {
+	return &SharingTally{of: m, trail: newTrail(m.Tracer), birkhoff: newBirkhoff(m.Tracer, m.Each), lots: measure.Lots[lot]{Size: m.Starts.Points.Size()}}
 }
 
 // Method is a way to tell chaotic orbits from regular ones.
@@ -67,17 +66,17 @@ func (l *lot) add(o *lot) {
 
 // SharingTally is what is chaotic of each lattice.
 type SharingTally struct {
-	Stops    Stops
+	Stops    measure.Stops
 	Walked   int64 // bounces
 	of       Sharing
 	trail    trail
 	birkhoff birkhoff
 	start    sim.State
-	lots     lots[lot]
+	lots     measure.Lots[lot]
 }
 
 // Open begins orbit i.
-func (t *SharingTally) Open(i int) { t.lots.open(i) }
+func (t *SharingTally) Open(i int) { t.lots.Open(i) }
 
 // Add takes the opening bounce; the rest is followed by Close.
 func (t *SharingTally) Add(b *sim.Bounce) {
@@ -105,7 +104,7 @@ func (t *SharingTally) Close() {
 		t.Stops[b.Stop]++
 		return
 	}
-	row, path := t.lots.last(), t.birkhoff.path
+	row, path := t.lots.Last(), t.birkhoff.path
 	row.orbits++
 	row.path += path
 	for m, is := range [methods]bool{
@@ -121,13 +120,13 @@ func (t *SharingTally) Close() {
 }
 
 // Merge adds the next tally.
-func (t *SharingTally) Merge(next Tally) {
+func (t *SharingTally) Merge(next measure.Tally) {
 	o := next.(*SharingTally)
 	t.Walked += o.Walked
 	for i := range o.Stops {
 		t.Stops[i] += o.Stops[i]
 	}
-	t.lots.merge(&o.lots, (*lot).add)
+	t.lots.Merge(&o.lots, (*lot).add)
 }
 
 // Section is the chaotic share of the section (of ds dp) with its standard
@@ -147,29 +146,29 @@ func (t *SharingTally) Energy(by Method) (share, stderr float64) {
 // leave open: the standard deviation of Jeffreys's posterior, 0.7/n.
 func (t *SharingTally) ratio(of func(*lot) (a, b float64)) (share, stderr float64) {
 	orbits := 0.0
-	for i := range t.lots.rows {
-		orbits += t.lots.rows[i].orbits
+	for i := range t.lots.Rows {
+		orbits += t.lots.Rows[i].orbits
 	}
-	share, stderr = t.lots.ratio(of)
+	share, stderr = t.lots.Ratio(of)
 	return share, math.Max(stderr, math.Sqrt2/2/orbits)
 }
 
 const (
-	// shareWork is the number of bounces at effort 1, shareBounces that of
+	// shareWork is the number of bounces at effort 1, ShareBounces that of
 	// each orbit. It does not depend on the effort, for the share does on it.
 	shareWork    = 2e7
-	shareBounces = 2000
+	ShareBounces = 2000
 )
 
 // MeasureSharing tells the chaotic orbits of the table off mirrors; effort
 // multiplies their number, each is the number of bounces of one. The table
 // must be one that has a tangent map.
-func MeasureSharing(tr *sim.Tracer, run Runner, effort float64, each int) (*SharingTally, error) {
-	bare, err := mirrored(tr)
+func MeasureSharing(tr *sim.Tracer, run measure.Runner, effort float64, each int) (*SharingTally, error) {
+	bare, err := Mirrored(tr)
 	if err != nil {
 		return nil, err
 	}
-	starts, err := drawnLattices(bare, run, int(shareWork*effort/slowness(bare.Table())/float64(each)))
+	starts, err := measure.DrawnLattices(bare, run, int(shareWork*effort/measure.Slowness(bare.Table())/float64(each)))
 	if err != nil {
 		return nil, err
 	}
@@ -179,37 +178,3 @@ func MeasureSharing(tr *sim.Tracer, run Runner, effort float64, each int) (*Shar
 	}
 	return ran.(*SharingTally), nil
 }
-
-func chaoticSection(b bench) (figure.Scalar, error) {
-	return b.chaotic("chaotic-share-section", (*SharingTally).Section, "starts even in ds dp")
-}
-
-func chaoticEnergy(b bench) (figure.Scalar, error) {
-	return b.chaotic("chaotic-share-energy", (*SharingTally).Energy, "starts even on the energy surface")
-}
-
-// chaotic is a chaotic share, by growth.
-func (b bench) chaotic(name string, share func(*SharingTally, Method) (float64, float64), starts string) (figure.Scalar, error) {
-	if why := integrable(b.tracer.Table()); why != "" {
-		return figure.Scalar{Unit: "1", Note: why + b.asMirrors()}, nil
-	}
-	t, err := MeasureSharing(b.tracer, b.run, b.effort, shareBounces)
-	if err != nil {
-		return figure.Scalar{}, err
-	}
-	s := figure.Scalar{Unit: "1", Bounces: t.Walked}
-	if s.Value, s.StdErr = share(t, ByGrowth); math.IsNaN(s.Value) {
-		return s, &NotMeasured{name, noneFollowed}
-	}
-	other, otherErr := share(t, ByAverages)
-	s.Note = fmt.Sprintf("%s; by growth over %d bounces an orbit, %.5f ± %.5f by weighted Birkhoff averages", starts, shareBounces, other, otherErr)
-	if before, _ := share(t, ByHalf); math.Abs(s.Value-before) > driftErrors*s.StdErr {
-		s.Note += fmt.Sprintf("; still drifting: %.5f over %d bounces", before, shareBounces/2)
-	}
-	s.Note += b.asMirrors() + t.Stops.remark()
-	return s, nil
-}
-
-// driftErrors is the number of standard errors by which a doubling of the
-// bounces must change a share for it to count as drifting.
-const driftErrors = 2
