@@ -110,3 +110,15 @@ func unbroken(words []string) []string {
 }
 
 func endsInDigit(s string) bool { return s[len(s)-1] >= '0' && s[len(s)-1] <= '9' }
+
+// PlotOf is where a figure drawn into a box has its axes; ok is false where it
+// has none.
+func PlotOf(f figure.Figure, box Box, look Look) (p Plot, ok bool) {
+	switch f := f.(type) {
+	case figure.Dots:
+		return LayoutDots(f, box, look), true
+	case figure.Series:
+		return LayoutSeries(f, box, look), true
+	}
+	return Plot{}, false
+}

@@ -186,3 +186,16 @@ func (t *Table) SideRange(item, side int) (s0, s1 float64, ok bool) {
 	}
 	return s0, s1, ok
 }
+
+// SameWall reports whether two tables have the same shapes in the same places,
+// the same coats and the same unit, told by what they share: what was measured
+// on the one holds for the other. It may answer no where all was built anew.
+func (t *Table) SameWall(o *Table) bool {
+	a, b := t.Design(), o.Design()
+	return t == o || a.Unit == b.Unit && a.Bare == b.Bare && shared(a.Items, b.Items) && shared(a.Coats, b.Coats)
+}
+
+// shared reports whether two slices are one, or both empty.
+func shared[T any](a, b []T) bool {
+	return len(a) == len(b) && (len(a) == 0 || &a[0] == &b[0])
+}

@@ -1,7 +1,6 @@
 package main
 
 import (
-	"cavitywright/sim/measure/reading"
 	"context"
 	"errors"
 	"fmt"
@@ -14,6 +13,7 @@ import (
 	"cavitywright/sim"
 	"cavitywright/sim/figure"
 	"cavitywright/sim/measure"
+	"cavitywright/sim/measure/reading"
 )
 
 // takeAll takes the readings of a table.

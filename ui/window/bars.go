@@ -86,7 +86,7 @@ func (w *Window) portraitBar() fyne.CanvasObject {
 	w.head.bounces = bounces
 	w.filling = quiet("stop", "", w.toggleFilling)
 	return bar("Portrait", []fyne.CanvasObject{quiet("seed", "Seed evenly", func() { w.sayErr(tool.SeedEvenly(w.session)) })},
-		quiet("figure", "Readings", w.openReadings), widget.NewLabel("bounces"), bounces, w.filling,
+		widget.NewLabel("bounces"), bounces, w.filling,
 		quiet("fit", "", func() { w.portrait.Key(fyne.KeyF) }), quiet("grow", "", func() { w.grow(2) }))
 }
 

@@ -69,7 +69,7 @@ func (w *Window) allCommands() []command {
 		{"Launch", "Let the balls run or stand", nil, fyne.KeyP, "P", w.toggleMotion, nil},
 		{"Launch", "Stop or go on filling the portrait", nil, fyne.KeyS, "S", w.toggleFilling, nil},
 		{"Launch", "Bundle: fan angle, beam width, number…", nil, fyne.KeyB, "B", w.askBundle, nil},
-		{"Launch", "Measure the readings…", nil, fyne.KeyR, "R", w.openReadings, nil},
+		{"View", "Readings", nil, fyne.KeyR, "R", func() { w.drawer.named("Readings") }, nil},
 		{"View", "Table fills the window", nil, fyne.Key1, "1", func() { w.grow(0) }, nil},
 		{"View", "Rays fill the window", nil, fyne.Key2, "2", func() { w.grow(1) }, nil},
 		{"View", "Portrait fills the window", nil, fyne.Key3, "3", func() { w.grow(2) }, nil},

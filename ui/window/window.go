@@ -39,13 +39,16 @@ type Window struct {
 	grown    int // which pane fills the window, -1 for none
 	head     *header
 	foot     *footer
+	drawer   *drawer
+	floor    *fyne.Container // the panes, over the drawer where it is open
 	tools    *choice
 	bundle   *choice
 	filling  *widget.Button
 	play     *widget.Button
 	commands []command
 	disk     disk
-	task     *live.Task // long work beside the window; nil for none
+	task     *live.Task // the figure that is being written; nil for none
+	works    []*work    // those of the sheets
 	rate     rate
 	variant  fyne.ThemeVariant
 	watch    func(State)
@@ -105,6 +108,9 @@ func (w *Window) ShowAndRun() {
 	})
 	w.app.Lifecycle().SetOnStopped(func() {
 		w.stopTask()
+		for _, k := range w.works {
+			k.Drop()
+		}
 		w.engine.Close()
 	})
 	w.win.ShowAndRun()
@@ -130,7 +136,30 @@ func (w *Window) layout() {
 	w.columns.SetOffset(p.FloatWithFallback("columns", 0.46))
 	w.right.SetOffset(p.FloatWithFallback("rows", 0.46))
 	w.center = container.NewStack(w.columns)
-	w.win.SetContent(container.NewBorder(w.head.box, w.foot.box, nil, nil, w.center))
+	w.drawer = newDrawer(w, []sheet{
+		newReadingsSheet(w),
+	})
+	w.floor = container.NewStack()
+	w.arrange()
+	w.win.SetContent(container.NewBorder(w.head.box, container.NewVBox(w.drawer.edge, w.foot.box), nil, nil, w.floor))
+}
+
+// arrange puts the panes over the drawer, or lets them have all the room.
+func (w *Window) arrange() {
+	p := w.app.Preferences()
+	for _, o := range w.floor.Objects {
+		if split, is := o.(*container.Split); is {
+			p.SetFloat("drawer", split.Offset)
+		}
+	}
+	w.floor.RemoveAll()
+	if w.drawer.open < 0 {
+		w.floor.Add(w.center)
+		return
+	}
+	split := container.NewVSplit(w.center, w.drawer.body)
+	split.SetOffset(p.FloatWithFallback("drawer", 0.6))
+	w.floor.Add(split)
 }
 
 // grow lets pane i fill the window, or puts it back.
@@ -162,6 +191,7 @@ func (w *Window) changed() {
 	w.values.Refresh()
 	w.editor.Redraw()
 	w.foot.refresh()
+	w.drawer.changed()
 	w.show()
 	w.disk.changed()
 	w.pickUp()

@@ -13,6 +13,7 @@ import (
 	"cavitywright/assets"
 	"cavitywright/render/export"
 	"cavitywright/table"
+	"cavitywright/table/edit"
 	"cavitywright/ui/session"
 
 	"fyne.io/fyne/v2"
@@ -276,23 +277,42 @@ func TestCommands(t *testing.T) {
 	}
 }
 
-// TestReadings: the sheet measures what the table has, and closing it stops.
+// TestReadings: the sheet measures what the table has, stops when asked, and
+// holds nothing of one wall beside another: not what was measured, and not what
+// comes late.
 func TestReadings(t *testing.T) {
 	w, pump := opened(t, 5, fyne.NewSize(1280, 800)) // the ellipse: integrable
-	w.openReadings()
-	if w.task == nil {
-		t.Fatal("nothing is measured")
-	}
-	for range 4 {
-		pump()
-	}
-	w.stopTask()
-	for range 100 {
-		if pump(); w.task == nil {
-			break
+	w.loose(fyne.KeyR)
+	s := w.drawer.sheets[w.drawer.open].(*readingsSheet)
+	s.measure()
+	wait := func(what string, ready func() bool) {
+		t.Helper()
+		for range 100 {
+			if pump(); ready() {
+				return
+			}
 		}
+		t.Fatalf("%s: waited in vain", what)
 	}
-	if w.task != nil {
-		t.Error("the measurement does not stop")
+	wait("the first numbers", func() bool { return len(s.rows) >= 3 })
+	s.work.Stop()
+	wait("the end", func() bool { return !s.work.Busy() })
+	if len(s.rows) == 0 || len(s.list.rows) < len(s.rows) || s.write.Disabled() {
+		t.Errorf("after the stop %d numbers stand, %d are shown", len(s.rows), len(s.list.rows))
+	}
+	s.measure()
+	if err := w.session.Do(edit.SetValue{Item: 0, Param: 0, Value: 5}); err != nil {
+		t.Fatal(err)
+	}
+	if len(s.rows) != 0 || len(s.list.rows) != 0 || s.work.Busy() {
+		t.Errorf("beside the new wall stand %d old numbers", len(s.list.rows))
+	}
+	pump()
+	if len(s.rows) != 0 || len(s.list.rows) != 0 {
+		t.Error("numbers of the old wall came late")
+	}
+	w.loose(fyne.KeyR)
+	if w.drawer.open != -1 {
+		t.Error("the key does not shut the drawer")
 	}
 }

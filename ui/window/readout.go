@@ -1,0 +1,57 @@
+package window
+
+import (
+	"cavitywright/ui/pane"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/layout"
+	"fyne.io/fyne/v2/widget"
+)
+
+// readout is a list of numbers: the name, the value with its error and unit,
+// and one click away what it is and on what it was measured.
+type readout struct {
+	box  *fyne.Container
+	rows []readoutRow
+	open map[string]pane.Visibility // the rows whose definition is shown
+}
+
+// readoutRow is one number. Value carries its unit and error; About is its
+// definition and what has to be said of it, in sentences.
+type readoutRow struct{ Name, Value, About string }
+
+func newReadout() *readout {
+	r := &readout{box: container.NewVBox(), open: map[string]pane.Visibility{}}
+	r.box.Layout = layout.NewCustomPaddedVBoxLayout(0)
+	return r
+}
+
+// nameWidth and valueWidth are the columns of a readout.
+const (
+	nameWidth  = 190
+	valueWidth = 220
+)
+
+// Set shows other rows; the definitions that were open stay so.
+func (r *readout) Set(rows []readoutRow) {
+	r.rows = rows
+	r.box.RemoveAll()
+	for _, row := range rows {
+		name := quiet("", row.Name, func() {
+			r.open[row.Name] = pane.Visible - r.open[row.Name]
+			r.Set(r.rows)
+		})
+		name.Alignment = widget.ButtonAlignLeading
+		value := widget.NewLabel(row.Value)
+		value.TextStyle.Bold = true
+		value.Truncation = fyne.TextTruncateEllipsis
+		r.box.Add(container.NewBorder(nil, nil, container.NewGridWrap(fyne.NewSize(nameWidth, 30), name), nil, value))
+		if r.open[row.Name] == pane.Visible {
+			about := widget.NewLabel(row.About)
+			about.Wrapping = fyne.TextWrapWord
+			r.box.Add(about)
+		}
+	}
+	r.box.Refresh()
+}

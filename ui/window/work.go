@@ -1,0 +1,99 @@
+package window
+
+import (
+	"context"
+
+	"cavitywright/sim"
+	"cavitywright/sim/measure"
+	"cavitywright/sim/run"
+	"cavitywright/table"
+	"cavitywright/ui/live"
+)
+
+// work is the long work of one sheet, at most one at a time, bound to the wall
+// that it was begun for: when the wall changes it ends, and nothing of it is
+// shown any more. No number stands beside another wall.
+type work struct {
+	w    *Window
+	task *live.Task
+	on   *table.Table // the table of the work at hand, or of what it brought
+	turn int          // counts the works, so that a late post of an old one is known
+}
+
+// newWork is the work of a sheet; it ends with the window.
+func newWork(w *Window) *work {
+	k := &work{w: w}
+	w.works = append(w.works, k)
+	return k
+}
+
+// Fits reports whether the work at hand, or what it brought, belongs to the
+// table as it is now.
+func (k *work) Fits() bool { return k.on != nil && k.on.SameWall(k.w.session.Table()) }
+
+// Busy reports whether work is under way.
+func (k *work) Busy() bool { return k.task != nil }
+
+// Stop asks the work to end; its done is still called.
+func (k *work) Stop() {
+	if k.task != nil {
+		k.task.Stop()
+	}
+}
+
+// Drop ends the work and forgets what it was for: nothing of it is shown, its
+// done included.
+func (k *work) Drop() {
+	k.Stop()
+	k.task, k.on = nil, nil
+	k.turn++
+}
+
+// desk is what long work is given.
+type desk struct {
+	ctx    context.Context
+	tracer *sim.Tracer
+	runner measure.Runner
+	seed   uint64
+	// show runs a function on the window's goroutine, unless the wall has
+	// changed since or other work was begun.
+	show func(func())
+}
+
+// Start begins work on the table as it is now; work that is under way is
+// dropped. progress and done are called on the window's goroutine and only
+// while the work fits the wall; either may be nil.
+func (k *work) Start(do func(d desk) error, progress func(share float64), done func(error)) {
+	k.Drop()
+	t := k.w.session.Table()
+	k.on = t
+	turn := k.turn
+	fits := func() bool { return k.turn == turn && t.SameWall(k.w.session.Table()) }
+	k.task = live.Start(k.w.post, func(ctx context.Context, share func(float64)) error {
+		d := desk{ctx: ctx, tracer: sim.Compile(t), seed: t.Design().Study.Seed}
+		d.runner = func(m measure.Measurement) (measure.Tally, error) {
+			return run.Run(ctx, run.Job{Tracer: d.tracer, Measure: m, Seed: d.seed,
+				Progress: func(done, total int, _ measure.Tally) { share(float64(done) / float64(total)) }})
+		}
+		d.show = func(f func()) {
+			k.w.post(func() {
+				if fits() {
+					f()
+				}
+			})
+		}
+		return do(d)
+	}, func(x float64) {
+		if progress != nil && fits() {
+			progress(x)
+		}
+	}, func(err error) {
+		if k.turn != turn {
+			return
+		}
+		k.task = nil
+		if done != nil && fits() {
+			done(err)
+		}
+	})
+}
