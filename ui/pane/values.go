@@ -92,7 +92,7 @@ func (v *Values) build() {
 		return
 	}
 	it := v.item()
-	grid := container.NewGridWithColumns(2)
+	grid := container.New(&columns{least: 268})
 	switch s := it.Shape.(type) {
 	case shape.Figure:
 		v.name.SetText(s.Family().Title)

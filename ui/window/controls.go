@@ -70,21 +70,11 @@ func title(s string) fyne.CanvasObject {
 	return t
 }
 
-// bar is a pane's header: its name, then its controls; what belongs at the
-// right end comes last.
-func bar(name string, left []fyne.CanvasObject, right ...fyne.CanvasObject) fyne.CanvasObject {
-	row := append([]fyne.CanvasObject{title(name)}, left...)
-	row = append(row, layout.NewSpacer())
-	row = append(row, right...)
-	b := container.NewHBox(row...)
-	b.Layout = layout.NewCustomPaddedHBoxLayout(2)
-	return b
-}
-
 // caption is one line of small text that is cut off where it does not fit.
 type caption struct {
 	widget.BaseWidget
 	text  *canvas.Text
+	full  string // what is cut where it does not fit
 	align fyne.TextAlign
 	min   float32
 }
@@ -98,10 +88,10 @@ func newCaption(align fyne.TextAlign, min float32) *caption {
 }
 
 func (c *caption) set(s string) {
-	if s == c.text.Text {
+	if s == c.full {
 		return
 	}
-	c.text.Text = s
+	c.full = s
 	c.fit()
 	c.text.Refresh()
 }
@@ -109,10 +99,11 @@ func (c *caption) set(s string) {
 // fit cuts the text to the width with an ellipsis.
 func (c *caption) fit() {
 	w := c.Size().Width
+	c.text.Text = c.full
 	if w <= 0 {
 		return
 	}
-	r := []rune(c.text.Text)
+	r := []rune(c.full)
 	for len(r) > 1 && fyne.MeasureText(string(r), c.text.TextSize, c.text.TextStyle).Width > w {
 		r = r[:len(r)-2]
 		r = append(r, '…')
@@ -128,6 +119,7 @@ func (c *caption) CreateRenderer() fyne.WidgetRenderer {
 type captionRenderer struct{ c *caption }
 
 func (r *captionRenderer) Layout(s fyne.Size) {
+	r.c.fit()
 	r.c.text.Move(fyne.NewPos(0, (s.Height-r.c.text.MinSize().Height)/2))
 	r.c.text.Resize(fyne.NewSize(s.Width, r.c.text.MinSize().Height))
 }

@@ -9,7 +9,7 @@ import (
 
 // sheet is one page of the drawer: a subject with its numbers and figures.
 type sheet interface {
-	// Name is the word on the drawer's edge.
+	// Name is the word on the line of sheets.
 	Name() string
 	// View is what the page shows; it is asked for once, when the page is
 	// opened for the first time.
@@ -21,7 +21,7 @@ type sheet interface {
 	Closed()
 }
 
-// drawer is the lower part of the window: its edge carries the names of the
+// drawer is the right part of the window: the line under it carries the names of the
 // sheets, and a click on one opens it, or shuts the drawer.
 type drawer struct {
 	w      *Window
@@ -35,7 +35,7 @@ type drawer struct {
 
 func newDrawer(w *Window, sheets []sheet) *drawer {
 	d := &drawer{w: w, sheets: sheets, views: make([]fyne.CanvasObject, len(sheets)), open: -1, body: container.NewStack()}
-	row := container.NewHBox()
+	row := container.NewHBox(layout.NewSpacer())
 	row.Layout = layout.NewCustomPaddedHBoxLayout(1)
 	for i, s := range sheets {
 		b := quiet("", s.Name(), func() { d.toggle(i) })

@@ -28,7 +28,7 @@ type readingsSheet struct {
 	rows  []figure.Scalar // what was measured
 	shown []readoutRow
 	list  *readout
-	state *widget.Label
+	state *caption
 	run   *widget.Button
 	stop  *widget.Button
 	write *widget.Button
@@ -43,13 +43,13 @@ func (s *readingsSheet) Name() string { return "Readings" }
 
 // View is the list with its buttons.
 func (s *readingsSheet) View() fyne.CanvasObject {
-	s.list, s.state = newReadout(), widget.NewLabel("")
+	s.list, s.state = newReadout(), newCaption(fyne.TextAlignLeading, 120)
 	s.run = quiet("run", "Measure", s.measure)
 	s.stop = quiet("stop", "Stop", s.work.Stop)
 	s.write = quiet("save", "Write as CSV", s.askWrite)
 	s.stop.Hide()
 	s.write.Disable()
-	top := container.NewHBox(s.run, s.stop, s.state, layout.NewSpacer(), s.write)
+	top := container.NewVBox(bar("Readings", []fyne.CanvasObject{s.run, s.stop}, s.write), container.New(layout.NewCustomPaddedLayout(0, 4, 10, 10), s.state))
 	return container.NewBorder(top, nil, nil, nil, container.NewVScroll(s.list.box))
 }
 
@@ -64,7 +64,7 @@ func (s *readingsSheet) Changed() {
 	s.stop.Hide()
 	s.run.Enable()
 	s.write.Disable()
-	s.state.SetText("Not measured yet on this wall.")
+	s.state.set("Not measured yet on this wall.")
 }
 
 // Closed lets the work go on: what it brings is seen when the sheet is opened
@@ -85,7 +85,7 @@ func (s *readingsSheet) measure() {
 	at := ""
 	s.work.Start(func(d desk) error {
 		for _, r := range wanted {
-			d.show(func() { at = r.Name; s.state.SetText(at) })
+			d.show(func() { at = r.Name; s.state.set(at) })
 			row, err := r.Take(d.tracer, d.runner, 1, d.seed)
 			if no := (*measure.NotMeasured)(nil); errors.As(err, &no) {
 				d.show(func() { s.addLine(readoutRow{r.Name, "none", err.Error()}) })
@@ -98,17 +98,17 @@ func (s *readingsSheet) measure() {
 		}
 		return nil
 	}, func(x float64) {
-		s.state.SetText(fmt.Sprintf("%s, %.0f %%", at, 100*x))
+		s.state.set(fmt.Sprintf("%s, %.0f %%", at, 100*x))
 	}, func(err error) {
 		s.stop.Hide()
 		s.run.Enable()
 		switch {
 		case errors.Is(err, context.Canceled):
-			s.state.SetText("Stopped; what stands here was measured.")
+			s.state.set("Stopped; what stands here was measured.")
 		case err != nil:
-			s.state.SetText(sentence(err.Error()))
+			s.state.set(sentence(err.Error()))
 		default:
-			s.state.SetText("All measured.")
+			s.state.set("All measured.")
 		}
 		if len(s.rows) > 0 {
 			s.write.Enable()

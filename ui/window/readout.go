@@ -27,11 +27,8 @@ func newReadout() *readout {
 	return r
 }
 
-// nameWidth and valueWidth are the columns of a readout.
-const (
-	nameWidth  = 190
-	valueWidth = 220
-)
+// nameWidth is the width of the column of names.
+const nameWidth = 190
 
 // Set shows other rows; the definitions that were open stay so.
 func (r *readout) Set(rows []readoutRow) {

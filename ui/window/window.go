@@ -40,7 +40,7 @@ type Window struct {
 	head     *header
 	foot     *footer
 	drawer   *drawer
-	floor    *fyne.Container // the panes, over the drawer where it is open
+	floor    *fyne.Container // the panes, and the drawer beside them where it is open
 	tools    *choice
 	bundle   *choice
 	filling  *widget.Button
@@ -144,7 +144,7 @@ func (w *Window) layout() {
 	w.win.SetContent(container.NewBorder(w.head.box, container.NewVBox(w.drawer.edge, w.foot.box), nil, nil, w.floor))
 }
 
-// arrange puts the panes over the drawer, or lets them have all the room.
+// arrange puts the panes beside the drawer, or lets them have all the room.
 func (w *Window) arrange() {
 	p := w.app.Preferences()
 	for _, o := range w.floor.Objects {
@@ -157,8 +157,8 @@ func (w *Window) arrange() {
 		w.floor.Add(w.center)
 		return
 	}
-	split := container.NewVSplit(w.center, w.drawer.body)
-	split.SetOffset(p.FloatWithFallback("drawer", 0.6))
+	split := container.NewHSplit(w.center, w.drawer.body)
+	split.SetOffset(p.FloatWithFallback("drawer", 0.68))
 	w.floor.Add(split)
 }
 
