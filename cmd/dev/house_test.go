@@ -22,7 +22,7 @@ var floors = [][]string{
 	{"table/wall"},
 	{"table/shape"},
 	{"table"},
-	{"table/edit", "table/tablefile"},
+	{"table/edit", "table/tablefile", "table/dial"},
 	{"sim"},
 	{"sim/figure"},
 	{"sim/measure"},
