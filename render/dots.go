@@ -18,6 +18,7 @@ func DrawAxes(c Canvas, f figure.Dots, p Plot, look Look) {
 func drawFrame(c Canvas, f figure.Dots, p Plot, look Look) {
 	if f.Strip {
 		drawStrip(c, f, p, look)
+		drawCoats(c, f.X, p, look)
 	}
 	drawAxes(c, p, look)
 	drawJoints(c, f, p, look)
@@ -63,8 +64,8 @@ func DotRadius(f figure.Dots, p Plot, look Look) float64 {
 	return look.Dot * min(max(factor, leastDot), largestDot)
 }
 
-// DrawMarks draws what lies over the dots: dashed critical lines, and a line
-// where a loop of the wall begins.
+// DrawMarks draws what lies over the dots: dashed critical lines, a line where
+// a loop of the wall begins, and the spots.
 func DrawMarks(c Canvas, f figure.Dots, p Plot, look Look) {
 	for _, m := range f.X.Marks {
 		x := look.snap(p.ToX(m.At))
@@ -74,6 +75,7 @@ func DrawMarks(c Canvas, f figure.Dots, p Plot, look Look) {
 		}
 	}
 	drawLevels(c, f.Y.Marks, p, look)
+	drawSpots(c, f, p, look)
 }
 
 // drawLevels draws the marks of a y axis: dashed lines right across, with
@@ -87,7 +89,15 @@ func drawLevels(c Canvas, marks []figure.Mark, p Plot, look Look) {
 		if !(y >= p.Frame.Min.Y && y <= p.Frame.Max.Y) {
 			continue
 		}
-		line := Segment(Point{p.Frame.Min.X, look.snap(y)}, Point{p.Frame.Max.X, look.snap(y)})
+		x0, x1 := p.Frame.Min.X, p.Frame.Max.X
+		if m.From < m.To {
+			a, b := p.ToX(m.From), p.ToX(m.To)
+			x0, x1 = max(x0, min(a, b)), min(x1, max(a, b))
+		}
+		if !(x0 < x1) {
+			continue
+		}
+		line := Segment(Point{x0, look.snap(y)}, Point{x1, look.snap(y)})
 		if m.Kind == figure.Critical {
 			c.Stroke(line, Pen{Width: 3 * look.Hair, Color: look.Paper, Cap: Butt})
 			dash := 1.6 * look.Tick
@@ -182,6 +192,10 @@ func drawAxes(c Canvas, p Plot, look Look) {
 	}
 	if p.detail >= titled {
 		drawTitles(c, p, look)
+	}
+	if len(p.keys) > 0 {
+		bottom := p.Box.Max.Y - look.Margin - captionHeight(p.caption, math.Inf(1), look)
+		drawKeyRows(c, p.keys, p.Box.Min.X+look.Margin, bottom-float64(len(p.keys))*keyLine*look.Small, look)
 	}
 	drawCaption(c, p.caption, p.Box.Min.X+look.Margin, p.Box.Max.Y-look.Margin, look)
 }

@@ -22,8 +22,14 @@ func Draw(c Canvas, f figure.Figure, box Box, look Look) {
 		drawPaths(c, f, box, look)
 	case figure.Series:
 		drawSeries(c, f, LayoutSeries(f, box, look), look)
+	case figure.Polar:
+		drawPolar(c, f, box, look)
+	case figure.Grid:
+		drawGrid(c, f, LayoutGrid(f, box, look), look)
 	case figure.Scalars:
 		drawScalars(c, f, box, look)
+	case figure.Sheet:
+		drawSheet(c, f, box, look)
 	default:
 		panic("render: a figure of an unknown kind")
 	}
@@ -34,9 +40,13 @@ func Draw(c Canvas, f figure.Figure, box Box, look Look) {
 func Height(f figure.Figure, width float64, look Look) float64 {
 	switch f := f.(type) {
 	case figure.Dots:
-		return 0.62*width + captionHeight(f.Caption, width, look)
+		return 0.62*width + keysHeight(f.X.Keys, width-2*look.Margin, look) + captionHeight(f.Caption, width, look)
 	case figure.Series:
 		return 0.62*width + captionHeight(f.Caption, width, look)
+	case figure.Polar:
+		return polarHeight(f, width, look)
+	case figure.Grid:
+		return 0.62*width + barRoom(look) + captionHeight(f.Caption, width, look)
 	case figure.Paths:
 		e := Bounds(f)
 		edge := 2 * (look.Margin + look.Wall)
@@ -49,6 +59,8 @@ func Height(f figure.Figure, width float64, look Look) float64 {
 		return (width-edge)*aspect + edge + used
 	case figure.Scalars:
 		return scalarsHeight(f, width, look)
+	case figure.Sheet:
+		return sheetAspect * width
 	}
 	panic("render: a figure of an unknown kind")
 }
@@ -119,6 +131,8 @@ func PlotOf(f figure.Figure, box Box, look Look) (p Plot, ok bool) {
 		return LayoutDots(f, box, look), true
 	case figure.Series:
 		return LayoutSeries(f, box, look), true
+	case figure.Grid:
+		return LayoutGrid(f, box, look).Plot, true
 	}
 	return Plot{}, false
 }

@@ -30,7 +30,8 @@ func TestDrawBearsAnything(t *testing.T) {
 		for _, f := range []figure.Figure{
 			figure.Dots{X: axis.Draw(t, "X"), Y: axis.Draw(t, "Y"), Strip: true, StripLo: odd.Draw(t, "s0"), StripHi: odd.Draw(t, "s1"),
 				Sets: []figure.DotSet{{Hue: hue, X: xs, Y: ys}}},
-			figure.Paths{Lines: lines},
+			figure.Paths{Lines: lines, Labels: []figure.Label{{X: odd.Draw(t, "lx"), Y: odd.Draw(t, "ly"), Text: "3 mm"}}},
+			figure.Sheet{Title: "T", Rows: []figure.SheetRow{{Height: 1, Blocks: []figure.Block{{Heading: "B", Width: 1, Show: figure.Paths{Lines: lines}}}}}},
 			figure.Series{X: axis.Draw(t, "X"), Y: axis.Draw(t, "Y"), Curves: []figure.Curve{{Hue: hue, X: xs, Y: ys, Err: xs, Name: "c"}}},
 			figure.Scalars{Rows: []figure.Scalar{{Value: odd.Draw(t, "v"), StdErr: odd.Draw(t, "e")}}},
 		} {

@@ -10,12 +10,14 @@ import (
 // drawPaths draws a table with its rays, fitted into a box.
 func drawPaths(c Canvas, f figure.Paths, box Box, look Look) {
 	room, caption, _ := pathsRoom(f, box, look)
+	keys := keyRows(f.Keys, box.W()-2*look.Margin, look)
 	v := Fit(Bounds(f), room, look)
 	DrawPaths(c, f, v, look)
 	if room == box {
 		return // too small for any writing
 	}
 	DrawScaleBar(c, f.Unit, v, NewBox(room.Min.X, room.Max.Y, room.W(), barHeight(look)), look)
+	drawKeyRows(c, keys, box.Min.X+look.Margin, room.Max.Y+barHeight(look)+keyGap*look.Small, look)
 	drawCaption(c, caption, box.Min.X+look.Margin, box.Max.Y-look.Margin, look)
 }
 
@@ -27,6 +29,9 @@ func pathsRoom(f figure.Paths, box Box, look Look) (room Box, caption []string, 
 	if n := float64(len(caption)); n > 0 {
 		used += (n-1)*lineHeight*look.Small + (captionGap+letter.Ascent+letter.Descent)*look.Small
 	}
+	if len(f.Keys) > 0 {
+		used += keysHeight(f.Keys, box.W()-2*look.Margin, look) + keyGap*look.Small
+	}
 	used += look.Margin
 	if box.H() > 0 && used > box.H()/2 {
 		return box, nil, 0
@@ -36,6 +41,9 @@ func pathsRoom(f figure.Paths, box Box, look Look) (room Box, caption []string, 
 	return room, caption, used
 }
 
+// keyGap is between the scale bar and the legend, in small type sizes.
+const keyGap = 0.3
+
 func barHeight(look Look) float64 { return 1.1 * look.Small }
 
 // DrawPaths draws the lines of a drawing in a view, cut off at its box:
@@ -43,12 +51,25 @@ func barHeight(look Look) float64 { return 1.1 * look.Small }
 // one before, whatever their order in the figure.
 func DrawPaths(c Canvas, f figure.Paths, v View, look Look) {
 	drawFloor(c, f, v, look)
-	for _, role := range [...]figure.Role{figure.Construct, figure.Wall, figure.JointMark, figure.Ray, figure.Ball} {
+	for _, role := range [...]figure.Role{figure.Construct, figure.Extension, figure.Dimension, figure.Wall, figure.Coat, figure.JointMark, figure.Ray, figure.Ball} {
 		for _, l := range f.Lines {
 			if l.Role == role {
 				drawLine(c, l, v, look)
 			}
 		}
+	}
+	for _, l := range f.Labels {
+		drawLabel(c, l, v, look)
+	}
+}
+
+// drawLabel sets a word on a patch of paper.
+func drawLabel(c Canvas, l figure.Label, v View, look Look) {
+	at := v.ToCanvas(l.X, l.Y)
+	w, h := look.Small*letter.Width(l.Text, letter.Regular)/2+look.Hair, look.Small*0.6
+	if patch := NewBox(at.X-w, at.Y-h, 2*w, 2*h); v.Box.Contains(at) {
+		c.Fill(patch.Path(), look.Paper)
+		c.Text(Text{At: at, Size: look.Small, String: l.Text, H: Center, V: Middle, Color: look.Ink})
 	}
 }
 
@@ -73,17 +94,52 @@ func drawLine(c Canvas, l figure.Line, v View, look Look) {
 		drawWall(c, l, v, look)
 		return
 	}
+	if l.Role == figure.Coat {
+		drawCoat(c, l, v, look)
+		return
+	}
 	var p Path
 	appendLine(&p, l, v)
 	p = ClipStroke(p, v.Box, v.Box.W())
 	switch l.Role {
 	case figure.Construct:
 		c.Stroke(p, Pen{Width: look.Hair, Color: look.Faint, Dash: []float64{look.Tick, look.Tick}, Cap: Butt})
-	case figure.JointMark:
+	case figure.JointMark, figure.Extension:
+		width := look.Hair
+		if l.Texture == figure.Gap {
+			width *= postWidth
+		}
+		c.Stroke(p, Pen{Width: width, Color: look.Ink, Cap: Butt})
+	case figure.Dimension:
 		c.Stroke(p, Pen{Width: look.Hair, Color: look.Ink, Cap: Butt})
+		drawHeads(c, l, v, look)
 	default:
 		c.Stroke(p, Pen{Width: look.Line, Color: look.Orbit(l.Hue)})
 	}
+}
+
+// drawHeads draws arrow heads at both ends of a line, pointing outwards.
+func drawHeads(c Canvas, l figure.Line, v View, look Look) {
+	n := min(len(l.X), len(l.Y))
+	if n < 2 {
+		return
+	}
+	head := func(tip, from Point) {
+		d := math.Hypot(tip.X-from.X, tip.Y-from.Y)
+		if !(d > 0) || !v.Box.Contains(tip) {
+			return
+		}
+		x, y := (tip.X-from.X)/d*look.Tick*1.4, (tip.Y-from.Y)/d*look.Tick*1.4
+		var p Path
+		p.MoveTo(tip.X, tip.Y)
+		p.LineTo(tip.X-x-y/4, tip.Y-y+x/4)
+		p.LineTo(tip.X-x+y/4, tip.Y-y-x/4)
+		p.Close()
+		c.Fill(p, look.Ink)
+	}
+	at := func(i int) Point { return v.ToCanvas(l.X[i], l.Y[i]) }
+	head(at(0), at(1))
+	head(at(n-1), at(n-2))
 }
 
 // ballRadius is the radius of a ball in widths of a ray.

@@ -20,6 +20,7 @@ type Plot struct {
 	x, y           rule
 	xTitle, yTitle string
 	caption        []string
+	keys           []keyRow
 	detail         detail
 }
 
@@ -154,6 +155,8 @@ func layoutAt(d detail, x, y figure.Axis, strip bool, caption []string, box Box,
 		if n := float64(len(p.caption)); n > 0 {
 			frame.Max.Y -= (n-1)*lineHeight*look.Small + (captionGap+letter.Ascent)*look.Small
 		}
+		p.keys = keyRows(x.Keys, frame.W(), look)
+		frame.Max.Y -= keysHeight(x.Keys, frame.W(), look)
 	}
 	if d >= titled {
 		frame.Max.Y -= (letter.CapHeight+letter.Descent)*look.Text + titleGap*look.Small
@@ -169,7 +172,7 @@ func layoutAt(d detail, x, y figure.Axis, strip bool, caption []string, box Box,
 		}
 	}
 	if strip {
-		frame.Max.Y -= look.Tick + look.Strip
+		frame.Max.Y -= look.Tick + coatRoom(x, look) + look.Strip
 	}
 	frame.Max.Y, frame.Min.Y = look.floor(frame.Max.Y), look.ceil(frame.Min.Y)
 	ylo, yhi := mended(y)
@@ -183,7 +186,7 @@ func layoutAt(d detail, x, y figure.Axis, strip bool, caption []string, box Box,
 	p.Frame = frame
 	p.y = newRule(y, frame.Max.Y, frame.Min.Y)
 	if strip {
-		top := look.floor(frame.Max.Y + look.Tick)
+		top := look.floor(frame.Max.Y + look.Tick + coatRoom(x, look))
 		p.Strip = Box{Point{frame.Min.X, top}, Point{frame.Max.X, top + look.ceil(look.Strip)}}
 	}
 	p.xTitle, p.yTitle = title(x, p.X.Exp), title(y, p.Y.Exp)

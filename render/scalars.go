@@ -44,7 +44,9 @@ func scalarRows(f figure.Scalars, width float64, look Look) ([]scalarRow, column
 		if w.Error != "" {
 			r.err = "± " + w.Error
 		}
-		r.err = strings.TrimSpace(r.err + " " + unitText(s.Unit))
+		if s.Unit != "1" {
+			r.err = strings.TrimSpace(r.err + " " + unitText(s.Unit))
+		}
 		rows[i] = r
 		name = max(name, size*letter.Width(r.name, letter.Bold))
 		value = max(value, size*letter.Width(r.value, letter.Regular))

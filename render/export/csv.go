@@ -5,6 +5,7 @@ import (
 	"encoding/csv"
 	"fmt"
 	"io"
+	"math"
 	"strconv"
 	"strings"
 
@@ -29,6 +30,10 @@ func writeCSV(w io.Writer, f figure.Figure, o Options) error {
 		pathRows(b, rows, f)
 	case figure.Series:
 		seriesRows(b, rows, f)
+	case figure.Polar:
+		polarRows(b, rows, f)
+	case figure.Grid:
+		gridRows(b, rows, f)
 	case figure.Scalars:
 		scalarRows(rows, f)
 	}
@@ -81,7 +86,7 @@ func dotRows(b *bufio.Writer, rows *csv.Writer, f figure.Dots) {
 // roleNames are the roles of lines as the file calls them.
 var roleNames = [...]string{
 	figure.Wall: "wall", figure.Ray: "ray", figure.Ball: "ball",
-	figure.Construct: "construction", figure.JointMark: "joint", figure.Floor: "floor",
+	figure.Construct: "construction", figure.JointMark: "joint", figure.Floor: "floor", figure.Coat: "coat",
 }
 
 // pathRows writes the points of a drawing; a closed line repeats its first.
@@ -108,15 +113,29 @@ func seriesRows(b *bufio.Writer, rows *csv.Writer, f figure.Series) {
 	column(b, "y", f.Y.Label, f.Y.Unit)
 	column(b, "stderr", "one standard error of y", f.Y.Unit)
 	_ = rows.Write([]string{"curve", "x", "y", "stderr"})
-	for _, c := range f.Curves {
+	curveRows(rows, f.Curves, 1)
+}
+
+// curveRows writes the points of curves, x in units of one.
+func curveRows(rows *csv.Writer, curves []figure.Curve, one float64) {
+	for _, c := range curves {
 		for i := range min(len(c.X), len(c.Y)) {
 			err := ""
 			if i < len(c.Err) {
 				err = number(c.Err[i])
 			}
-			_ = rows.Write([]string{c.Name, number(c.X[i]), number(c.Y[i]), err})
+			_ = rows.Write([]string{c.Name, number(c.X[i] / one), number(c.Y[i]), err})
 		}
 	}
+}
+
+// polarRows writes the points of curves against direction.
+func polarRows(b *bufio.Writer, rows *csv.Writer, f figure.Polar) {
+	column(b, "angle_deg", "direction, counter-clockwise from +x", "degrees")
+	column(b, "value", f.Radius.Label, f.Radius.Unit)
+	column(b, "stderr", "one standard error of value", f.Radius.Unit)
+	_ = rows.Write([]string{"curve", "angle_deg", "value", "stderr"})
+	curveRows(rows, f.Curves, math.Pi/180)
 }
 
 // scalarRows writes readings.

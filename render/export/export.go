@@ -164,6 +164,10 @@ func caption(f figure.Figure) string {
 		return strings.Join(f.Caption, "\n")
 	case figure.Series:
 		return strings.Join(f.Caption, "\n")
+	case figure.Polar:
+		return strings.Join(f.Caption, "\n")
+	case figure.Grid:
+		return strings.Join(f.Caption, "\n")
 	}
 	return ""
 }
@@ -177,6 +181,10 @@ func kind(f figure.Figure) string {
 		return "a drawing"
 	case figure.Series:
 		return "curves"
+	case figure.Polar:
+		return "a far field"
+	case figure.Grid:
+		return "a map"
 	case figure.Scalars:
 		return "readings"
 	}

@@ -5,7 +5,7 @@
 // Every Figure is complete in itself: whoever has it needs no table to draw it.
 package figure
 
-// Figure is one of Dots, Paths, Series, Grid, Polar or Scalars. The set is closed: render
+// Figure is one of Dots, Paths, Series, Grid, Polar, Scalars or Sheet. The set is closed: render
 // switches over it once.
 type Figure interface{ isFigure() }
 
@@ -19,6 +19,8 @@ type Axis struct {
 	Lo, Hi float64
 	Marks  []Mark
 	Scale  Scale
+	Coats  []Coated // of the wall, where this is its arclength; they do not overlap
+	Keys   []Key    // the legend of the coats, set under the plot
 }
 
 // Scale says how values are laid along an axis.
@@ -30,11 +32,14 @@ const (
 	Log
 )
 
-// Mark is a named place on an axis. Kind says what stands there.
+// Mark is a named place on an axis. Kind says what stands there. A mark on the
+// Y axis is a line right across the plot, or, where From < To, across that
+// stretch of the X axis alone.
 type Mark struct {
-	At   float64
-	Kind MarkKind
-	Name string // "" for a tick without a word
+	At       float64
+	Kind     MarkKind
+	Name     string // "" for a tick without a word
+	From, To float64
 }
 
 // MarkKind tells the marks of an axis apart.
@@ -44,7 +49,7 @@ type MarkKind uint8
 const (
 	Joint     MarkKind = iota // two sides of the wall meet here
 	LoopStart                 // a loop of the wall begins here
-	Critical                  // p = ±1/n
+	Critical                  // p = ± outer over inner index
 	Event                     // something happens here: a birth, a limit, the end of a window
 )
 
@@ -75,18 +80,29 @@ type DotSet struct {
 type Paths struct {
 	Unit    string // unit of length of all points
 	Lines   []Line
+	Labels  []Label
+	Keys    []Key // the legend of the wall's textures
 	Caption []string
 }
 
+// Label is a word or number that stands in a drawing, centred at X, Y on the
+// paper's colour.
+type Label struct {
+	X, Y float64
+	Text string
+}
+
 // Line is one polyline of a drawing. At gives, for a wall, the fraction s/L in
-// [0, 1] at each point, so that the wall can wear its colour; for all else it
-// is nil.
+// [0, 1] at each point, so that the wall can wear its colour; of all other
+// roles only Coat has it. Texture is that of a Coat; a JointMark of texture Gap is
+// the post of an opening.
 type Line struct {
-	Role   Role
-	Hue    int
-	Closed bool
-	X, Y   []float64
-	At     []float64
+	Role    Role
+	Hue     int
+	Closed  bool
+	Texture Texture
+	X, Y    []float64
+	At      []float64
 }
 
 // Role says what a line of a drawing is.
@@ -99,7 +115,10 @@ const (
 	Ball                  // a single point: where an orbit stands
 	Construct             // construction, drawn faint and dashed
 	JointMark             // a short stroke across the wall at a joint
+	Dimension             // a line with arrow heads at both ends
+	Extension             // a hairline from the wall to a dimension
 	Floor                 // closed outline filled as the inside of the table (even-odd over all Floor lines)
+	Coat                  // a stretch of wall with a texture, its inside on the left
 )
 
 // Series is one or more curves over a common X axis with optional error band
@@ -115,8 +134,20 @@ type Series struct {
 type Curve struct {
 	Name      string
 	Hue       int
+	Form      Form
 	X, Y, Err []float64
 }
+
+// Form says how the points of a curve of a Series are drawn.
+type Form uint8
+
+// The forms of a curve.
+const (
+	Joined Form = iota // joined by straight lines, and marked where they are few
+	Steps              // a histogram: each value level over its class, X the classes' middles
+	Guide              // a reference that was not measured: a thin line, never marked
+	Points             // marks alone, with bars for their errors
+)
 
 // Scalars is a list of readings.
 type Scalars struct {
@@ -181,5 +212,29 @@ const (
 	Bar                       // a family, drawn along x
 )
 
+// Sheet is one page of several figures with a heading: a design sheet.
+type Sheet struct {
+	Title string
+	Head  []string // lines under the title
+	Rows  []SheetRow
+	Foot  []string // lines at the foot of the page
+}
+
+// SheetRow is figures side by side. Height is its part of the page, relative to
+// the other rows.
+type SheetRow struct {
+	Height float64
+	Blocks []Block
+}
+
+// Block is one figure of a sheet under a heading. Width is its part of the row,
+// relative to the other blocks.
+type Block struct {
+	Heading string
+	Width   float64
+	Show    Figure
+}
+
+func (Sheet) isFigure() {}
 func (Grid) isFigure()  {}
 func (Polar) isFigure() {}

@@ -187,9 +187,13 @@ func (s *Span) rounding() float64 {
 		c := &s.Coef
 		size = r2.Norm(c[1]) + 2*r2.Norm(c[2]) + 3*r2.Norm(c[3])
 	case Harmonic:
-		size = math.Abs(s.Form.Mean)
+		size = math.Abs(s.Form.Mean) + math.Abs(s.Form.Slope)*(1+math.Abs(s.T0)+math.Abs(s.T1))
 		for k := range s.Form.Cos {
 			size += float64(k+2) * (math.Abs(s.Form.Cos[k]) + math.Abs(s.Form.Sin[k]))
+		}
+		if s.Form.Of == Square {
+			r, _, _, _, _ := s.Form.Eval(0.5 * (s.T0 + s.T1))
+			size /= r
 		}
 	}
 	return 4e-16 * size

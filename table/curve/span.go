@@ -19,7 +19,7 @@ const (
 	Circle        // arc of a circle of at most half a turn, or all of it
 	Oval          // arc of an ellipse of at most half a turn of its parameter, or all of it
 	Bezier        // stretch of a cubic
-	Harmonic      // stretch of r(phi) = sum of harmonics
+	Harmonic      // stretch of r(phi), a sum of harmonics or the root of one, or a spiral
 )
 
 // Span is the piece of wall that a tracer intersects. It runs from A to B as

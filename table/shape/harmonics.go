@@ -21,16 +21,8 @@ var harmonics = Kind{
 	Name: "harmonics", Title: "Harmonics",
 	About:   "Any smooth wall seen once from its centre: the disc, limaçon and quadrupole are special cases; regular and chaotic motion mostly together.",
 	Formula: "r = R (1 + Σ a_m cos mφ + b_m sin mφ), m = 1 to 8; s starts at φ = 0",
-	Specs:   harmonicSpecs(),
-	Fits: func(v param.Values) error {
-		cos, sin := coefficients(v)
-		f := waveForm(1, cos, sin)
-		f.Mean -= slack
-		if phi, sinks := sink(f); sinks {
-			return misfit("the wall reaches its centre at %.1f deg; make the harmonics smaller", phi*180/math.Pi)
-		}
-		return nil
-	},
+	Specs:   harmonicSpecs("mean radius R"),
+	Fits:    harmonicFits,
 	Loops: func(v param.Values) []Loop {
 		cos, sin := coefficients(v)
 		return ring(wave(v[0], cos, sin))
@@ -56,10 +48,20 @@ var harmonics = Kind{
 	},
 }
 
+func harmonicFits(v param.Values) error {
+	cos, sin := coefficients(v)
+	f := waveForm(1, cos, sin)
+	f.Mean -= slack
+	if phi, sinks := sink(f); sinks {
+		return misfit("the wall reaches its centre at %.1f deg; make the harmonics smaller", phi*180/math.Pi)
+	}
+	return nil
+}
+
 func harmonicName(letter rune, m int) string { return fmt.Sprintf("%c%d", letter, m) }
 
-func harmonicSpecs() []param.Spec {
-	specs := []param.Spec{length("radius", 1, "mean radius R")}
+func harmonicSpecs(radius string) []param.Spec {
+	specs := []param.Spec{length("radius", 1, radius)}
 	def := map[string]float64{"a2": 0.06, "a3": 0.08, "b3": 0.03}
 	for m := 1; m <= harmonicCount; m++ {
 		a, b := harmonicName('a', m), harmonicName('b', m)

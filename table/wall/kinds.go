@@ -24,8 +24,8 @@ var kinds = []Kind{
 	{"opening", "lets everything out", nil,
 		func(param.Values) Law { return Opening{} }},
 	{"dielectric", "splits each ray by Fresnel's formulas", []param.Spec{
-		{Name: "index", Lo: 1, Hi: 10, Default: 3.3, Description: "refractive index inside"},
-		{Name: "outside", Lo: 1, Hi: 10, Default: 1, Description: "refractive index outside"},
+		{Name: "index", Lo: 1, Hi: 10, Default: 3.3, Description: "refractive index inside, where the rays run"},
+		{Name: "outside", Lo: 1, Hi: 10, Default: 1, Description: "refractive index outside, behind the wall"},
 		{Name: "te", Unit: param.Count, Lo: 0, Hi: 1, Default: 0, Description: "0 = TM (E out of plane), 1 = TE (E in plane)"}},
 		func(v param.Values) Law { return Dielectric{v[0], v[1], Polarisation(v[2])} }},
 	{"rough", "scatters a share of all rays by the cosine law", []param.Spec{

@@ -3,8 +3,6 @@
 // on the wall it happens nor what is done with the shares.
 package wall
 
-import "math"
-
 // Law is what a stretch of wall does to a ray that meets it.
 type Law interface {
 	// Scatter answers for one bounce. u is a number drawn evenly from [0, 1),
@@ -51,44 +49,6 @@ type Opening struct{}
 
 // Scatter sends the whole weight through.
 func (Opening) Scatter(in Incidence, _ float64) Outcome { return Outcome{Through: Lobe{in.P, 1}} }
-
-// Polarisation names the two cases of Fresnel's formulas for a flat cavity.
-type Polarisation uint8
-
-// The polarisations. TM has the electric field out of the plane, TE in it;
-// some communities swap the names.
-const (
-	TM Polarisation = iota
-	TE
-)
-
-// Dielectric is the wall of a transparent body of refractive index Index in a
-// surrounding of index Outside: Fresnel's power coefficients (Born and Wolf,
-// Principles of Optics, 1.5), total reflection beyond the critical angle.
-// Curvature and wavelength do not enter.
-type Dielectric struct {
-	Index, Outside float64
-	Polarisation   Polarisation
-}
-
-// Scatter splits the weight by Fresnel's formulas and refracts by Snell's law.
-func (d Dielectric) Scatter(in Incidence, _ float64) Outcome {
-	out := d.Index / d.Outside * in.P
-	if math.Abs(out) >= 1 {
-		return Outcome{Back: Lobe{in.P, 1}}
-	}
-	ci, ct := math.Sqrt(1-in.P*in.P), math.Sqrt(1-out*out)
-	a, b := d.Index, d.Outside
-	if d.Polarisation == TE {
-		a, b = b, a
-	}
-	r := (a*ci - b*ct) / (a*ci + b*ct)
-	back := r * r
-	return Outcome{Back: Lobe{in.P, back}, Through: Lobe{out, 1 - back}}
-}
-
-// Critical is the sine of the critical angle from inside, 1 where there is none.
-func (d Dielectric) Critical() float64 { return math.Min(1, d.Outside/d.Index) }
 
 // Rough scatters the share Share of all rays by the cosine law (p even in
 // [-1, 1], which keeps ds dp), and mirrors the others.

@@ -1,0 +1,47 @@
+package render
+
+import (
+	"strconv"
+
+	"cavitywright/render/letter"
+	"cavitywright/sim/figure"
+)
+
+// DrawScale draws the scale of a map that lies within a plot: a short bar of
+// colours in the lower right corner of the frame, with the numbers of its ends,
+// what they are, and a remark. It is left out where the frame is small.
+func DrawScale(c Canvas, a figure.Axis, remark string, frame Box, look Look) {
+	name := title(a, 0)
+	if remark != "" {
+		name += " · " + remark
+	}
+	lo, hi := mended(a)
+	w := max(look.Small*letter.Width(name, letter.Regular), 9*look.Small)
+	h := (letter.CapHeight*2 + 0.5 + 0.7 + 0.5) * look.Small
+	gap := 0.6 * look.Small
+	at := NewBox(frame.Max.X-w-2*gap, frame.Max.Y-h-2*gap, w, h)
+	if w > 0.7*frame.W() || h > 0.4*frame.H() {
+		return
+	}
+	c.Fill(at.Inset(-gap).Path(), Fade(look.Paper, 0.85))
+	ink := func(x, y float64, s string, side HAlign) {
+		c.Text(Text{At: Point{x, y}, Size: look.Small, String: s, H: side, V: Top, Color: look.Ink})
+	}
+	ink(at.Min.X, at.Min.Y, name, Left)
+	top := look.floor(at.Min.Y + (letter.CapHeight+0.5)*look.Small)
+	bar := NewBox(look.floor(at.Min.X), top, w, look.ceil(0.7*look.Small))
+	ramp := NewRamp(look)
+	step := bar.W() / float64(len(ramp))
+	for i := range ramp {
+		x := bar.Min.X + step*float64(i)
+		next := min(x+1.5*step, bar.Max.X)
+		c.Fill(NewBox(x, bar.Min.Y, next-x, bar.H()).Path(), ramp[i])
+	}
+	c.Stroke(bar.Inset(-look.Hair/2).Path(), Pen{Width: look.Hair, Color: look.Ink, Cap: Butt})
+	below := bar.Max.Y + 0.5*look.Small
+	ink(bar.Min.X, below, short(lo), Left)
+	ink(bar.Max.X, below, short(hi), Right)
+}
+
+// short is a number with two digits.
+func short(v float64) string { return proper(strconv.FormatFloat(v, 'g', 2, 64)) }
