@@ -22,8 +22,15 @@ const (
 	postWidth  = 2.2
 )
 
-// drawCoat draws the texture of a stretch of wall along its inside.
+// drawCoat draws the texture of a stretch of wall along its inside, and of a
+// loop that is open all around where it would be.
 func drawCoat(c Canvas, l figure.Line, v View, look Look) {
+	if l.Texture == figure.Gap {
+		var p Path
+		appendLine(&p, l, v)
+		c.Stroke(ClipStroke(p, v.Box, v.Box.W()), Pen{Width: look.Hair, Color: look.Faint, Dash: []float64{look.Tick, look.Tick}, Cap: Butt})
+		return
+	}
 	drawTexture(c, wallPoints(l, v), l.Closed, l.Texture, v.Box, look)
 }
 

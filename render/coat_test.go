@@ -172,7 +172,7 @@ func TestCriticalOverItsStretch(t *testing.T) {
 func TestKeysAreSet(t *testing.T) {
 	look := Paper(1)
 	keys := []figure.Key{{Texture: figure.Gap, Text: "opening, width 0.3 mm"}, {Texture: figure.Dotted, Text: "lossy mirror, R = 0.9"},
-		{Texture: figure.Double, Text: "dielectric, n = 3.3 to 1, TM"}, {Texture: figure.Saw, Text: "rough, 50 % by the cosine law"}}
+		{Texture: figure.Double, Text: "dielectric, n = 3.3 to 1, TM"}, {Texture: figure.Saw, Text: "rough, 50 % scattered"}}
 	dots, paths := scatter(), ring()
 	dots.X.Keys, paths.Keys = keys, keys
 	for _, f := range []figure.Figure{dots, paths} {

@@ -1,6 +1,8 @@
 package render
 
 import (
+	"image"
+	"image/color"
 	"math"
 
 	"cavitywright/render/letter"
@@ -82,13 +84,34 @@ func drawGrid(c Canvas, f figure.Grid, g GridPlot, look Look) {
 	}
 }
 
-// drawCells paints the cells row by row from below, runs of equal colour at
-// once. A run reaches half a cell further to the right and upward, under what
-// is painted after it, so that no seam shows between two.
+// Tiler is a Canvas that can also show a picture over a box, each of its pixels
+// a plain rectangle. A map goes there as a picture where it can: a hundred
+// thousand paths make a file that hardly any program opens.
+type Tiler interface {
+	Tiles(img *image.RGBA, box Box)
+}
+
+// drawCells paints the cells.
 func drawCells(c Canvas, f figure.Grid, g GridPlot, ramp *Ramp, look Look) {
-	if f.Columns <= 0 || f.Rows <= 0 || len(f.Values) < f.Columns*f.Rows {
+	if f.Columns <= 0 || f.Rows <= 0 || len(f.Values) < f.Columns*f.Rows || g.Frame.Empty() {
 		return
 	}
+	t, is := c.(Tiler)
+	if !is {
+		fillCells(c, f, g, ramp, look)
+		return
+	}
+	img := image.NewRGBA(image.Rect(0, 0, f.Columns, f.Rows))
+	for k, v := range f.Values[:f.Columns*f.Rows] {
+		img.SetRGBA(k%f.Columns, f.Rows-1-k/f.Columns, colourOf(stepOf(g, ramp, v), ramp, look))
+	}
+	t.Tiles(img, g.Frame)
+}
+
+// fillCells paints the cells row by row from below, runs of equal colour at
+// once. A run reaches half a cell further to the right and upward, under what
+// is painted after it, so that no seam shows between two.
+func fillCells(c Canvas, f figure.Grid, g GridPlot, ramp *Ramp, look Look) {
 	w, h := g.Frame.W()/float64(f.Columns), g.Frame.H()/float64(f.Rows)
 	for row := range f.Rows {
 		values := f.Values[row*f.Columns : (row+1)*f.Columns]
@@ -98,16 +121,20 @@ func drawCells(c Canvas, f figure.Grid, g GridPlot, ramp *Ramp, look Look) {
 			for to < f.Columns && stepOf(g, ramp, values[to]) == step {
 				to++
 			}
-			col := look.Paper
-			if step >= 0 {
-				col = ramp[step]
-			}
 			x0, x1 := g.Frame.Min.X+w*float64(from), g.Frame.Min.X+w*(float64(to)+0.5)
 			y1, y0 := g.Frame.Max.Y-h*float64(row), g.Frame.Max.Y-h*(float64(row)+1.5)
-			c.Fill(Box{Point{x0, max(y0, g.Frame.Min.Y)}, Point{min(x1, g.Frame.Max.X), y1}}.Path(), col)
+			c.Fill(Box{Point{x0, max(y0, g.Frame.Min.Y)}, Point{min(x1, g.Frame.Max.X), y1}}.Path(), colourOf(step, ramp, look))
 			from = to
 		}
 	}
+}
+
+// colourOf is the colour of a step; -1 is blank.
+func colourOf(step int, ramp *Ramp, look Look) color.RGBA {
+	if step < 0 {
+		return look.Paper
+	}
+	return ramp[step]
 }
 
 // stepOf is the colour of a value, -1 for one that has none.

@@ -74,20 +74,26 @@ func drawKey(c Canvas, k figure.Key, x, y float64, look Look) {
 	c.Text(Text{At: Point{end + keyAfter*look.Small, y}, Size: look.Small, String: k.Text, V: Middle, Color: look.Ink})
 }
 
-// DrawKeys draws a legend into the top left corner of a box, one entry a row,
-// on paper so that nothing shows through.
-func DrawKeys(c Canvas, keys []figure.Key, box Box, look Look) {
+// keyPad is the paper around a legend in a pane, in small type sizes.
+const keyPad = 0.4
+
+// KeysBox is the room that DrawKeys takes from a place on; empty for none.
+func KeysBox(keys []figure.Key, at Point, look Look) Box {
 	if len(keys) == 0 {
-		return
+		return Box{at, at}
 	}
-	rows := make([]keyRow, len(keys))
 	wide := 0.0
-	for i, k := range keys {
-		rows[i] = keyRow{k}
+	for _, k := range keys {
 		wide = max(wide, keyWidth(k, look))
 	}
-	pad := 0.4 * look.Small
-	high := float64(len(keys)) * keyLine * look.Small
-	c.Fill(NewBox(box.Min.X, box.Min.Y, wide+2*pad, high+pad).Path(), look.Paper)
-	drawKeyRows(c, rows, box.Min.X+pad, box.Min.Y+pad/2, look)
+	return NewBox(at.X, at.Y, wide+2*keyPad*look.Small, (float64(len(keys))*keyLine+keyPad)*look.Small)
+}
+
+// DrawKeys draws a legend below and to the right of a place, one entry a row.
+func DrawKeys(c Canvas, keys []figure.Key, at Point, look Look) {
+	rows := make([]keyRow, len(keys))
+	for i, k := range keys {
+		rows[i] = keyRow{k}
+	}
+	drawKeyRows(c, rows, at.X+keyPad*look.Small, at.Y+keyPad/2*look.Small, look)
 }

@@ -82,7 +82,9 @@ func Bounds(f figure.Paths) Extent {
 			}
 		}
 	}
-	grow(func(r figure.Role) bool { return r == figure.Wall || r == figure.Floor || r == figure.JointMark || r == figure.Extension })
+	grow(func(r figure.Role) bool {
+		return r == figure.Wall || r == figure.Floor || r == figure.Coat || r == figure.JointMark || r == figure.Extension
+	})
 	if e.X0 > e.X1 {
 		grow(func(figure.Role) bool { return true })
 	}

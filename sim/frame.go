@@ -16,12 +16,15 @@ func (s *span) frame(h *hit) (f curve.Frame, x, t float64) {
 	case curve.Segment:
 		return curve.Frame{Point: h.at, Tangent: s.tanA}, h.t, h.t
 	case curve.Circle:
-		n := r2.Scale(s.sense, plane.Unit(r2.Sub(h.at, s.centre)))
-		t = s.param(h.at, h.t)
-		return curve.Frame{Point: h.at, Tangent: plane.Left(n), Curvature: s.kappa}, s.clip(math.Abs(t-s.t0) * s.radius), t
+		n := plane.Unit(r2.Sub(h.at, s.centre))
+		x = s.clip(float64(s.turned(n.X, n.Y) * s.radius))
+		return curve.Frame{Point: h.at, Tangent: plane.Left(r2.Scale(s.sense, n)), Curvature: s.kappa}, x, h.t
 	case curve.Oval:
 		t = s.param(h.at, h.t)
 		return s.ovalFrame(h.at), s.clip(s.src.S(t)), t
+	}
+	if s.fine != nil {
+		return s.src.FrameAt(h.t), s.clip(s.fine.length(h.t)), h.t
 	}
 	return s.src.FrameAt(h.t), s.clip(s.src.S(h.t)), h.t
 }

@@ -3,6 +3,11 @@
 // returns the first, and it never steps. What cannot be decided in double
 // precision ends the orbit with a named Stop.
 //
+// A Walker follows one orbit, Walkers several at once, which takes less time a
+// bounce. What a hit is decided by stands in hit.go, smooth.go and oval.go, and
+// holds for every table. Tables of a simple form have a shorter way to the same
+// hit (convex.go, quick.go); what is not clear there is left to the long one.
+//
 // The package has no clock, no chance of its own and no goroutine: numbers
 // drawn at random are handed in.
 //

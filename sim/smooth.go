@@ -20,7 +20,7 @@ const (
 // value is the quantity at the parameter t of the span, with its derivative by
 // t.
 func (q quantity) value(s *span, t float64, r *ray) (f, df float64) {
-	c, d1, d2 := s.src.Jet(t)
+	c, d1, d2 := s.jet(t)
 	if q == slope {
 		return float64(r.d.X*d1.Y) - float64(r.d.Y*d1.X), float64(r.d.X*d2.Y) - float64(r.d.Y*d2.X)
 	}
@@ -95,7 +95,11 @@ func (tr *Tracer) meetSmooth(k int, s *span, sa, sb bool, r *ray, h *hit) {
 		if fa != fb {
 			guess = math.Min(math.Max(fa/(fa-fb), 0.01), 0.99)
 		}
-		t := s.crossing(s.t0, s.t1, s.t0+guess*(s.t1-s.t0), sa, r)
+		at := s.t0 + guess*(s.t1-s.t0)
+		if s.fine != nil {
+			at = s.fine.crossing(r, sa)
+		}
+		t := s.crossing(s.t0, s.t1, at, sa, r)
 		h.take(k, t, s.at(t), r)
 		return
 	}
@@ -143,6 +147,6 @@ func (tr *Tracer) leaveSmooth(k int, s *span, ahead bool, r *ray, h *hit) {
 
 // at is the point at the parameter t.
 func (s *span) at(t float64) r2.Vec {
-	p, _, _ := s.src.Jet(t)
+	p, _, _ := s.jet(t)
 	return p
 }

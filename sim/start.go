@@ -20,10 +20,16 @@ type Start struct {
 
 // Open opens the orbit.
 func (w *Walker) Open(s Start) Bounce {
+	w.tr.openLane(&w.lanes[0], s)
+	return w.lanes[0].last
+}
+
+func (tr *Tracer) openLane(l *lane, s Start) {
 	if s.From == table.Inside {
-		return w.StartInside(s.Point, s.Dir)
+		l.startInside(s.Point, s.Dir)
+		return
 	}
-	return w.Start(s.State)
+	tr.start(l, s.State)
 }
 
 // Launched are the orbits that a launch of the study makes on this table, in

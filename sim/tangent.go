@@ -37,13 +37,15 @@ func (j Jacobian) Apply(ds, dp float64) (float64, float64) {
 //
 // (M. V. Berry, Eur. J. Phys. 2, 91, 1981, eq. (13), there for a convex wall
 // and the angle from the tangent).
-func (w *Walker) Jacobian() Jacobian {
-	l, k0, k1, c0, c1 := w.last.Flight, w.kappa0, w.kappa, w.cos0, w.cosIn
+func (w *Walker) Jacobian() Jacobian { return w.lanes[0].jacobian() }
+
+func (l *lane) jacobian() Jacobian {
+	u, k0, k1, c0, c1 := l.last.Flight, l.kappa0, l.kappa, l.cos0, l.cosIn
 	return Jacobian{
-		SS: (float64(l*k0) - c0) / c1,
-		SP: -l / (c0 * c1),
-		PS: float64(c1*k0) + float64(c0*k1) - float64(l*k0*k1),
-		PP: (float64(l*k1) - c1) / c0,
+		SS: (float64(u*k0) - c0) / c1,
+		SP: -u / (c0 * c1),
+		PS: float64(c1*k0) + float64(c0*k1) - float64(u*k0*k1),
+		PP: (float64(u*k1) - c1) / c0,
 	}
 }
 

@@ -2,6 +2,7 @@ package sim
 
 import (
 	"math"
+	"slices"
 
 	"cavitywright/table"
 	"cavitywright/table/curve"
@@ -14,14 +15,18 @@ import (
 // Tracer is a table made ready for rays. It is immutable and can be shared by
 // any number of walkers.
 type Tracer struct {
-	table *table.Table
-	spans []span
-	tree  []node  // empty where the spans are few
-	order []int32 // spans in the order of the tree's leaves
-	laws  []stretch
-	bare  wall.Law // nil for a mirror
-	size  float64  // diagonal of the table, the unit of the tolerances
-	open  bool
+	table   *table.Table
+	spans   []span
+	tree    []node  // empty where the spans are few
+	order   []int32 // spans in the order of the tree's leaves
+	laws    []stretch
+	bare    wall.Law // nil for a mirror
+	size    float64  // diagonal of the table, the unit of the tolerances
+	open    bool
+	mirrors bool    // no law but mirrors
+	corner  float64 // cornerTol in the table's unit
+	convex  *convex // nil where the outer wall is not convex
+	quick   *quick  // nil where first looks for every hit
 }
 
 // span is one piece of wall in the inner loop.
@@ -35,6 +40,8 @@ type span struct {
 	law0, law1 int32 // stretches in Tracer.laws
 	a, b       r2.Vec
 	apex       r2.Vec // smooth spans
+	fine       *fine  // nil beside a cusp
+	plain      bool   // Harmonic: the form is a radius without slope
 	tanA, tanB r2.Vec // along increasing s
 	centre     r2.Vec
 	axis       r2.Vec
@@ -42,6 +49,11 @@ type span struct {
 	minor      float64 // Oval
 	sense      float64
 	kappa      float64 // Segment, Circle
+	perRadius  float64 // Circle: 1/radius
+	startX     float64 // Circle: the direction from its centre to A
+	startY     float64
+	sideX      float64 // the same a quarter turn on, along the span
+	sideY      float64
 	t0, t1     float64
 	width      float64 // |t1 - t0|
 	s0         float64
@@ -72,6 +84,11 @@ func Compile(t *table.Table) *Tracer {
 	}
 	tr.layLaws(t.Stretches())
 	tr.grow()
+	tr.corner = cornerTol * tr.size
+	tr.mirrors = tr.bare == nil && !slices.ContainsFunc(tr.laws, func(s stretch) bool { return s.law != nil })
+	if tr.convex = newConvex(tr); tr.convex == nil {
+		tr.quick = newQuick(tr)
+	}
 	return tr
 }
 
@@ -89,9 +106,14 @@ func compileSpan(p *table.Piece, pieces []table.Piece) span {
 		s.tanA = plane.Unit(r2.Sub(s.b, s.a))
 		s.tanB = s.tanA
 	case curve.Circle:
-		s.kappa = s.sense / s.radius
+		s.kappa, s.perRadius = s.sense/s.radius, 1/s.radius
+		sin, cos := math.Sincos(s.t0)
+		s.startX, s.startY = float64(cos*s.axis.X)-float64(sin*s.axis.Y), float64(cos*s.axis.Y)+float64(sin*s.axis.X)
+		s.sideX, s.sideY = -s.sense*s.startY, s.sense*s.startX
 	case curve.Bezier, curve.Harmonic:
 		s.apex = p.Apex()
+		s.fine = newFine(&s)
+		s.plain = p.Form != nil && p.Form.Of == curve.Radius && p.Form.Slope == 0
 	}
 	return s
 }
@@ -147,3 +169,6 @@ func MeanChord(t *table.Table) float64 {
 	}
 	return math.Pi * t.Area() / t.Length()
 }
+
+// Mirrors reports whether every wall is a mirror: no bounce needs chance.
+func (tr *Tracer) Mirrors() bool { return tr.mirrors }

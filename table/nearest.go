@@ -10,10 +10,18 @@ import (
 // distance. Of each piece whose box is near enough the distance is sampled and
 // the least sample refined, to 1e-9 of the piece's length; where two places of
 // one piece are equally near within its sampling, either may be answered.
-func (t *Table) Nearest(x r2.Vec) (s, dist float64) {
+func (t *Table) Nearest(x r2.Vec) (s, dist float64) { return t.nearestOf(t.pieces, x) }
+
+// NearestOn is Nearest among the places of one loop.
+func (t *Table) NearestOn(loop int, x r2.Vec) (s, dist float64) {
+	l := &t.loops[loop]
+	return t.nearestOf(t.pieces[l.First:l.Last], x)
+}
+
+func (t *Table) nearestOf(pieces []Piece, x r2.Vec) (s, dist float64) {
 	dist = math.Inf(1)
-	for i := range t.pieces {
-		p := &t.pieces[i]
+	for i := range pieces {
+		p := &pieces[i]
 		if boxDistance(p.Bounds(), x) >= dist {
 			continue
 		}
@@ -30,6 +38,11 @@ const nearestSamples = 24
 
 func (p *Piece) nearest(x r2.Vec) (local, dist float64) {
 	away := func(l float64) float64 {
+		if l < 0 {
+			l += p.Length // a piece that is a whole loop
+		} else if l > p.Length {
+			l -= p.Length
+		}
 		d := r2.Sub(p.FrameAt(p.T(l)).Point, x)
 		return math.Hypot(d.X, d.Y)
 	}
@@ -40,7 +53,10 @@ func (p *Piece) nearest(x r2.Vec) (local, dist float64) {
 			best, at = d, float64(k)*step
 		}
 	}
-	lo, hi := math.Max(0, at-step), math.Min(p.Length, at+step)
+	lo, hi := at-step, at+step
+	if !p.Whole() {
+		lo, hi = math.Max(0, lo), math.Min(p.Length, hi)
+	}
 	const shrink = 0.6180339887498949
 	for hi-lo > 1e-9*p.Length {
 		a, b := hi-shrink*(hi-lo), lo+shrink*(hi-lo)

@@ -9,6 +9,10 @@ type Study struct {
 	Bounces  int // bounces an orbit of the portrait
 	Launches []Launch
 	Display  Display
+	Sweeps   []DialSweep // each with a Name of its own
+	// Tolerances and Wishes likewise.
+	Tolerances []Tolerance
+	Wishes     []Wish
 }
 
 // Launch is one orbit or a row of orbits that start together.

@@ -72,3 +72,28 @@ func TestFaults(t *testing.T) {
 		t.Error("an unknown unit is taken")
 	}
 }
+
+// TestNearestAcrossTheSeam: a point on a wall is found at its own place, also
+// just before the start of a loop that is one piece.
+func TestNearestAcrossTheSeam(t *testing.T) {
+	for _, c := range []struct {
+		kind   string
+		values []float64
+	}{{"disc", []float64{1}}, {"ellipse", []float64{2, 1}}, {"limacon", []float64{1, 0.4}}, {"stadium", []float64{1, 1}}} {
+		f, err := shape.New(c.kind, c.values)
+		if err != nil {
+			t.Fatal(err)
+		}
+		tab, err := New(Design{Unit: Millimetre, Items: []Item{{Shape: f, Place: plane.Identity()}}})
+		if err != nil {
+			t.Fatal(err)
+		}
+		for k := range 500 {
+			want := tab.Length() * (float64(k) + 0.37) / 500
+			s, d := tab.Nearest(tab.At(want).Point)
+			if off := math.Abs(s - want); math.Min(off, tab.Length()-off) > 1e-6*tab.Length() || d > 1e-6*tab.Length() {
+				t.Errorf("%s: the point at s = %g is found at %g, %g away", c.kind, want, s, d)
+			}
+		}
+	}
+}

@@ -218,6 +218,7 @@ func (t *Table) crossing(i, j int, at r2.Vec) *Fault {
 // checkNesting holds every obstacle inside the wall and outside the others.
 // After checkCrossings one point of each loop decides.
 func (t *Table) checkNesting() *Fault {
+	row := t.obstaclesAcross()
 	for i := range t.loops {
 		l := &t.loops[i]
 		if l.Side == shape.Outer {
@@ -227,14 +228,46 @@ func (t *Table) checkNesting() *Fault {
 		if !t.Open() && !t.loops[0].around(at) {
 			return t.design.faultAt(Outside, l.Item, at, "The obstacle (%s) at %s lies outside the wall; move it in, or take it out.", t.design.itemName(l.Item), t.design.place(at))
 		}
-		for j := range t.loops {
-			o := &t.loops[j]
-			if i != j && o.Side == shape.Obstacle && o.around(at) {
-				return t.design.faultAt(Nested, l.Item, at, "The obstacle (%s) at %s lies within another obstacle; take one of them out.", t.design.itemName(l.Item), t.design.place(at))
-			}
+		if row.around(at, l) {
+			return t.design.faultAt(Nested, l.Item, at, "The obstacle (%s) at %s lies within another obstacle; take one of them out.", t.design.itemName(l.Item), t.design.place(at))
 		}
 	}
 	return nil
+}
+
+// across are obstacles from left to right, so that those that may go around a
+// place are few of them.
+type across struct {
+	loops  []*Loop // by the left edges of their boxes
+	widest float64
+}
+
+func (t *Table) obstaclesAcross() across {
+	var a across
+	for i := range t.loops {
+		if l := &t.loops[i]; l.Side == shape.Obstacle {
+			a.loops = append(a.loops, l)
+			a.widest = math.Max(a.widest, l.Box.Max.X-l.Box.Min.X)
+		}
+	}
+	sort.SliceStable(a.loops, func(i, j int) bool { return a.loops[i].Box.Min.X < a.loops[j].Box.Min.X })
+	return a
+}
+
+// around reports whether one of the obstacles, but not the loop own, goes
+// around x.
+func (a across) around(x r2.Vec, own *Loop) bool {
+	end := sort.Search(len(a.loops), func(i int) bool { return a.loops[i].Box.Min.X > x.X })
+	for i := end - 1; i >= 0; i-- {
+		// The margin is that of the subtraction's rounding.
+		if a.loops[i].Box.Min.X < x.X-2*a.widest {
+			break
+		}
+		if a.loops[i] != own && a.loops[i].around(x) {
+			return true
+		}
+	}
+	return false
 }
 
 // around reports whether the loop goes around x (winding number not zero).

@@ -16,8 +16,9 @@ import (
 
 // check says what a wall is.
 type check struct {
-	File string `arg:"" placeholder:"FILE" help:"The table, or - for standard input."`
-	JSON bool   `help:"Write JSON."`
+	File string  `arg:"" placeholder:"FILE" help:"The table, or - for standard input."`
+	Tool float64 `placeholder:"R" help:"Radius of a round tool, in the table's unit: say where it does not reach the wall."`
+	JSON bool    `help:"Write JSON."`
 }
 
 // account is what check finds, in the form of its JSON. Lengths are in Unit.
@@ -32,7 +33,8 @@ type account struct {
 	Pieces         []pieceAccount `json:"pieces"`
 	Joints         []jointAccount `json:"joints"`
 	Coats          []coatAccount  `json:"coats"`
-	Problems       []problem      `json:"problems"`
+	wallReport     `json:",inline"`
+	Problems       []problem `json:"problems"`
 }
 
 type loopAccount struct {
@@ -79,6 +81,9 @@ var kindNames = map[curve.Kind]string{
 
 // Run checks the table.
 func (c *check) Run(std streams) error {
+	if !(c.Tool >= 0) || math.IsInf(c.Tool, 0) {
+		return misuse("the tool's radius is %g, but must be a length of 0 or more", c.Tool)
+	}
 	t, err := readTable(c.File, std)
 	if err != nil {
 		if c.JSON {
@@ -91,6 +96,7 @@ func (c *check) Run(std streams) error {
 		return err
 	}
 	a := describe(t)
+	a.wallReport = reportOn(t, c.Tool)
 	if c.JSON {
 		return writeJSON(std.out, a)
 	}
@@ -175,6 +181,7 @@ func (a account) tell(out io.Writer) error {
 	} else {
 		fmt.Fprintf(w, "smallest radius\t%.6g %s\n", *a.SmallestRadius, a.Unit)
 	}
+	a.head(w, a.Unit)
 	fmt.Fprintf(w, "loops\t%d\n", len(a.Loops))
 	fmt.Fprintf(w, "pieces\t%d\n", len(a.Pieces))
 	for i, p := range a.Pieces {
@@ -196,7 +203,10 @@ func (a account) tell(out io.Writer) error {
 		fmt.Fprintf(w, "coat\t%s from s = %.6g to %.6g %s\n", c.Law, c.From, c.To, a.Unit)
 	}
 	fmt.Fprintf(w, "problems\tnone\n")
-	return w.Flush()
+	if err := w.Flush(); err != nil {
+		return err
+	}
+	return a.trust(out)
 }
 
 func (j jointAccount) text(unit string) string {

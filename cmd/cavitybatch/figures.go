@@ -14,15 +14,20 @@ import (
 	"cavitywright/table/tablefile"
 )
 
-// page is what both figures are asked.
-type page struct {
+// leaf is what every figure is asked.
+type leaf struct {
 	File     string  `arg:"" placeholder:"FILE" help:"The table, or - for standard input."`
-	Out      string  `short:"o" required:"" placeholder:"FILE" help:"The figure's file; its ending says the format: .png, .svg, .pdf or .csv."`
 	Seed     *uint64 `placeholder:"N" help:"Seed of chance; the study's where none is given."`
 	Workers  int     `default:"0" placeholder:"N" help:"Number of workers, which changes no number; 0 for all processors."`
 	WidthMM  float64 `name:"width-mm" default:"85" placeholder:"MM" help:"Width of the figure in millimetres (${default})."`
 	HeightMM float64 `name:"height-mm" default:"0" placeholder:"MM" help:"Height in millimetres; 0 for what suits the figure."`
 	DPI      float64 `name:"dpi" default:"600" placeholder:"N" help:"Dots per inch of a PNG (${default})."`
+}
+
+// page is a figure that must have a file.
+type page struct {
+	leaf
+	Out string `short:"o" required:"" placeholder:"FILE" help:"The figure's file; its ending says the format: .png, .svg, .pdf or .csv."`
 }
 
 // portrait writes the Birkhoff portrait.
@@ -97,16 +102,19 @@ func (c *rays) Run(ctx context.Context, std streams) error {
 }
 
 // open checks the flags and reads the table.
-func (c *page) open(std streams) (export.Format, *table.Table, error) {
+func (c *page) open(std streams) (export.Format, *table.Table, error) { return c.openFor(c.Out, std) }
+
+// openFor checks the flags and reads the table, for a figure's file.
+func (c *leaf) openFor(out string, std streams) (export.Format, *table.Table, error) {
 	if err := checkWorkers(c.Workers); err != nil {
 		return 0, nil, err
 	}
-	format, err := export.FormatOf(c.Out)
+	format, err := export.FormatOf(out)
 	if err != nil {
 		return 0, nil, &wrongUse{err}
 	}
 	if format == export.JSON {
-		return 0, nil, misuse("a figure is written as .png, .svg, .pdf or .csv, but %s ends in .json", c.Out)
+		return 0, nil, misuse("a figure is written as .png, .svg, .pdf or .csv, but %s ends in .json", out)
 	}
 	t, err := readTable(c.File, std)
 	return format, t, err
@@ -114,7 +122,7 @@ func (c *page) open(std streams) (export.Format, *table.Table, error) {
 
 // studied is the table with the study that the figure is made from, so that
 // the file inside the figure makes the same figure again.
-func (c *page) studied(d table.Design) (*table.Table, error) {
+func (c *leaf) studied(d table.Design) (*table.Table, error) {
 	if c.Seed != nil {
 		d.Study.Seed = *c.Seed
 	}
@@ -135,11 +143,15 @@ func (c *page) draw(ctx context.Context, std streams, tr *sim.Tracer, m measure.
 	if err != nil {
 		return err
 	}
+	return c.publish(ctx, t, c.Out, format, make(ran))
+}
+
+// publish writes a figure of a table, with the table inside.
+func (c *leaf) publish(ctx context.Context, t *table.Table, to string, format export.Format, f figure.Figure) error {
 	var file, out bytes.Buffer
 	if err := tablefile.Write(&file, t.Design()); err != nil {
 		return err
 	}
-	f := make(ran)
 	o := export.Options{WidthMM: c.WidthMM, HeightMM: c.HeightMM, DPI: c.DPI, Table: file.Bytes(), Header: header(t)}
 	if err := export.Write(&out, format, f, o); err != nil {
 		if size := (*export.BadSize)(nil); errors.As(err, &size) {
@@ -150,7 +162,7 @@ func (c *page) draw(ctx context.Context, std streams, tr *sim.Tracer, m measure.
 	if err := ctx.Err(); err != nil {
 		return err
 	}
-	return writeFile(c.Out, out.Bytes())
+	return writeFile(to, out.Bytes())
 }
 
 // header is the head of a CSV file.

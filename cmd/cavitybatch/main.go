@@ -37,14 +37,32 @@ const (
 
 // commands is the command line.
 type commands struct {
-	Make     makeTable `cmd:"" help:"Write a table file of a shape to standard output."`
-	Check    check     `cmd:"" help:"Say what the wall of a table is, and what is wrong with it."`
-	Readings takeAll   `cmd:"" help:"Measure the numbers of a table, with errors."`
-	Portrait portrait  `cmd:"" help:"Write the Birkhoff portrait of a table (png, svg, pdf or csv)."`
-	Rays     rays      `cmd:"" help:"Write the drawing of a table with its rays (png, svg, pdf or csv)."`
-	Pace     pace      `cmd:"" help:"Measure the bounces per second, on one worker and on all."`
-	Orbits   orbits    `cmd:"" help:"List the periodic orbits of a table, with length and stability."`
-	Emission emission  `cmd:"" help:"Write the far field of what leaves (not in this version)."`
+	Make         makeTable    `cmd:"" help:"Write a table file of a shape to standard output."`
+	Check        check        `cmd:"" help:"Say what the wall of a table is, and what is wrong with it."`
+	Readings     takeAll      `cmd:"" help:"Measure the numbers of a table, with errors."`
+	Portrait     portrait     `cmd:"" help:"Write the Birkhoff portrait of a table (png, svg, pdf or csv)."`
+	Rays         rays         `cmd:"" help:"Write the drawing of a table with its rays (png, svg, pdf or csv)."`
+	Stretching   stretching   `cmd:"" help:"Write the map of finite-time stretching over the section (png, svg, pdf or csv)."`
+	Convergence  convergence  `cmd:"" help:"Write how the Lyapunov exponent or the chaotic share settles with the bounces used (png, svg, pdf or csv)."`
+	Islands      islands      `cmd:"" help:"Say how much of the section is chaotic, and list its islands."`
+	Paths        paths        `cmd:"" help:"Write the distribution of the flights between bounces (png, svg, pdf or csv)."`
+	Correlation  correlation  `cmd:"" help:"Write how p or the flights are correlated some bounces later (png, svg, pdf or csv)."`
+	Launches     launches     `cmd:"" help:"Tell the character of each launched orbit: regular or chaotic, rotation number, least |p|."`
+	Pace         pace         `cmd:"" help:"Measure the bounces per second, on one worker and on all."`
+	Orbits       orbits       `cmd:"" help:"List the periodic orbits of a table, with length and stability."`
+	Modes        countModes   `cmd:"" help:"Count the modes of a table by Weyl's law, flat or of constant height."`
+	Survival     survival     `cmd:"" help:"Write what is left of a table's rays against path (png, svg, pdf or csv), with the rate of its fall."`
+	Lifetime     lifetime     `cmd:"" help:"Write the map of how long rays last over the section (png, svg, pdf or csv)."`
+	Emission     emission     `cmd:"" help:"Write the far field of what leaves (png, svg, pdf or csv)."`
+	Transmission transmission `cmd:"" help:"Write how rays pass from opening to opening."`
+	Placement    placement    `cmd:"" help:"Write the rate of an opening against its place along the wall."`
+	Study        studyRun     `cmd:"" help:"Turn numbers of a table over a sweep and take readings at each point; or a part of it."`
+	Gather       gather       `cmd:"" help:"Join the parts of a study."`
+	Tolerance    copies       `cmd:"" help:"Take readings of copies of a table as a workshop makes them: their distribution, the yield, and which error matters."`
+	Wish         seek         `cmd:"" help:"Seek the wall for a wish: numbers of a table are turned until a reading is greatest, least, or at a value."`
+	Sheet        designSheet  `cmd:"" help:"Write the design sheet of a table: outline, readings, portrait and cautions on a page (pdf, svg or png)."`
+	Import       outlineIn    `cmd:"" help:"Make a table of an outline that was drawn (svg) or measured (csv), as it is or with a smooth wall fitted."`
+	Outline      outlineOut   `cmd:"" help:"Write the wall of a table for a workshop (svg, dxf, gds or csv), with bias and the error achieved."`
 
 	Version kong.VersionFlag `help:"Print the version."`
 }
@@ -103,7 +121,7 @@ func hint(args []string) string {
 	for _, a := range args {
 		if !strings.HasPrefix(a, "-") {
 			switch a {
-			case "make", "check", "readings", "portrait", "rays", "pace", "orbits", "emission":
+			case "make", "check", "readings", "portrait", "rays", "stretching", "convergence", "islands", "paths", "correlation", "launches", "pace", "orbits", "modes", "survival", "lifetime", "emission", "transmission", "placement", "study", "gather", "tolerance", "wish", "import", "outline":
 				return fmt.Sprintf("see cavitybatch %s --help", a)
 			}
 			break

@@ -212,13 +212,18 @@ func TestBadTable(t *testing.T) {
 	refused(t, 1, []string{"Coat 1"}, "", "make", "disc", "--coat", "disc:1:0.5:0.5:opening")
 }
 
-// TestNotYet wants a plain sentence for what this version does not do.
-func TestNotYet(t *testing.T) {
+// TestNone wants a plain sentence for what a table does not have.
+func TestNone(t *testing.T) {
 	disc := fine(t, "", "make", "disc")
-	refused(t, 1, []string{"yet"}, disc, "emission", "-", "-o", "far.png")
-	for _, name := range []string{"window-share", "lobe-width"} {
-		refused(t, 1, []string{name, "yet"}, disc, "readings", "-", "--only", name, "--json")
+	for _, c := range [][]string{{"survival", "-"}, {"emission", "-"}, {"lifetime", "-", "-o", "m.png"}} {
+		refused(t, 1, []string{"opening", "lay"}, disc, c...)
 	}
-	refused(t, 1, []string{"escape-rate", "nothing leaves"}, disc, "readings", "-", "--only", "escape-rate")
+	refused(t, 1, []string{"opening"}, disc, "transmission", "-", "--json")
+	for _, name := range []string{"window-share", "lobe-width", "escape-rate"} {
+		refused(t, 1, []string{name, "nothing leaves"}, disc, "readings", "-", "--only", name, "--json")
+	}
 	refused(t, 1, []string{"mean-dwell", "opening"}, disc, "readings", "-", "--only", "mean-dwell")
+	refused(t, 2, []string{"not inside"}, fine(t, "", "make", "disc", "--coat", "disc:1:0:0.1:opening"), "survival", "-", "--from", "point:3,0")
+	refused(t, 2, []string{"no way to start"}, disc, "emission", "-", "--from", "light")
+	refused(t, 2, []string{"width"}, disc, "placement", "-", "--width", "wide")
 }

@@ -1,22 +1,25 @@
 package main
 
 import (
+	"bytes"
 	"context"
 	"errors"
-	"math"
-	"path/filepath"
-	"strings"
 
+	"cavitywright/render/export"
 	"cavitywright/sim/orbit"
+	"cavitywright/sim/run"
 	"cavitywright/table"
 )
 
 // orbits lists the periodic orbits.
 type orbits struct {
-	File string `arg:"" placeholder:"FILE" help:"The table, or - for standard input."`
-	UpTo int    `required:"" placeholder:"N" help:"The most bounces of an orbit, from 2."`
-	JSON bool   `help:"Write JSON."`
-	Out  string `short:"o" placeholder:"FILE.csv" help:"Write the list as CSV to a file, one row an orbit."`
+	leaf
+	UpTo   int    `required:"" placeholder:"N" help:"The most bounces of an orbit, from 2."`
+	JSON   bool   `help:"Write JSON."`
+	Out    string `short:"o" placeholder:"FILE" help:"Write to a file; its ending says how: .csv the list, one row an orbit; .png, .svg or .pdf a figure."`
+	On     string `default:"table" enum:"table,portrait" help:"The figure: orbits drawn on the table (the default), or marked on the portrait: a ring where elliptic, a cross where hyperbolic, a cross in a ring where inverse hyperbolic, a bar for a family."`
+	Only   []int  `placeholder:"N,M" help:"The sets that a figure shows, by their numbers in the list; all where none is given."`
+	Follow string `placeholder:"NAME=LO:HI[:STEPS]" help:"Follow the orbits while a number of the table goes from LO to HI, for example eps=0.05:0.15 or 1.radius=1:2; a figure shows the trace of each."`
 }
 
 // census is what orbits finds, in the form of its JSON. Lengths are in Unit.
@@ -24,10 +27,13 @@ type census struct {
 	Name    string        `json:"name"`
 	Unit    string        `json:"unit"`
 	Length  float64       `json:"perimeter"`
+	Turns   int           `json:"turns"`   // rotations that map the wall onto itself, that by nothing counted
+	Mirrors int           `json:"mirrors"` // lines in which the wall is its own mirror image
 	UpTo    int           `json:"up_to"`
 	Method  string        `json:"method"` // words or grids
 	Periods []periodCount `json:"periods"`
 	Orbits  []orbitRow    `json:"orbits"`
+	list    *orbit.List
 }
 
 type periodCount struct {
@@ -39,7 +45,10 @@ type periodCount struct {
 
 type orbitRow struct {
 	Period     int         `json:"period"`
-	Set        int         `json:"set"` // equal for orbits of equal period, length and trace: copies by symmetry
+	Set        int         `json:"set"` // equal for orbits that are copies by symmetry
+	Copies     int         `json:"copies"`
+	Symmetry   string      `json:"symmetry"`
+	Word       string      `json:"word"` // the sides met, by number in the order of s
 	Winding    *int        `json:"winding"`
 	Length     float64     `json:"length"`
 	Trace      float64     `json:"trace"`
@@ -73,16 +82,30 @@ type bounceRow struct {
 	Y float64 `json:"y"`
 }
 
-// Run searches and lists.
+// Run searches, and lists, draws or follows.
 func (c *orbits) Run(ctx context.Context, std streams) error {
-	if c.Out != "" && !strings.EqualFold(filepath.Ext(c.Out), ".csv") {
-		return misuse("%s: orbits are written as CSV; let the name end in .csv", quoted(c.Out))
+	format := export.CSV
+	if c.Out != "" {
+		var err error
+		if format, err = export.FormatOf(c.Out); err != nil || format == export.JSON {
+			return misuse("%s: let the name end in .csv for the list, or in .png, .svg or .pdf for a figure", quoted(c.Out))
+		}
+	}
+	if err := checkWorkers(c.Workers); err != nil {
+		return err
 	}
 	t, err := readTable(c.File, std)
 	if err != nil {
 		return err
 	}
-	list, err := orbit.Find(t, c.UpTo, ctx.Err)
+	ask := orbit.Search{UpTo: c.UpTo, Watch: ctx.Err, Spread: run.Spread(ctx, c.Workers)}
+	watched, done := watching(std, &ask)
+	defer done()
+	if c.Follow != "" {
+		return c.follow(ctx, std, t, ask, format, watched)
+	}
+	list, err := orbit.Find(t, ask)
+	watched()
 	if limit := (*orbit.Limit)(nil); errors.As(err, &limit) {
 		return &wrongUse{err}
 	}
@@ -90,12 +113,17 @@ func (c *orbits) Run(ctx context.Context, std streams) error {
 		return err
 	}
 	found := counted(t, list)
-	if c.Out != "" {
-		if err := writeFile(c.Out, found.csv()); err != nil {
-			return err
-		}
+	switch {
+	case c.Out != "" && format == export.CSV:
+		var out bytes.Buffer
+		_ = list.WriteCSV(&out, t, program) // a buffer takes all
+		err = writeFile(c.Out, out.Bytes())
+	case c.Out != "":
+		err = c.picture(ctx, std, t, list, format)
 	}
 	switch {
+	case err != nil:
+		return err
 	case c.JSON:
 		return writeJSON(std.out, found)
 	case c.Out == "":
@@ -107,21 +135,16 @@ func (c *orbits) Run(ctx context.Context, std streams) error {
 // counted is the list in the form of the JSON.
 func counted(t *table.Table, list *orbit.List) *census {
 	d := t.Design()
-	c := &census{Name: d.Name, Unit: d.Unit.String(), Length: t.Length(), UpTo: list.UpTo, Method: "grids", Periods: []periodCount{}, Orbits: []orbitRow{}}
+	c := &census{Name: d.Name, Unit: d.Unit.String(), Length: t.Length(), Turns: list.Turns, Mirrors: list.Mirrors, UpTo: list.UpTo, Method: "grids", Periods: []periodCount{}, Orbits: []orbitRow{}, list: list}
 	if list.Words > 0 {
 		c.Method = "words"
 	}
 	listed := make([]int, list.UpTo+1)
-	leaks, set := orbit.Leaks(t), 0
+	leaks := orbit.Leaks(t)
 	for i := range list.Orbits {
 		o := &list.Orbits[i]
 		listed[o.Period()]++
-		r := row(o, leaks)
-		if set == 0 || !alike(&c.Orbits[i-1], &r) {
-			set++
-		}
-		r.Set = set
-		c.Orbits = append(c.Orbits, r)
+		c.Orbits = append(c.Orbits, row(o, leaks))
 	}
 	for n := orbit.Least; n <= list.UpTo; n++ {
 		c.Periods = append(c.Periods, periodCount{n, listed[n], list.Count(n), list.Settled[n]})
@@ -129,15 +152,8 @@ func counted(t *table.Table, list *orbit.List) *census {
 	return c
 }
 
-// alike reports whether two rows agree in period, length and trace.
-func alike(a, b *orbitRow) bool {
-	const tol = 1e-9 // relative: both come from equal formulas at mirrored places
-	return a.Period == b.Period && math.Abs(a.Length-b.Length) <= tol*a.Length &&
-		math.Abs(a.Trace-b.Trace) <= tol*(1+math.Abs(a.Trace)) && (a.Family == nil) == (b.Family == nil)
-}
-
 func row(o *orbit.Orbit, leaks bool) orbitRow {
-	r := orbitRow{Period: o.Period(), Length: o.Length, Trace: o.Trace(), Residue: o.Residue(), Kind: o.Kind().String(),
+	r := orbitRow{Period: o.Period(), Set: o.Class, Copies: o.Copies, Symmetry: o.Symmetry(), Word: o.Word, Length: o.Length, Trace: o.Trace(), Residue: o.Residue(), Kind: o.Kind().String(),
 		TwoSenses: o.TwoSenses, Closure: o.Closure, Bounces: []bounceRow{}}
 	great, _ := o.Multipliers()
 	r.Multiplier = complexRow{real(great), imag(great)}

@@ -103,6 +103,80 @@ func TestOrbitsMisused(t *testing.T) {
 	refused(t, 2, []string{"2 or more"}, disc, "orbits", "-", "--up-to", "1")
 	refused(t, 2, []string{"at most 12"}, disc, "orbits", "-", "--up-to", "13")
 	refused(t, 2, []string{"many"}, disc, "orbits", "-", "--up-to", "many")
-	refused(t, 2, []string{".csv"}, disc, "orbits", "-", "--up-to", "2", "-o", "orbits.png")
+	refused(t, 2, []string{".csv", ".png"}, disc, "orbits", "-", "--up-to", "2", "-o", "orbits.json")
+	refused(t, 2, []string{"radius"}, disc, "orbits", "-", "--up-to", "2", "--follow", "size=1:2")
+	refused(t, 2, []string{"lower end first"}, disc, "orbits", "-", "--up-to", "2", "--follow", "radius=2:1")
+	refused(t, 2, []string{"4 to"}, disc, "orbits", "-", "--up-to", "2", "--follow", "radius=1:2:1")
+	refused(t, 2, []string{"range"}, disc, "orbits", "-", "--up-to", "2", "--follow", "radius")
+	refused(t, 2, []string{"between"}, fine(t, "", "make", "limacon"), "orbits", "-", "--up-to", "2", "--follow", "eps=0.5:1.5:4")
+	refused(t, 1, []string{"sets", "1 to 1"}, disc, "orbits", "-", "--up-to", "2", "--only", "7", "-o", filepath.Join(t.TempDir(), "a.png"))
 	refused(t, 1, []string{"Standard input"}, "{", "orbits", "-", "--up-to", "2")
+}
+
+// TestOrbitFigures wants pictures on the table and on the portrait, each with
+// the table inside, and the symmetric copies of the stadium's orbits in sets.
+func TestOrbitFigures(t *testing.T) {
+	quad := fine(t, "", "make", "quadrupole", "eps=0.1")
+	for _, args := range [][]string{{".png"}, {".svg", "--on", "portrait"}, {".pdf", "--only", "2,3"}} {
+		ending, args := args[0], args[1:]
+		out := filepath.Join(t.TempDir(), "orbits"+ending)
+		fine(t, quad, append([]string{"orbits", "-", "--up-to", "3", "-o", out}, args...)...)
+		if info, err := os.Stat(out); err != nil || info.Size() < 2000 {
+			t.Errorf("%v %s: %v", args, ending, err)
+		}
+		if ending == ".png" {
+			fine(t, "", "check", out) // the table is inside
+		}
+	}
+	var c census
+	parsed(t, fine(t, fine(t, "", "make", "stadium"), "orbits", "-", "--up-to", "3", "--json"), &c)
+	if c.Turns != 2 || c.Mirrors != 2 {
+		t.Errorf("%d turns, %d mirrors; a stadium has 2 and 2", c.Turns, c.Mirrors)
+	}
+	for _, o := range c.Orbits {
+		copies := 0
+		for _, x := range c.Orbits {
+			if x.Set == o.Set {
+				copies++
+			}
+		}
+		if copies != o.Copies || o.Symmetry == "no copies" || len(o.Word) != o.Period {
+			t.Errorf("set %d has %d orbits and says %d, %q, word %q", o.Set, copies, o.Copies, o.Symmetry, o.Word)
+		}
+	}
+}
+
+// The bow-tie's birth at 1/9 (closed form), in all forms of what was followed.
+func TestFollowed(t *testing.T) {
+	quad := fine(t, "", "make", "quadrupole", "unit=um")
+	args := []string{"orbits", "-", "--up-to", "4", "--follow", "eps=0.1:0.12:8"}
+	var f followed
+	parsed(t, fine(t, quad, append(args, "--json")...), &f)
+	born := 0
+	for _, c := range f.Changes {
+		if math.Abs(c.At-1.0/9) < 1e-6*0.02 && strings.Contains(c.Text, "4 bounces splits off one of 2") {
+			born++
+		}
+	}
+	if born != 1 || f.Number != "1.eps" || f.Unit != "µm" {
+		t.Errorf("born %d times, number %q, unit %q: %+v", born, f.Number, f.Unit, f.Changes)
+	}
+	for _, b := range f.Branches {
+		for _, p := range b.Points {
+			if p.At < f.From || p.At > f.To || math.Abs(p.Residue-(2-p.Trace)/4) > 1e-15 {
+				t.Errorf("branch %d: %+v", b.Branch, p)
+			}
+		}
+	}
+	if text := fine(t, quad, args...); !strings.Contains(text, "1.eps = 0.111111111: an orbit of 4 bounces splits off one of 2.") {
+		t.Errorf("the list says\n%s", text)
+	}
+	for _, ending := range []string{".csv", ".svg"} {
+		out := filepath.Join(t.TempDir(), "f"+ending)
+		fine(t, quad, append(args, "-o", out)...)
+		data, err := os.ReadFile(out)
+		if err != nil || !strings.Contains(string(data), "trace") {
+			t.Errorf("%s: %v", ending, err)
+		}
+	}
 }

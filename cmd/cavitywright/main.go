@@ -25,7 +25,7 @@ import (
 func main() {
 	state := flag.String("state", "", "write what the window shows to this file after each frame (for tests)")
 	flag.Usage = func() {
-		fmt.Fprintln(flag.CommandLine.Output(), "usage: cavitywright [FILE]\n\nFILE is a table (NAME.cavity.json), or a PNG or SVG figure that carries one.")
+		fmt.Fprintln(flag.CommandLine.Output(), "usage: cavitywright [FILE]\n\nFILE is a table (NAME.cavity.json), a PNG or SVG figure that carries one, or an outline to import (svg or csv).")
 		flag.PrintDefaults()
 	}
 	flag.Parse()
@@ -40,7 +40,16 @@ func main() {
 }
 
 func run(path, state string) error {
+	asked := path
 	t, path, trouble := first(path)
+	outline := trouble != nil && window.HoldsOutline(asked, trouble)
+	if outline {
+		trouble = nil
+		var err error
+		if t, path, err = first(""); err != nil {
+			return err
+		}
+	}
 	if trouble != nil {
 		// Said in the terminal and in the window: who started it by a click
 		// sees no terminal.
@@ -69,6 +78,9 @@ func run(path, state string) error {
 	w := window.New(a, t, path, o)
 	if trouble != nil {
 		w.Say(trouble.Error())
+	}
+	if outline {
+		w.ImportOutline(asked)
 	}
 	w.ShowAndRun()
 	return nil

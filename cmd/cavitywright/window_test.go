@@ -97,16 +97,21 @@ func (d *designer) until(what string, ok func(window.State) bool) window.State {
 			return s
 		}
 	}
+	s.Stalls = nil
 	d.t.Fatalf("waited for: %s\nlast state: %+v\n%s", what, s, d.log.String())
 	return s
 }
 
 func (d *designer) do(args ...string) {
 	d.t.Helper()
-	if out, err := exec.Command("xdotool", args...).CombinedOutput(); err != nil {
+	if out, err := xdotool(args...); err != nil {
 		d.t.Fatalf("xdotool %v: %v %s", args, err, out)
 	}
 	time.Sleep(60 * time.Millisecond)
+}
+
+func xdotool(args ...string) ([]byte, error) {
+	return exec.Command("xdotool", args...).CombinedOutput()
 }
 
 func (d *designer) drag(x0, y0, x1, y1 int) {

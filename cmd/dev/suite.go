@@ -39,8 +39,9 @@ var testSteps = []step{
 	{"real window", []string{"cmd/cavitywright"}, testWindow},
 }
 
-// benchSteps measure the kernel; they need Go alone.
+// benchSteps measure the kernel; they need Go, and the first a C compiler.
 var benchSteps = []step{
+	{"pace against C", []string{paceFolder}, pace},
 	{"benchmarks", []string{"table", "sim", "render"}, func(ctx context.Context, s *site, patterns []string) error {
 		return s.goTool(ctx, withC, append([]string{"test", "-run=^$", "-bench=.", "-benchmem", tagged(s)}, patterns...)...)
 	}},

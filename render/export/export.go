@@ -43,14 +43,18 @@ func FormatOf(filename string) (Format, error) {
 			return Format(f), nil
 		}
 	}
-	return 0, &UnknownEnding{Name: filename}
+	return 0, &UnknownEnding{Name: filename, Known: names[:]}
 }
 
-// UnknownEnding says that a file's name does not tell a format.
-type UnknownEnding struct{ Name string }
+// UnknownEnding says that a file's name does not tell a format; Known are the
+// endings that do.
+type UnknownEnding struct {
+	Name  string
+	Known []string
+}
 
 func (e *UnknownEnding) Error() string {
-	return fmt.Sprintf("the name %q does not end in a known format; use .%s", e.Name, strings.Join(names[:], ", ."))
+	return fmt.Sprintf("the name %q does not end in a known format; use .%s", e.Name, strings.Join(e.Known, ", ."))
 }
 
 // Unfit says that a format cannot hold a kind of figure.

@@ -343,3 +343,42 @@ func TestWriteErrorsComeThrough(t *testing.T) {
 		}
 	}
 }
+
+// A map is the same cell for cell in every picture: its corner cells and the
+// blank one stand where they belong, and the numbers are in the CSV.
+func TestMap(t *testing.T) {
+	f := figure.Grid{
+		X: figure.Axis{Label: "s", Unit: "mm", Hi: 3}, Y: figure.Axis{Label: "p = sin χ", Lo: -1, Hi: 1},
+		Value: figure.Axis{Label: "stretching", Unit: "1/bounce", Hi: 1}, Columns: 3, Rows: 2,
+		Strip: true, StripHi: 3, Values: []float64{0, 0.5, 1, math.NaN(), 0.25, 0.75}, Caption: []string{"A map."},
+	}
+	o := Options{WidthMM: 85, HeightMM: 70, DPI: 200, Look: render.Paper(1)}
+	img, err := png.Decode(bytes.NewReader(written(t, PNG, f, o)))
+	if err != nil {
+		t.Fatal(err)
+	}
+	plot, _ := render.PlotOf(f, render.NewBox(0, 0, 85, 70), o.Look)
+	ramp := render.NewRamp(o.Look)
+	for k, v := range f.Values {
+		x := plot.ToX((float64(k%3) + 0.5))
+		y := plot.ToY(float64(k/3) - 0.5)
+		r, g, b, _ := img.At(int(x/25.4*200), int(y/25.4*200)).RGBA()
+		want := o.Look.Paper
+		if !math.IsNaN(v) {
+			want = ramp.At(v)
+		}
+		if uint8(r>>8) != want.R || uint8(g>>8) != want.G || uint8(b>>8) != want.B {
+			t.Errorf("cell %d is %x %x %x, want %v", k, r>>8, g>>8, b>>8, want)
+		}
+	}
+	if svg := string(written(t, SVG, f, o)); !strings.Contains(svg, "data:image/png;base64,") || !strings.Contains(svg, "stretching (1/bounce)") {
+		t.Error("the drawing lacks its map or the name of its scale")
+	}
+	if a, b := written(t, PDF, f, o), written(t, PDF, f, o); !bytes.Equal(a, b) || !bytes.Contains(a, []byte("/Subtype /Image")) {
+		t.Error("the document lacks its map, or is another one each time")
+	}
+	text := string(written(t, CSV, f, o))
+	if !strings.Contains(text, "s,p,value\n0.5,-0.5,0\n1.5,-0.5,0.5\n") || !strings.Contains(text, "\n0.5,0.5,\n") {
+		t.Errorf("the numbers are %q", text)
+	}
+}

@@ -19,6 +19,7 @@ type PDF struct {
 	doc   *fpdf.Fpdf
 	page  render.Box
 	alpha float64
+	tiles int                  // pictures in the document
 	fonts map[letter.Font]bool // that are in the document
 }
 

@@ -94,8 +94,8 @@ type Label struct {
 
 // Line is one polyline of a drawing. At gives, for a wall, the fraction s/L in
 // [0, 1] at each point, so that the wall can wear its colour; of all other
-// roles only Coat has it. Texture is that of a Coat; a JointMark of texture Gap is
-// the post of an opening.
+// roles only Coat has it. Texture is that of a Coat, Gap where all of a loop is
+// open; a JointMark of texture Gap is the post of an opening.
 type Line struct {
 	Role    Role
 	Hue     int

@@ -56,6 +56,7 @@ func WithRays(t *table.Table, s table.Study) table.Study {
 func PortraitFigure(t *table.Table, tally *PortraitTally, program string) figure.Dots {
 	c := NewSection(t)
 	f := c.Axes(t, table.WholeSection())
+	f.X.Keys = keysOf(t, criticalRemark)
 	for _, set := range tally.Sets() {
 		shown := figure.DotSet{Name: set.Name, Hue: set.Hue, X: make([]float64, len(set.X)), Y: make([]float64, len(set.X))}
 		for i := range set.X {
@@ -65,7 +66,7 @@ func PortraitFigure(t *table.Table, tally *PortraitTally, program string) figure
 	}
 	f.Caption = []string{
 		captionHead(t, t.Design().Study.Launches, len(tally.Sets()), tally.of.Each, tally.Stops),
-		captionFoot(t, program),
+		Foot(t, program),
 	}
 	return f
 }
@@ -82,7 +83,7 @@ const (
 // the caption ends with.
 func RaysFigure(t *table.Table, tally *RaysTally, program string) figure.Paths {
 	size := plane.Diagonal(t.Bounds())
-	f := figure.Paths{Unit: t.Design().Unit.String(), Lines: Outline(t, fineChords*size)}
+	f := figure.Paths{Unit: t.Design().Unit.String(), Lines: Outline(t, fineChords*size), Keys: Keys(t)}
 	for _, l := range f.Lines {
 		if l.Role == figure.JointMark {
 			resize(l, jointSize*size)
@@ -93,7 +94,7 @@ func RaysFigure(t *table.Table, tally *RaysTally, program string) figure.Paths {
 	if own := slices.DeleteFunc(slices.Clone(launches), func(l table.Launch) bool { return l.Pattern == table.Even }); len(own) > 0 {
 		launches = own // NewRays leaves the sea out
 	}
-	f.Caption = []string{captionHead(t, launches, len(tally.Lines()), tally.of.Each, tally.Stops), captionFoot(t, program)}
+	f.Caption = []string{captionHead(t, launches, len(tally.Lines()), tally.of.Each, tally.Stops), Foot(t, program)}
 	return f
 }
 
@@ -108,11 +109,8 @@ func resize(l figure.Line, h float64) {
 
 // captionHead says what was computed.
 func captionHead(t *table.Table, launches []table.Launch, orbits, each int, stops Stops) string {
-	d := t.Design()
 	var b strings.Builder
-	if d.Name != "" {
-		b.WriteString(d.Name + ": ")
-	}
+	b.WriteString(Head(t))
 	fmt.Fprintf(&b, "%s of up to %s, %s.", counted(orbits, "orbit"), counted(each, "bounce"), launched(t, launches))
 	for _, w := range []struct {
 		stop sim.Stop
@@ -125,8 +123,17 @@ func captionHead(t *table.Table, launches []table.Launch, orbits, each int, stop
 	return b.String()
 }
 
-// captionFoot says on what it was computed, and with what.
-func captionFoot(t *table.Table, program string) string {
+// Head is what a caption begins with: the table's name, where it has one.
+func Head(t *table.Table) string {
+	if name := t.Design().Name; name != "" {
+		return name + ": "
+	}
+	return ""
+}
+
+// Foot is the last line of a caption: on what a figure was computed, and with
+// what.
+func Foot(t *table.Table, program string) string {
 	d := t.Design()
 	sense := ""
 	if d.Study.Display.Sense == table.Clockwise {

@@ -38,6 +38,15 @@ type Tally interface {
 	Merge(next Tally)
 }
 
+// Sated is a Tally that may have had enough of an orbit before its bounces are
+// used up: one whose ray carries too little, for example. It is asked after
+// each bounce that it was given; true ends the orbit there.
+type Sated interface{ Enough() bool }
+
+// Elsewhere is a Measurement whose orbits fly on another table than the one at
+// hand: on the same walls taken as mirrors, for example.
+type Elsewhere interface{ On() *sim.Tracer }
+
 // Runner carries out a measurement, on any number of workers and with a seed
 // that it knows.
 type Runner func(Measurement) (Tally, error)

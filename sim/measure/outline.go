@@ -1,77 +1,116 @@
 package measure
 
 import (
-	"cmp"
 	"math"
 	"slices"
 
 	"cavitywright/sim/figure"
 	"cavitywright/table"
 	"cavitywright/table/curve"
-	"cavitywright/table/wall"
 
 	"gonum.org/v1/gonum/spatial/r2"
 )
 
 // Outline is the wall of a table as lines of a drawing: the floor, the wall
-// with the fraction s/L at each point and gaps at its openings, and marks at
-// the joints and at the ends of openings. Curves become chords that stay within
-// chordError (in the table's unit) of them; only the drawing is made of chords,
-// rays never run on them.
+// with the fraction s/L at each point and gaps at its openings, the textures of
+// its coats along the inside, and marks at the joints and at the ends of
+// openings. Curves become chords that stay within chordError (in the table's
+// unit) of them; only the drawing is made of chords, rays never run on them.
 func Outline(t *table.Table, chordError float64) []figure.Line {
-	var floor, walls, joints []figure.Line
-	gaps := openings(t)
-	for _, l := range t.Loops() {
-		f := figure.Line{Role: figure.Floor, Closed: true}
-		w := figure.Line{Role: figure.Wall}
-		loop := len(walls)
-		for i := l.First; i < l.Last; i++ {
-			p := &t.Pieces()[i]
-			along(t, &f, p, 0, p.Length, chordError)
-			at := 0.0
-			for _, o := range gaps[i] {
-				along(t, &w, p, at, o.S0-p.S0, chordError)
-				walls = appendWall(walls, w)
-				w, at = figure.Line{Role: figure.Wall}, o.S1-p.S0
-				joints = append(joints, across(p, o.S0-p.S0, chordError), across(p, at, chordError))
+	var floor, walls, coats, marks []figure.Line
+	runs := Coats(t)
+	for li := range t.Loops() {
+		l := &t.Loops()[li]
+		floor = append(floor, figure.Line{Role: figure.Floor, Closed: true})
+		walk(t, &floor[li], l.S0, l.S1, chordError)
+		floor[li].At = nil
+		var gaps []Coated
+		for _, r := range runs {
+			switch {
+			case r.Loop != li:
+			case TextureOf(r.Law) == figure.Gap:
+				gaps = append(gaps, r)
+				marks = append(marks, ends(t, l, r, chordError)...)
+			default:
+				coats = append(coats, coatLine(t, r, chordError))
 			}
-			along(t, &w, p, at, p.Length, chordError)
 		}
-		f.At = nil
-		floor = append(floor, f)
-		w.Closed = len(walls) == loop
-		walls = appendWall(walls, w)
+		walls = append(walls, between(t, l, gaps, chordError)...)
 	}
 	if t.Open() {
 		floor = nil
 	}
 	for _, j := range t.Joints() {
-		joints = append(joints, across(&t.Pieces()[j.Piece], 0, chordError))
+		marks = append(marks, across(&t.Pieces()[j.Piece], 0, chordError))
 	}
-	return append(append(floor, walls...), joints...)
+	return slices.Concat(floor, walls, coats, marks)
 }
 
-// openings are, by piece, the stretches that let everything out, in order; the
-// wall is drawn with gaps there.
-func openings(t *table.Table) map[int][]table.Stretch {
-	all := map[int][]table.Stretch{}
-	for _, o := range t.Stretches() {
-		if _, open := o.Law.(wall.Opening); open {
-			all[o.Piece] = append(all[o.Piece], o)
+// between is what gaps in the order of s leave of the wall of a loop: one closed
+// line where there are none, else the stretches between them, parted at the
+// loop's start too.
+func between(t *table.Table, l *table.Loop, gaps []Coated, chordError float64) []figure.Line {
+	if len(gaps) == 0 {
+		w := figure.Line{Role: figure.Wall, Closed: true}
+		walk(t, &w, l.S0, l.S1, chordError)
+		return []figure.Line{w}
+	}
+	var walls []figure.Line
+	put := func(from, to float64) {
+		if from < to {
+			w := figure.Line{Role: figure.Wall}
+			walk(t, &w, from, to, chordError)
+			walls = append(walls, w)
 		}
 	}
-	for _, o := range all {
-		slices.SortFunc(o, func(a, b table.Stretch) int { return cmp.Compare(a.S0, b.S0) })
+	at := max(l.S0, gaps[len(gaps)-1].S1-(l.S1-l.S0)) // the last may run over the start
+	for _, g := range gaps {
+		put(at, g.S0)
+		at = g.S1
 	}
-	return all
+	put(at, l.S1)
+	return walls
 }
 
-// appendWall adds a stretch of wall unless it is empty.
-func appendWall(walls []figure.Line, w figure.Line) []figure.Line {
-	if len(w.X) < 2 || w.At[0] == w.At[len(w.At)-1] {
-		return walls
+// ends are the posts of an opening; of one in the whole of a loop nothing is
+// left but a faint line where it would be.
+func ends(t *table.Table, l *table.Loop, r Coated, chordError float64) []figure.Line {
+	if r.Whole {
+		return []figure.Line{coatLine(t, r, chordError)}
 	}
-	return append(walls, w)
+	end := r.S1
+	if end >= l.S1 {
+		end -= l.S1 - l.S0
+	}
+	return []figure.Line{post(t, r.S0, chordError), post(t, end, chordError)}
+}
+
+// coatLine is the line of a stretch with a texture.
+func coatLine(t *table.Table, r Coated, chordError float64) figure.Line {
+	c := figure.Line{Role: figure.Coat, Texture: TextureOf(r.Law), Closed: r.Whole}
+	l := t.Loops()[r.Loop]
+	walk(t, &c, r.S0, min(r.S1, l.S1), chordError)
+	if r.S1 > l.S1 {
+		walk(t, &c, l.S0, l.S0+r.S1-l.S1, chordError)
+	}
+	return c
+}
+
+// post is the mark of the end of an opening.
+func post(t *table.Table, s, chordError float64) figure.Line {
+	i, x := t.Locate(s)
+	m := across(&t.Pieces()[i], x, chordError)
+	m.Texture = figure.Gap
+	return m
+}
+
+// walk appends the wall between two places of one loop, from <= to, to w.
+func walk(t *table.Table, w *figure.Line, from, to, chordError float64) {
+	i, _ := t.Locate(from)
+	for ; i < len(t.Pieces()) && t.Pieces()[i].S0 < to; i++ {
+		p := &t.Pieces()[i]
+		along(t, w, p, max(0, from-p.S0), min(to-p.S0, p.Length), chordError)
+	}
 }
 
 // along appends the wall of a piece between two lengths from its start.
@@ -88,7 +127,8 @@ func along(t *table.Table, w *figure.Line, p *table.Piece, from, to, chordError 
 		x := t0 + (t1-t0)*float64(k)/float64(n)
 		at := p.FrameAt(x).Point
 		w.X, w.Y = append(w.X, at.X), append(w.Y, at.Y)
-		w.At = append(w.At, (p.S0+p.S(x))/t.Length())
+		local := min(max(p.S(x), from), to) // not below 0 by rounding, which would be no place
+		w.At = append(w.At, (p.S0+local)/t.Length())
 	}
 }
 

@@ -82,27 +82,33 @@ func (c Section) Axes(t *table.Table, g table.Region) figure.Dots {
 		x, _ := c.At(j.S, 0)
 		f.X.Marks = append(f.X.Marks, figure.Mark{At: x, Kind: figure.Joint})
 	}
-	if n := criticalSine(t); n < 1 {
-		for _, p := range []float64{-n, n} {
-			_, y := c.At(0, p)
-			f.Y.Marks = append(f.Y.Marks, figure.Mark{At: y, Kind: figure.Critical})
-		}
-	}
+	c.addCoats(&f, t)
 	return f
 }
 
-// criticalSine is the sine of the least critical angle of the table's walls, 1
-// where it has none.
-func criticalSine(t *table.Table) float64 {
-	least := 1.0
-	look := func(l wall.Law) {
-		if d, ok := l.(wall.Dielectric); ok {
-			least = math.Min(least, d.Critical())
+// addCoats lays the coats along the s axis, with the critical lines of each
+// dielectric stretch over that stretch.
+func (c Section) addCoats(f *figure.Dots, t *table.Table) {
+	for _, r := range Coats(t) {
+		l := t.Loops()[r.Loop]
+		c.addCoat(f, r.Law, r.S0, math.Min(r.S1, l.S1))
+		if r.S1 > l.S1 {
+			c.addCoat(f, r.Law, l.S0, l.S0+r.S1-l.S1)
 		}
 	}
-	look(t.Law())
-	for _, s := range t.Stretches() {
-		look(s.Law)
+}
+
+func (c Section) addCoat(f *figure.Dots, law wall.Law, s0, s1 float64) {
+	x0, _ := c.At(s0, 0)
+	x1, _ := c.At(s1, 0)
+	x0, x1 = math.Min(x0, x1), math.Max(x0, x1)
+	f.X.Coats = append(f.X.Coats, figure.Coated{Lo: x0, Hi: x1, Texture: TextureOf(law)})
+	d, ok := law.(wall.Dielectric)
+	if !ok || d.Critical() >= 1 {
+		return
 	}
-	return least
+	for _, p := range []float64{-d.Critical(), d.Critical()} {
+		_, y := c.At(0, p)
+		f.Y.Marks = append(f.Y.Marks, figure.Mark{At: y, Kind: figure.Critical, From: x0, To: x1})
+	}
 }

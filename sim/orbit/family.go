@@ -35,7 +35,7 @@ func (c *chain) clone() *chain { return newChain(c.t, c.s) }
 func (b *book) moved(c *chain, d []float64, h float64) (m *chain, o Orbit, ok bool) {
 	m = c.clone()
 	for i := range m.s {
-		m.s[i] = wrap(&b.mirror.Loops()[m.loop[i]], m.s[i]+h*d[i])
+		m.put(i, wrap(&b.mirror.Loops()[m.loop[i]], m.s[i]+h*d[i]))
 	}
 	if !m.fill() || m.miss() > seedMiss || !m.polish(math.Abs(h)) || math.Abs(m.length-c.length) > sameTol*b.mirror.Length() {
 		return m, o, false
@@ -55,9 +55,6 @@ func (b *book) moved(c *chain, d []float64, h float64) (m *chain, o Orbit, ok bo
 // enters it; one that cannot be moved is an isolated orbit.
 func (b *book) addFamily(c *chain, o *Orbit) bool {
 	n := o.Period()
-	for len(b.threads) <= n {
-		b.threads = append(b.threads, nil)
-	}
 	for i := range b.threads[n] {
 		if b.threads[n][i].holds(b.prover, o) {
 			return false
@@ -72,7 +69,7 @@ func (b *book) addFamily(c *chain, o *Orbit) bool {
 		if !b.prime(o) {
 			return false
 		}
-		b.of[n] = append(b.of[n], *o)
+		b.enter(o)
 		return true
 	}
 	rep := f.representative()
@@ -80,9 +77,9 @@ func (b *book) addFamily(c *chain, o *Orbit) bool {
 	kept := *f.family
 	kept.Ranges = slices.Clone(kept.Ranges)
 	rep.Family = &kept
-	t := thread{length: o.Length, family: f.family, loops: f.from.loop, states: f.states()}
+	t := thread{orbit: len(b.of[n]), length: o.Length, family: f.family, loops: f.from.loop, states: f.states()}
 	rep.TwoSenses = !t.has(b.prover, rep, -1)
-	b.of[n] = append(b.of[n], *rep)
+	b.enter(rep)
 	b.threads[n] = append(b.threads[n], t)
 	return true
 }

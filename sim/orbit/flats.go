@@ -31,7 +31,7 @@ type unfolded struct {
 // reflections of one period (Fox and Kershner, Duke Math. J. 2, 147, 1936, from
 // memory). So every marginal family between flats is met, however narrow. Of a
 // polygon these are all orbits.
-func (b *book) level(list *List, watch func() error) error {
+func (b *book) level(list *List, ask Search) error {
 	var flats []flat
 	pieces := b.mirror.Pieces()
 	for i := range pieces {
@@ -46,7 +46,7 @@ func (b *book) level(list *List, watch func() error) error {
 		}
 		err := cyclicWords(len(flats), n, func(w []int) error {
 			if tried++; tried%256 == 0 {
-				if err := watch(); err != nil {
+				if err := ask.Watch(); err != nil {
 					return err
 				}
 			}

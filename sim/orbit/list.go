@@ -1,8 +1,6 @@
 package orbit
 
 import (
-	"cmp"
-	"math"
 	"slices"
 	"strconv"
 
@@ -22,13 +20,17 @@ type List struct {
 	// Settled reports for each period (from 0) whether the last grid brought
 	// nothing new; for posts and polygons whether every word was decided.
 	Settled []bool
+	// Turns is the number of rotations that map the wall onto itself, the one by
+	// nothing included, and Mirrors that of the lines in which it is its own
+	// mirror image. Those of circles about one centre are not counted.
+	Turns, Mirrors int
 }
 
 // Complete reports whether the list holds all orbits, on the ground given in
 // the package's comment.
 func (l *List) Complete() bool { return l.Words > 0 && !slices.Contains(l.Settled, false) }
 
-// Count is the number of orbits of a period, those that differ when run
+// Count is the number of orbits of a period, symmetric copies counted each, those that differ when run
 // backwards counted twice, each family as one orbit.
 func (l *List) Count(period int) int {
 	n := 0
@@ -66,88 +68,81 @@ func (e *Limit) Error() string {
 	return "the orbits are too many to search for on this table; ask for at most " + strconv.Itoa(e.Greatest) + " bounces"
 }
 
-// Find searches the table for its orbits of at most upTo bounces. watch, which
-// may be nil, is told now and then, and ends the search with the error that it
-// returns. The error is a *Limit where upTo is out of range.
-func Find(t *table.Table, upTo int, watch func() error) (*List, error) {
-	if watch == nil {
-		watch = func() error { return nil }
+// Search is what a search is asked.
+type Search struct {
+	UpTo int // the greatest period
+	// Watch, which may be nil, is called now and then, from any goroutine of
+	// Spread, and ends the search with the error that it returns.
+	Watch func() error
+	// Spread runs do for each piece from 0 to pieces-1, in any order and on any
+	// number of goroutines, and returns an error of one; nil runs one after the
+	// other. What is found does not depend on it.
+	Spread func(pieces int, do func(piece int) error) error
+	// Told, which may be nil, is called now and then, from the goroutine of
+	// Find, with the share of the work that was done, if all of it is needed,
+	// and the number of orbits found so far.
+	Told func(share float64, found int)
+}
+
+// serial is a Spread without goroutines.
+func serial(pieces int, do func(int) error) error {
+	for i := range pieces {
+		if err := do(i); err != nil {
+			return err
+		}
 	}
-	dispersing := Posts(t)
-	greatest := MostBounces
-	if dispersing {
-		greatest = mostLetters(len(t.Loops()))
+	return nil
+}
+
+// ready fills what was left open.
+func (s Search) ready() Search {
+	if s.Watch == nil {
+		s.Watch = func() error { return nil }
 	}
-	if upTo < Least || upTo > greatest {
-		return nil, &Limit{upTo, greatest}
+	if s.Spread == nil {
+		s.Spread = serial
+	}
+	if s.Told == nil {
+		s.Told = func(float64, int) {}
+	}
+	return s
+}
+
+// Greatest is the greatest period that can be searched for on a table.
+func Greatest(t *table.Table) int {
+	if Posts(t) {
+		return mostLetters(len(t.Loops()))
+	}
+	return MostBounces
+}
+
+// Find searches the table for its orbits of at most ask.UpTo bounces. The error
+// is a *Limit where that is out of range, or that of Watch.
+func Find(t *table.Table, ask Search) (*List, error) {
+	ask = ask.ready()
+	if greatest := Greatest(t); ask.UpTo < Least || ask.UpTo > greatest {
+		return nil, &Limit{ask.UpTo, greatest}
 	}
 	p, err := newProver(t)
 	if err != nil {
 		return nil, err
 	}
-	b := book{prover: p, of: make([][]Orbit, upTo+1)}
-	list := &List{UpTo: upTo, Settled: make([]bool, upTo+1)}
-	if dispersing {
-		err = b.spell(list, watch)
-	} else {
-		err = b.refine(list, watch)
-	}
-	if err != nil {
-		return nil, err
-	}
-	for _, of := range b.of {
-		for i := range of {
-			p.finish(&of[i])
-		}
-		list.Orbits = append(list.Orbits, of...)
-	}
-	list.sort()
-	return list, nil
+	list, _, err := find(p, ask)
+	return list, err
 }
 
-// sort orders by period, length, trace, and place.
-func (l *List) sort() {
-	const lengthTol = 1e-10 // relative: symmetric copies stand together
-	slices.SortStableFunc(l.Orbits, func(a, b Orbit) int {
-		if c := cmp.Compare(a.Period(), b.Period()); c != 0 {
-			return c
-		}
-		if math.Abs(a.Length-b.Length) > lengthTol*a.Length {
-			return cmp.Compare(a.Length, b.Length)
-		}
-		if math.Abs(a.Trace()-b.Trace()) > lengthTol*(10+math.Abs(a.Trace())) {
-			return cmp.Compare(a.Trace(), b.Trace())
-		}
-		return cmp.Compare(a.Bounces[0].S, b.Bounces[0].S)
-	})
-}
-
-// book holds the orbits found so far, by period.
-type book struct {
-	*prover
-	of [][]Orbit
-	// threads are the members of the families found, by period.
-	threads [][]thread
-}
-
-// add takes a polished chain into the book, if it is an orbit, prime, and new.
-func (b *book) add(c *chain) bool {
-	o, ok := b.prove(c)
-	if !ok {
-		return false
+// find searches, and answers the book too.
+func find(p *prover, ask Search) (*List, *book, error) {
+	b := newBook(p, ask.UpTo)
+	b.group = symmetries(p.mirror)
+	list := &List{UpTo: ask.UpTo, Settled: make([]bool, ask.UpTo+1)}
+	search := b.refine
+	if Posts(p.t) {
+		search = b.spell
 	}
-	n := o.Period()
-	for i := range b.of[n] {
-		if b.same(&b.of[n][i], &o) {
-			return false
-		}
+	if err := search(list, ask); err != nil {
+		return nil, nil, err
 	}
-	if !b.marginal(c) {
-		if !b.prime(&o) {
-			return false
-		}
-		b.of[n] = append(b.of[n], o)
-		return true
-	}
-	return b.addFamily(c, &o)
+	b.gather(list)
+	return list, b, nil
 }

@@ -1,6 +1,7 @@
 // Package orbit finds the periodic orbits of a table up to a number of bounces,
 // with length, stability and, where they come in families, the extent of the
-// family. It starts no goroutine and follows no rays over long times.
+// family; and follows them while the wall changes. It starts no goroutine and
+// follows no rays over long times.
 //
 // The orbits are those of the wall as if all of it were a mirror. They are the
 // places where the length of a closed polygon with its corners on the wall is
@@ -30,6 +31,16 @@
 //     periods it came to that. Orbits that differ only within a cell, as in the
 //     narrow resonances of an almost integrable table, and orbits that are seen
 //     through a narrow gap only, may be missed together on all of the grids.
+//
+// Symmetries of the wall are used and shown: of what they map into each other one
+// part is searched, each orbit brings its images, and the images are one Class
+// (List.Firsts is one of each).
+//
+// Follow follows the orbits while a number of the table moves, from some values
+// at which all are searched for, and locates where they are born, part, and end.
+//
+// The work comes in pieces that the caller may spread over goroutines
+// (Search.Spread); what is found depends on neither their number nor their order.
 //
 // Orbits that meet a corner or touch the wall along its tangent are none. Left
 // out are those that bounce where the curvature jumps, to sameTol, for they have
@@ -75,6 +86,15 @@ type Orbit struct {
 	// Confined reports that no bounce lies on an opening or within the critical
 	// angle of a dielectric wall.
 	Confined bool
+	// Word is the sides of the wall that the bounces lie on, each by its number
+	// in the order of s, from 1; run together where there are fewer than ten.
+	Word string
+	// Class is equal for orbits that a symmetry of the wall maps into each
+	// other, in either sense: Copies of them. Mirrored and Turned report that
+	// a reflection, or a rotation, maps the orbit onto itself, so run or
+	// backwards.
+	Class, Copies    int
+	Mirrored, Turned bool
 	// Family is the family of which this is a member; nil for an isolated orbit.
 	Family *Family
 	// Closure is the greatest miss of a single bounce: in s, relative to the

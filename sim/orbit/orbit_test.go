@@ -29,7 +29,7 @@ func drawn(t testing.TB, law wall.Law, kind string, v ...float64) *table.Table {
 
 func found(t testing.TB, tab *table.Table, upTo int) *List {
 	t.Helper()
-	l, err := Find(tab, upTo, nil)
+	l, err := Find(tab, Search{UpTo: upTo})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -72,6 +72,13 @@ func hold(t *testing.T, l *List, wanted ...known) {
 		m := o.Monodromy
 		if !(o.Closure <= closureTol) || math.Abs(m.Det()-1) > 1e-13*(1+math.Abs(m.SS*m.PP)+math.Abs(m.SP*m.PS)) {
 			t.Errorf("%d bounces, length %.16g: closure %g, determinant %g", o.Period(), o.Length, o.Closure, o.Monodromy.Det())
+		}
+		for k := range i { // each begins at its least s, so that equal ones begin alike
+			x := &l.Orbits[k]
+			if x.Period() == o.Period() && math.Abs(x.Length-o.Length) < 1e-9 && math.Abs(x.Bounces[0].S-o.Bounces[0].S) < 1e-7 &&
+				math.Abs(x.Bounces[0].P-o.Bounces[0].P) < 1e-6 && math.Abs(x.Bounces[1].S-o.Bounces[1].S) < 1e-7 {
+				t.Errorf("%d bounces, length %.16g, from s = %.9g: listed twice", o.Period(), o.Length, o.Bounces[0].S)
+			}
 		}
 	}
 }
@@ -322,14 +329,14 @@ func TestConfined(t *testing.T) {
 
 func TestLimits(t *testing.T) {
 	for _, n := range []int{-1, 1, MostBounces + 1} {
-		_, err := Find(drawn(t, nil, "disc", 1), n, nil)
+		_, err := Find(drawn(t, nil, "disc", 1), Search{UpTo: n})
 		if limit := (*Limit)(nil); !errors.As(err, &limit) || limit.Asked != n || limit.Greatest != MostBounces {
 			t.Errorf("%d bounces: %v", n, err)
 		}
 	}
 	stop := errors.New("stop")
 	for _, tab := range []*table.Table{drawn(t, nil, "disc", 1), drawn(t, nil, "three-posts", 1, 6)} {
-		if _, err := Find(tab, 3, func() error { return stop }); !errors.Is(err, stop) {
+		if _, err := Find(tab, Search{UpTo: 3, Watch: func() error { return stop }}); !errors.Is(err, stop) {
 			t.Errorf("a search that was to stop answers %v", err)
 		}
 	}

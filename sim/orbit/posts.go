@@ -2,6 +2,7 @@ package orbit
 
 import (
 	"math"
+	"slices"
 
 	"cavitywright/table"
 	"cavitywright/table/curve"
@@ -93,24 +94,62 @@ func leads(w []int) bool {
 	return true
 }
 
+// wordsAtOnce is the number of words that are tried between two merges, and
+// wordPieces the number of pieces of work that they make.
+const (
+	wordsAtOnce = 4096
+	wordPieces  = 16
+)
+
 // spell tries every word.
-func (b *book) spell(list *List, watch func() error) error {
-	s := speller{b: b, places: placesOf(b.mirror)}
+func (b *book) spell(list *List, ask Search) error {
+	places := placesOf(b.mirror)
 	list.Settled[0], list.Settled[1] = true, true
+	ahead := 0.0
+	for n := Least; n <= list.UpTo; n++ {
+		ahead += words(len(b.mirror.Loops()), n)
+	}
 	for n := Least; n <= list.UpTo; n++ {
 		list.Settled[n] = true
-		err := cyclicWords(len(b.mirror.Loops()), n, func(w []int) error {
-			if list.Words%256 == 0 {
-				if err := watch(); err != nil {
-					return err
+		var batch [][]int
+		flush := func() error {
+			pieces := make([]speller, wordPieces)
+			err := ask.Spread(wordPieces, func(i int) error {
+				s := &pieces[i]
+				*s = speller{p: b.another(), places: places}
+				for k := i * len(batch) / wordPieces; k < (i+1)*len(batch)/wordPieces; k++ {
+					if err := ask.Watch(); err != nil {
+						return err
+					}
+					if !s.try(batch[k]) {
+						s.open++
+					}
 				}
+				return nil
+			})
+			if err != nil {
+				return err
 			}
-			list.Words++
-			if !s.try(w) {
-				list.Settled[n] = false
+			for i := range pieces {
+				for k := range pieces[i].found {
+					b.enter(&pieces[i].found[k])
+				}
+				list.Settled[n] = list.Settled[n] && pieces[i].open == 0
 			}
+			list.Words += len(batch)
+			batch = batch[:0]
+			ask.Told(math.Min(float64(list.Words)*2/ahead, 1), b.count())
 			return nil
+		}
+		err := cyclicWords(len(b.mirror.Loops()), n, func(w []int) error {
+			if batch = append(batch, slices.Clone(w)); len(batch) < wordsAtOnce {
+				return nil
+			}
+			return flush()
 		})
+		if err == nil {
+			err = flush()
+		}
 		if err != nil {
 			return err
 		}
@@ -120,8 +159,10 @@ func (b *book) spell(list *List, watch func() error) error {
 
 // speller tries words over the posts.
 type speller struct {
-	b      *book
+	p      *prover
 	places [][]place // of each post
+	found  []Orbit
+	open   int // words that could not be decided
 }
 
 // place is a point of a post to start from.
@@ -149,7 +190,7 @@ func placesOf(t *table.Table) [][]place {
 // the orbit was found, or the shortest string is known and is no orbit because
 // it runs through a post.
 func (s *speller) try(w []int) bool {
-	c := newChain(s.b.mirror, s.start(w))
+	c := newChain(s.p.mirror, s.start(w))
 	if !s.shorten(c) {
 		return false
 	}
@@ -158,9 +199,9 @@ func (s *speller) try(w []int) bool {
 			return true // the string pulls this post's corner inwards: it is shorter through the post
 		}
 	}
-	o, ok := s.b.prove(c)
+	o, ok := s.p.prove(c)
 	if ok {
-		s.b.of[len(w)] = append(s.b.of[len(w)], o)
+		s.found = append(s.found, o)
 	}
 	return ok || o.Closure == blocked
 }
@@ -204,7 +245,7 @@ func (s *speller) shorten(c *chain) bool {
 		l := &c.t.Loops()[k]
 		stride = math.Min(stride, (l.S1-l.S0)/12)
 	}
-	from := make([]float64, len(c.s))
+	from := make([]corner, len(c.at))
 	for range steps {
 		e, ok := c.eigen()
 		if !ok {
@@ -218,11 +259,12 @@ func (s *speller) shorten(c *chain) bool {
 		if convex && c.miss() < 1e-3 {
 			return c.polish(stride)
 		}
-		copy(from, c.s)
+		copy(from, c.at)
+		c.along(&e)
 		length, share := c.length, 1.0
 		for range halvings {
-			copy(c.s, from)
-			if c.step(&e, stride, share) && c.fill() && c.length < length {
+			copy(c.at, from)
+			if c.step(stride, share) && c.fill() && c.length < length {
 				break
 			}
 			share *= 0.5

@@ -28,9 +28,14 @@ const (
 type prover struct {
 	t      *table.Table // as drawn, with its laws
 	mirror *table.Table // the same wall, all of it a mirror
+	tracer *sim.Tracer
 	w      *sim.Walker
+	chart  chart
 	joints []float64 // in s
 	jumps  []float64 // those without a corner, where the curvature jumps
+	// sides are the letters of the pieces, of so many.
+	sides   []int
+	letters int
 }
 
 func newProver(t *table.Table) (*prover, error) {
@@ -40,15 +45,23 @@ func newProver(t *table.Table) (*prover, error) {
 	if err != nil {
 		return nil, err
 	}
-	tr := sim.Compile(m)
-	p := &prover{t: t, mirror: m, w: tr.Walker()}
+	p := &prover{t: t, mirror: m, tracer: sim.Compile(m), chart: chartOf(m)}
+	p.w = p.tracer.Walker()
 	for _, j := range m.Joints() {
 		p.joints = append(p.joints, j.S)
 		if j.Continuity == table.Tangent {
 			p.jumps = append(p.jumps, j.S)
 		}
 	}
+	p.numberSides()
 	return p, nil
+}
+
+// another is a prover of the same wall for another goroutine.
+func (p *prover) another() *prover {
+	q := *p
+	q.w = p.tracer.Walker()
+	return &q
 }
 
 // atJump reports whether the wall's curvature jumps at s. Corners are left to
@@ -152,78 +165,4 @@ func (p *prover) matches(a, b *Orbit, k, sense int) bool {
 func (p *prover) close(a, b sim.State, loop int) bool {
 	l := &p.mirror.Loops()[loop]
 	return math.Abs(apart(l, a.S, b.S)) <= sameTol*p.mirror.Length() && math.Abs(a.P-b.P) <= 100*sameTol
-}
-
-// finish fills what follows from the bounces, and puts them in the order of the
-// list.
-func (p *prover) finish(o *Orbit) {
-	if o.Family == nil {
-		o.TwoSenses = true
-		for _, b := range o.Bounces {
-			o.TwoSenses = o.TwoSenses && math.Abs(b.P) > 100*sameTol
-		}
-	}
-	p.order(o)
-	if len(p.mirror.Loops()) == 1 {
-		o.Winding = p.winding(o)
-	}
-	o.Confined = true
-	for _, b := range o.Bounces {
-		o.Confined = o.Confined && p.held(b.State)
-	}
-}
-
-// order starts the orbit at its smallest s, in the sense in which p is greater
-// there; the monodromy matrix is taken anew.
-func (p *prover) order(o *Orbit) {
-	n := o.Period()
-	eps := sameTol * p.mirror.Length()
-	first := 0
-	for i, b := range o.Bounces {
-		f := o.Bounces[first]
-		if b.S < f.S-eps || b.S <= f.S+eps && math.Abs(b.P) > math.Abs(f.P)+100*sameTol {
-			first = i
-		}
-	}
-	sense := 1
-	if o.Bounces[first].P < 0 {
-		sense = -1
-	}
-	bounces := make([]Bounce, n)
-	var ranges []Range
-	for i := range bounces {
-		at := ((first+sense*i)%n + n) % n
-		bounces[i] = o.Bounces[at]
-		if sense < 0 {
-			bounces[i].P = -bounces[i].P
-		}
-		if o.Family != nil {
-			ranges = append(ranges, o.Family.Ranges[at])
-		}
-	}
-	o.Bounces = bounces
-	if o.Family != nil {
-		o.Family.Ranges = ranges
-	}
-	o.Monodromy = sim.Identity()
-	for _, b := range bounces {
-		p.w.Start(b.State)
-		p.w.Next(0)
-		o.Monodromy = p.w.Jacobian().Times(o.Monodromy)
-	}
-}
-
-func (p *prover) winding(o *Orbit) int {
-	n := o.Period()
-	length := p.mirror.Length()
-	sum := 0.0
-	for i, b := range o.Bounces {
-		step := o.Bounces[(i+1)%n].S - b.S
-		if step < 0 {
-			step += length
-		}
-		sum += step / length
-	}
-	turns := int(math.Round(sum))
-	return min(turns, n-turns)
 }

@@ -10,55 +10,10 @@ const (
 	stride = 0.05
 )
 
-// grow polishes a seed and enters it into the book.
-func (b *book) grow(c *chain) {
-	if !c.fill() || c.miss() > seedMiss || b.woven(c) || b.known(c) {
-		return
-	}
-	if c.polish(stride * b.mirror.Length()) {
-		b.add(c)
-	}
-}
-
-const (
-	// knownPlace and knownLength, relative to the length of the wall, are how
-	// near a seed lies to an orbit of the book to be left alone. The length
-	// differs by the square of the distance only. Two orbits nearer to each
-	// other than that are found only if the first seed of each is nearer still.
-	knownPlace  = 1e-4
-	knownLength = 1e-7
-)
-
-// known reports whether the seed lies at an orbit of the book.
-func (b *book) known(c *chain) bool {
-	n := len(c.s)
-	length := b.mirror.Length()
-	for i := range b.of[n] {
-		o := &b.of[n][i]
-		if math.Abs(o.Length-c.length) > knownLength*length {
-			continue
-		}
-		for k := range n {
-			if b.follows(c, o, k, 1) || b.follows(c, o, k, -1) {
-				return true
-			}
-		}
-	}
-	return false
-}
-
-// follows reports whether the chain's corners lie at the bounces of o from
-// number k on.
-func (b *book) follows(c *chain, o *Orbit, k, sense int) bool {
-	n := len(c.s)
-	for i, s := range c.s {
-		y := &o.Bounces[((k+sense*i)%n+n)%n]
-		if c.loop[i] != y.Loop || math.Abs(apart(&b.mirror.Loops()[y.Loop], s, y.S)) > knownPlace*b.mirror.Length() {
-			return false
-		}
-	}
-	return true
-}
+// knownPlace, relative to the length of the wall, is how near a seed lies to an
+// orbit of the book to be left alone. Two orbits nearer to each other than that
+// are found only if the first seed of each is nearer still.
+const knownPlace = 1e-4
 
 const (
 	// reach is how many cells from its node a state is looked for; it covers

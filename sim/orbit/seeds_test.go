@@ -47,7 +47,7 @@ func TestSeeds(t *testing.T) {
 				}
 			}
 			if at < 0 {
-				b := book{prover: p}
+				b := newBook(p, c.upTo)
 				if b.marginal(chain) && inFamily(l, &o) {
 					continue
 				}
@@ -77,13 +77,13 @@ func TestTwoWays(t *testing.T) {
 		if err != nil {
 			t.Fatal(err)
 		}
-		byWords, byGrids := book{prover: p, of: make([][]Orbit, upTo+1)}, book{prover: p, of: make([][]Orbit, upTo+1)}
-		never := func() error { return nil }
-		if err := byWords.level(&List{UpTo: upTo, Settled: make([]bool, upTo+1)}, never); err != nil {
+		byWords, byGrids := newBook(p, upTo), newBook(p, upTo)
+		ask := Search{}.ready()
+		if err := byWords.level(&List{UpTo: upTo, Settled: make([]bool, upTo+1)}, ask); err != nil {
 			t.Fatal(err)
 		}
 		for _, side := range []int{150, 211} {
-			if err := byGrids.scan(upTo, side, never); err != nil {
+			if err := byGrids.scan(upTo, side, byGrids.columns(side), ask, func(float64) {}); err != nil {
 				t.Fatal(err)
 			}
 		}

@@ -10,6 +10,7 @@ import (
 
 // thread is a family followed: the states of all its members.
 type thread struct {
+	orbit  int // its number among those of its period in the book
 	length float64
 	family *Family
 	loops  []int // of the bounces whose ranges the family has
@@ -27,8 +28,10 @@ func (t *thread) holds(p *prover, o *Orbit) bool {
 // has reports whether an orbit of the same length, run in the sense, is a
 // member.
 func (t *thread) has(p *prover, o *Orbit, sense int) bool {
-	if !t.near(p, o.Bounces[0], float64(sense)) {
-		return false
+	for i := range o.Bounces {
+		if !t.near(p, &o.Bounces[i], float64(sense)) {
+			return false
+		}
 	}
 	for k := range o.Bounces {
 		if t.within(p, o, k, sense) {
@@ -38,12 +41,34 @@ func (t *thread) has(p *prover, o *Orbit, sense int) bool {
 	return false
 }
 
-// near reports whether a member has a bounce within a step of b.
-func (t *thread) near(p *prover, b Bounce, sense float64) bool {
-	const wide = 1.2 * familyStep
-	loop := &p.mirror.Loops()[b.Loop]
-	for _, st := range t.states {
-		if math.Abs(st.P-sense*b.P) < 10*wide && math.Abs(apart(loop, st.S, b.S)) < wide*p.mirror.Length() {
+// besideTol, in s relative to the length of the wall and in p, is how far from
+// the line through two members in turn a third may lie: a step of a twentieth in
+// p bends by a sixteenth of its square.
+const besideTol = 1e-3
+
+// near reports whether b lies beside the states of two members in turn.
+func (t *thread) near(p *prover, b *Bounce, sense float64) bool {
+	loop, length := &p.mirror.Loops()[b.Loop], p.mirror.Length()
+	n := len(t.loops)
+	for i, from := range t.states {
+		x0, y0 := apart(loop, from.S, b.S)/length, sense*b.P-from.P
+		next := i + n
+		if next >= len(t.states) {
+			next = i // the last member: it may be the only one
+			if t.family.Closed {
+				next = i - len(t.states) + n
+			}
+		}
+		to := t.states[next]
+		dx, dy := apart(loop, from.S, to.S)/length, to.P-from.P
+		if far := 2 * familyStep; math.Abs(x0) > far || math.Abs(y0) > 10*far || math.Abs(dx) > 3*far || t.loops[i%n] != b.Loop {
+			continue
+		}
+		share := 0.0
+		if d := dx*dx + dy*dy; d > 0 {
+			share = math.Min(math.Max((x0*dx+y0*dy)/d, 0), 1)
+		}
+		if math.Hypot(x0-share*dx, y0-share*dy) < besideTol {
 			return true
 		}
 	}
@@ -79,9 +104,6 @@ func (r Range) holds(l *table.Loop, s, slack float64) bool {
 // that it need not be polished.
 func (b *book) woven(c *chain) bool {
 	n := len(c.s)
-	if n >= len(b.threads) {
-		return false
-	}
 	for i := range b.threads[n] {
 		t := &b.threads[n][i]
 		if math.Abs(c.length-t.length) > 1e-6*b.mirror.Length() || c.miss() > 1e-3 {

@@ -2,13 +2,15 @@
 // only place in the kernel that starts goroutines and the only one that makes
 // random numbers: a generator for each orbit, seeded by the seed and the
 // orbit's number, so that a result depends on neither workers nor timing.
+//
+// A tally that wants the tangent map of each step implements Stepped beside
+// measure.Tally: it is then handed the derivative with each bounce, and need
+// not follow orbits of its own.
 package run
 
 import (
 	"context"
-	"math/rand/v2"
 	"runtime"
-	"sync/atomic"
 
 	"cavitywright/sim"
 	"cavitywright/sim/measure"
@@ -22,81 +24,82 @@ type Job struct {
 	Measure measure.Measurement
 	Seed    uint64
 	Workers int // 0 means all processors
+	Lanes   int // blocks that a worker carries out at once, 1 to most; 0 means as many as are fastest
 	// Progress, if not nil, is called on the merging goroutine after each
 	// block with the merged tally so far, which must not be kept.
 	Progress func(done, total int, sum measure.Tally)
 }
 
+// Stepped is a Tally that wants the derivative of each step. For a bounce with
+// N > 0 that goes on from the wall (Stop is Going, and so was the bounce before
+// it on the wall) Step is called instead of Add, with the derivative of the
+// step from the bounce before; all other bounces, the opening one among them,
+// are given to Add. On walls that scatter by chance there is no such
+// derivative: what is handed over is that of a mirror.
+type Stepped interface {
+	Step(b *sim.Bounce, j sim.Jacobian)
+}
+
 const (
-	// blockBounces is the work of one block: some 5 ms, so that a stop is
-	// felt at once and merging costs nothing.
+	// blockBounces is the work of a block at most: some 3 ms, so that merging
+	// costs nothing.
 	blockBounces = 50_000
-	// checkEvery is how many bounces an orbit runs between looks at the
+	// leastBounces is that of a block at least, and fewBlocks the number of
+	// blocks into which a job is cut as long as they are not smaller: all
+	// lanes of all workers then end at nearly the same time.
+	leastBounces = 1000
+	fewBlocks    = 128
+	// most is the number of lanes a worker has: with more of them a bounce
+	// takes no less time, and a tally a lane stands in the way of the cache.
+	most = 8
+	// checkEvery is how many bounces the lanes run between looks at the
 	// context.
-	checkEvery = 4096
+	checkEvery = 512
 )
 
 // Run carries out the job. When ctx ends it returns the tally of the blocks
 // merged so far with ctx's error.
 func Run(ctx context.Context, j Job) (measure.Tally, error) {
+	if e, is := j.Measure.(measure.Elsewhere); is {
+		j.Tracer = e.On()
+	}
 	size := blockSize(j.Measure)
-	blocks := (j.Measure.Orbits() + size - 1) / size
+	r := &round{job: j, size: size, blocks: (j.Measure.Orbits() + size - 1) / size}
 	workers := j.Workers
 	if workers <= 0 {
 		workers = runtime.GOMAXPROCS(0)
 	}
-	type done struct {
-		block int
-		tally measure.Tally
+	workers = max(1, min(workers, r.blocks))
+	lanes := most
+	if j.Lanes > 0 {
+		lanes = min(j.Lanes, most)
 	}
-	results := make(chan done, workers)
-	// A worker may run ahead of the merge by this many blocks, no further, so
+	lanes = max(1, min(lanes, (r.blocks+workers-1)/workers))
+	r.results = make(chan done, workers)
+	// Workers may run ahead of the merge by this many blocks, no further, so
 	// that waiting tallies stay few.
-	ahead := make(chan struct{}, 4*workers)
+	r.ahead = make(chan struct{}, (lanes+4)*workers)
 	group, ctx := errgroup.WithContext(ctx)
-	var next atomic.Int64
-	for range min(workers, max(blocks, 1)) {
-		group.Go(func() error {
-			w := newWorker(j)
-			for {
-				select {
-				case ahead <- struct{}{}:
-				case <-ctx.Done():
-					return ctx.Err()
-				}
-				b := int(next.Add(1)) - 1
-				if b >= blocks {
-					return nil
-				}
-				t, err := w.block(ctx, b*size, min((b+1)*size, j.Measure.Orbits()))
-				if err != nil {
-					return err
-				}
-				select {
-				case results <- done{b, t}:
-				case <-ctx.Done():
-					return ctx.Err()
-				}
-			}
-		})
+	for range workers {
+		group.Go(func() error { return newWorker(r, lanes).work(ctx) })
 	}
 	failed := make(chan error, 1)
 	go func() {
 		failed <- group.Wait()
-		close(results)
+		close(r.results)
 	}()
 	sum := j.Measure.Tally()
 	waiting := map[int]measure.Tally{}
 	merged := 0
-	for r := range results {
-		waiting[r.block] = r.tally
+	for d := range r.results {
+		waiting[d.block] = d.tally
 		for t, ok := waiting[merged]; ok; t, ok = waiting[merged] {
 			sum.Merge(t)
 			delete(waiting, merged)
 			merged++
-			<-ahead
+			<-r.ahead
 			if j.Progress != nil {
-				j.Progress(merged, blocks, sum)
+				j.Progress(merged, r.blocks, sum)
 			}
 		}
 	}
@@ -106,44 +109,7 @@ func Run(ctx context.Context, j Job) (measure.Tally, error) {
 // blockSize is the number of orbits in a block; it depends on the measurement
 // alone.
 func blockSize(m measure.Measurement) int {
-	return max(1, blockBounces/max(1, m.Bounces()))
-}
-
-// worker is one goroutine's scratch.
-type worker struct {
-	job    Job
-	walker *sim.Walker
-	pcg    rand.PCG
-	rand   *rand.Rand
-}
-
-func newWorker(j Job) *worker {
-	w := &worker{job: j, walker: j.Tracer.Walker()}
-	w.rand = rand.New(&w.pcg)
-	return w
-}
-
-// block runs the orbits from lo to hi-1 into a tally of their own.
-func (w *worker) block(ctx context.Context, lo, hi int) (measure.Tally, error) {
-	m := w.job.Measure
-	t := m.Tally()
-	uniform := w.rand.Float64
-	for i := lo; i < hi; i++ {
-		w.pcg.Seed(w.job.Seed, uint64(i))
-		b := w.walker.Open(m.Start(i, uniform))
-		t.Open(i)
-		t.Add(&b)
-		for b.Stop == sim.Going && b.N < m.Bounces() {
-			b = w.walker.Next(uniform())
-			t.Add(&b)
-			if b.N%checkEvery == 0 && ctx.Err() != nil {
-				return nil, ctx.Err()
-			}
-		}
-		t.Close()
-		if ctx.Err() != nil {
-			return nil, ctx.Err()
-		}
-	}
-	return t, nil
+	each := max(1, m.Bounces())
+	bounces := min(max(m.Orbits()/fewBlocks*each, leastBounces), blockBounces)
+	return max(1, bounces/each)
 }

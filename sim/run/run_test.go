@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"context"
 	"errors"
+	"fmt"
 	"math"
 	"testing"
 
@@ -151,6 +152,25 @@ func BenchmarkBounce(b *testing.B) {
 			}
 			if bounce.Stop == sim.Lost {
 				b.Fatal("lost")
+			}
+		})
+	}
+}
+
+// BenchmarkWorkers is the time of one bounce of a run on one worker and on two.
+func BenchmarkWorkers(b *testing.B) {
+	tr := gallery(b)["02-mixing-plate"]
+	for _, workers := range []int{1, 2} {
+		b.Run(fmt.Sprint(workers), func(b *testing.B) {
+			const each = 500
+			n := b.N/each + 1
+			b.ResetTimer()
+			tally, err := run.Run(context.Background(), run.Job{Tracer: tr, Measure: measure.Chord{Tracer: tr, N: n, Each: each}, Workers: workers})
+			if err != nil {
+				b.Fatal(err)
+			}
+			if mean, _ := tally.(*measure.ChordTally).Mean(); !(mean > 0) {
+				b.Fatal("no flight was measured")
 			}
 		})
 	}

@@ -35,6 +35,15 @@ func remade(t *table.Table, f func(d *table.Design) error) (*table.Table, error)
 	return table.New(d)
 }
 
+// restudied applies f to a copy of the study. The wall is shared with the table
+// before, so that what was measured on the one is known to hold for the other.
+func restudied(t *table.Table, f func(s *table.Study)) (*table.Table, error) {
+	d := t.Design()
+	d.Study.Launches = slices.Clone(d.Study.Launches)
+	f(&d.Study)
+	return table.New(d)
+}
+
 // onItem applies f to a copy of item i.
 func onItem(t *table.Table, i int, f func(it *table.Item) error) (*table.Table, error) {
 	return remade(t, func(d *table.Design) error {
@@ -173,9 +182,18 @@ type Reshape struct {
 // Title names the change.
 func (c Reshape) Title() string { return c.Name }
 
-// Apply replaces the shape.
+// Apply replaces the shape. Coats stay where they are on the wall, also where
+// its sides are others.
 func (c Reshape) Apply(t *table.Table) (*table.Table, error) {
-	return onItem(t, c.Item, func(it *table.Item) error { it.Shape = c.Shape; return nil })
+	next, err := onItem(t, c.Item, func(it *table.Item) error { it.Shape = c.Shape; return nil })
+	coated := slices.ContainsFunc(t.Design().Coats, func(k table.Coat) bool { return k.Item == c.Item })
+	if !coated || err == nil && sides(t, c.Item) == sides(next, c.Item) {
+		return next, err
+	}
+	d := t.Design()
+	d.Items = slices.Clone(d.Items)
+	d.Items[c.Item].Shape = c.Shape
+	return reanchored(t, d, c.Item, []int{c.Item})
 }
 
 // SetRole makes an item the wall or an obstacle.
@@ -218,10 +236,7 @@ func (c Launch) Title() string { return "launch" }
 
 // Apply adds the launches.
 func (c Launch) Apply(t *table.Table) (*table.Table, error) {
-	return remade(t, func(d *table.Design) error {
-		d.Study.Launches = append(d.Study.Launches, c.New...)
-		return nil
-	})
+	return restudied(t, func(s *table.Study) { s.Launches = append(s.Launches, c.New...) })
 }
 
 // SetStudy replaces the study. Name is what was changed in it.
@@ -235,10 +250,9 @@ func (c SetStudy) Title() string { return c.Name }
 
 // Apply replaces the study.
 func (c SetStudy) Apply(t *table.Table) (*table.Table, error) {
-	return remade(t, func(d *table.Design) error {
-		d.Study = c.Study
-		d.Study.Launches = slices.Clone(c.Study.Launches)
-		return nil
+	return restudied(t, func(s *table.Study) {
+		*s = c.Study
+		s.Launches = slices.Clone(c.Study.Launches)
 	})
 }
 

@@ -29,6 +29,9 @@ type trace struct {
 
 func (n nodes) traced() trace {
 	var t trace
+	if r, _, err := n.rounded(); err == nil {
+		n = r
+	}
 	for _, c := range n.curves() {
 		spans := c.Spans()
 		for i := range spans {

@@ -8,10 +8,12 @@ import (
 )
 
 // Freeform is a wall drawn freely: a closed chain of nodes, joined by lines,
-// arcs and cubics. It is one Outer loop; side i of it is the span that leaves
-// node i, and s starts at node 0.
+// arcs and cubics, corners rounded where they have a fillet. It is one Outer
+// loop; without fillets side i of it is the span that leaves node i, with them
+// Span tells. s starts at node 0, or behind its fillet.
 type Freeform struct {
-	nodes nodes
+	nodes    nodes
+	symmetry Symmetry
 }
 
 // NewFreeform is the wall through the nodes, which are held to what their
@@ -40,20 +42,38 @@ func (f Freeform) Kind() string { return "freeform" }
 // Nodes are the nodes in their order; they must not be changed.
 func (f Freeform) Nodes() []Node { return f.nodes }
 
+// Sound reports whether the nodes make a chain, whatever it encloses.
+func (f Freeform) Sound() bool { return f.nodes.fault() == nil }
+
 // Loops is the one loop of the wall. The error is a *Fault. Where a drag has
 // turned the nodes clockwise, the loop runs against their order.
 func (f Freeform) Loops() ([]Loop, error) {
 	if err := f.nodes.fault(); err != nil {
 		return nil, err
 	}
-	curves := f.nodes.curves()
-	switch sense(curves) {
+	n := f.nodes
+	switch sense(n.curves()) {
 	case 0:
 		return nil, misfit("it encloses no area; move its nodes apart")
 	case -1:
-		curves = f.nodes.reversed().curves()
+		n = n.reversed()
 	}
-	return ring(curves...), nil
+	n, _, err := n.rounded()
+	if err != nil {
+		return nil, err
+	}
+	return ring(n.curves()...), nil
+}
+
+// Span is the span that side k of the wall is, or, where fillet, the node whose
+// corner it rounds: spans and fillets are counted together along the wall, from
+// the start of span 0.
+func (f Freeform) Span(k int) (of int, fillet bool) {
+	_, sides, err := f.nodes.rounded()
+	if err != nil || k < 0 || k >= len(sides) {
+		return k, false
+	}
+	return sides[k].node, sides[k].fillet
 }
 
 // noArea is the enclosed area, relative to the square of the wall's size, that
@@ -68,6 +88,8 @@ func (n nodes) curves() []curve.Curve {
 		switch a.Span {
 		case Bowed:
 			c[i] = curve.ArcThrough(a.At, b.At, a.Bulge)
+		case Elliptic:
+			c[i] = ovalThrough(a, b.At)
 		case Curved:
 			c[i] = curve.NewCubic(n.controls(i))
 		default:

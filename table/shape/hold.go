@@ -29,7 +29,7 @@ func (n nodes) holds() []hold {
 			h = append(h,
 				hold{Handle{At: p[1], Role: Tangent, Name: fmt.Sprintf("handle %d out", i+1), Of: i}, Leaves},
 				hold{Handle{At: p[2], Role: Tangent, Name: fmt.Sprintf("handle %d in", j+1), Of: j}, Arrives})
-		case Bowed:
+		case Bowed, Elliptic:
 			h = append(h, hold{Handle: Handle{At: n.middle(i), Role: Bow, Name: fmt.Sprintf("bow %d", i+1), Of: i}})
 		}
 	}
@@ -37,7 +37,7 @@ func (n nodes) holds() []hold {
 }
 
 // Handles are the nodes, the tangent handles of the Curved spans and the
-// middles of the Bowed ones. Of is the index of the node, or of the span for a
+// middles of the Bowed and the Elliptic ones. Of is the index of the node, or of the span for a
 // Bow.
 func (f Freeform) Handles() []Handle {
 	holds := f.nodes.holds()

@@ -17,27 +17,37 @@ type Node struct {
 	In, Out r2.Vec
 	Span    SpanKind
 	// Bulge, of a Bowed span, is the tangent of a quarter of its sweep,
-	// positive when it turns left; 0 where the span is not Bowed.
+	// positive when it turns left. Of an Elliptic one it is that of the arc in
+	// the plane in which its ellipse is a circle. 0 for other spans.
 	Bulge float64
+	// Ratio, of an Elliptic span, is the semi-axis across the direction Tilt
+	// (radians from +x) to the one along it. Both are 0 for other spans.
+	Ratio, Tilt float64
+	// Fillet is the radius of the arc that rounds a Corner, 0 for none. The
+	// node stays where the corner would be.
+	Fillet float64
 }
 
 // Joint says how two spans of a free wall meet.
 type Joint uint8
 
-// The joints. At a Smooth one the tangent is continuous.
+// The joints. At a Smooth one the tangent is continuous, at a Fair one the
+// curvature too.
 const (
 	Corner Joint = iota
 	Smooth
+	Fair
 )
 
 // SpanKind says what a span of a free wall is.
 type SpanKind uint8
 
-// The kinds of span: a line, a circular arc, a cubic.
+// The kinds of span: a line, a circular arc, a cubic, an arc of an ellipse.
 const (
 	Straight SpanKind = iota
 	Bowed
 	Curved
+	Elliptic
 )
 
 // End is an end of a span at a node.
@@ -53,8 +63,8 @@ func (j Joint) String() string    { return jointNames[j] }
 func (k SpanKind) String() string { return spanNames[k] }
 
 var (
-	jointNames = [...]string{"corner", "smooth"}
-	spanNames  = [...]string{"straight", "bowed", "curved"}
+	jointNames = [...]string{"corner", "smooth", "fair"}
+	spanNames  = [...]string{"straight", "bowed", "curved", "elliptic"}
 )
 
 // MarshalText is the name that files use.
@@ -68,7 +78,7 @@ func (j *Joint) UnmarshalText(text []byte) error {
 			return nil
 		}
 	}
-	return fmt.Errorf("there is no joint %q; it is corner or smooth", text)
+	return fmt.Errorf("there is no joint %q; it is corner, smooth or fair", text)
 }
 
 // MarshalText is the name that files use.
@@ -82,7 +92,7 @@ func (k *SpanKind) UnmarshalText(text []byte) error {
 			return nil
 		}
 	}
-	return fmt.Errorf("there is no span %q; it is straight, bowed or curved", text)
+	return fmt.Errorf("there is no span %q; it is straight, bowed, curved or elliptic", text)
 }
 
 // nodes is a closed chain. Indices are taken around the chain.
@@ -102,7 +112,10 @@ func (n nodes) reversed() nodes {
 	out := make(nodes, len(n))
 	for i := range n {
 		from, before := n.at(-i), n.at(-i-1)
-		out[i] = Node{At: from.At, Joint: from.Joint, In: from.Out, Out: from.In, Span: before.Span}
+		out[i] = Node{
+			At: from.At, Joint: from.Joint, In: from.Out, Out: from.In, Fillet: from.Fillet,
+			Span: before.Span, Ratio: before.Ratio, Tilt: before.Tilt,
+		}
 		if before.Bulge != 0 {
 			out[i].Bulge = -before.Bulge
 		}
@@ -116,7 +129,7 @@ func (n nodes) fault() error {
 	box := plane.Around()
 	for i := range n {
 		k := &n[i]
-		bent = bent || k.Span == Curved || k.Span == Bowed && k.Bulge != 0
+		bent = bent || k.Span == Curved || k.round() && k.Bulge != 0
 		box = plane.Join(box, plane.Around(k.At))
 		if !k.finite() {
 			return nodeFault(i, "node %d has a coordinate that is not a number; type it anew", i+1)
@@ -142,5 +155,12 @@ func (n nodes) fault() error {
 const coincident = 1e-9
 
 func (k *Node) finite() bool {
-	return plane.Finite(k.At) && plane.Finite(k.In) && plane.Finite(k.Out) && plane.Finite(r2.Vec{X: k.Bulge})
+	return plane.Finite(k.At) && plane.Finite(k.In) && plane.Finite(k.Out) &&
+		plane.Finite(r2.Vec{X: k.Bulge, Y: k.Fillet}) && plane.Finite(r2.Vec{X: k.Ratio, Y: k.Tilt})
 }
+
+// round reports whether the span that leaves the node has a bulge.
+func (k *Node) round() bool { return k.Span == Bowed || k.Span == Elliptic }
+
+// tangent reports whether the tangent is continuous at the joint.
+func (j Joint) tangent() bool { return j != Corner }

@@ -32,20 +32,22 @@ const (
 // takes the bulge that continues a line or another arc. A joint that cannot be
 // smooth becomes a Corner. What is not in use (handles of spans that are not
 // Curved, the bulge of those not Bowed) is cleared. Nodes with a fault are
-// returned as they are.
+// returned as they are. At a Fair joint the curvature is made continuous by the
+// handles about it; where they cannot it becomes Smooth.
 func settled(list nodes) nodes { return settledFrom(list, 0) }
 
 // settledFrom settles with the bulge of span lead kept, where the arcs in a
 // row leave a choice.
-func settledFrom(list nodes, lead int) nodes {
+func settledFrom(list nodes, lead int) nodes { return settledHolding(list, lead, nil) }
+
+// settledHolding is settledFrom with a handle that stays, if it can.
+func settledHolding(list nodes, lead int, held *grasp) nodes {
 	n := list.clone()
 	if n.fault() != nil {
 		return n
 	}
 	for i := range n {
-		if n[i].Span != Bowed {
-			n[i].Bulge = 0
-		}
+		n[i].clear()
 		n[i].Bulge = n.holdBulge(i, n[i].Bulge)
 		least := noHandle * (r2.Norm(n.chord(i)) + r2.Norm(n[i].Out) + r2.Norm(n.at(i+1).In))
 		for _, h := range [2]*r2.Vec{&n[i].Out, &n.at(i + 1).In} {
@@ -59,15 +61,40 @@ func settledFrom(list nodes, lead int) nodes {
 	for i := range n {
 		n.settleHandles(i)
 	}
+	n.settleCurvature(held)
+	for i := range n {
+		if n[i].Joint != Corner {
+			n[i].Fillet = 0
+		}
+	}
 	return n
+}
+
+// leastRatio and its inverse bound the axes of an ellipse to each other: beyond
+// them its ends are spikes.
+const leastRatio = 0.01
+
+// clear takes out what the span does not use, and holds the rest to its range.
+func (k *Node) clear() {
+	if !k.round() {
+		k.Bulge = 0
+	}
+	if k.Span != Elliptic {
+		k.Ratio, k.Tilt = 0, 0
+		return
+	}
+	if k.Ratio == 0 {
+		k.Ratio = 1
+	}
+	k.Ratio = math.Min(math.Max(math.Abs(k.Ratio), leastRatio), 1/leastRatio)
 }
 
 // settleArcs treats each row of arcs that are joined smoothly.
 func (n nodes) settleArcs(lead int) {
 	for i := range n {
-		if n[i].Span == Bowed && !n.rowGoesOn(i) {
+		if n[i].round() && !n.rowGoesOn(i) {
 			k := 1
-			for n.at(i+k).Span == Bowed && n.rowGoesOn(i+k) {
+			for n.at(i+k).round() && n.rowGoesOn(i+k) {
 				k++
 			}
 			n.settleRow(i, k, lead)
@@ -83,14 +110,14 @@ func (n nodes) settleArcs(lead int) {
 
 // rowGoesOn reports whether the arc that leaves node i continues another.
 func (n nodes) rowGoesOn(i int) bool {
-	return n.at(i).Joint == Smooth && n.at(i).Span == Bowed && n.at(i-1).Span == Bowed
+	return n.at(i).Joint.tangent() && n.at(i).round() && n.at(i-1).round()
 }
 
 // settleRow gives the k arcs from span i on their bulges. A smooth joint with a
 // line at either end of the row decides them; else the lead does.
 func (n nodes) settleRow(i, k, lead int) {
-	tied := n.at(i).Joint == Smooth && n.at(i-1).Span == Straight
-	tiedEnd := n.at(i+k).Joint == Smooth && n.at(i+k).Span == Straight
+	tied := n.at(i).Joint.tangent() && n.at(i-1).Span == Straight
+	tiedEnd := n.at(i+k).Joint.tangent() && n.at(i+k).Span == Straight
 	kept := true
 	for j := i; j <= i+k; j++ {
 		inside := j > i && j < i+k
@@ -138,13 +165,13 @@ func (n nodes) settleRing(lead int) {
 // takes nearly a circle, or an arc nearly flat, becomes a Corner.
 func (n nodes) bendOn(i, k int) {
 	for j := i; j < i+k; j++ {
-		n.bendTo(j, j, bulgeLeaving(n.chord(j), n.arriving(j-1)))
+		n.bendTo(j, j, n.bulgeLeaving(j, n.arriving(j-1)))
 	}
 }
 
 func (n nodes) bendBack(i, k int) {
 	for j := i; j > i-k; j-- {
-		n.bendTo(j, j+1, bulgeArriving(n.chord(j), n.leaving(j+1)))
+		n.bendTo(j, j+1, n.bulgeArriving(j, n.leaving(j+1)))
 	}
 }
 
@@ -161,7 +188,7 @@ func (n nodes) bendTo(span, joint int, bulge float64) {
 // Corner.
 func (n nodes) settleLines() {
 	for i := range n {
-		if n[i].Joint == Smooth && n[i].Span == Straight && n.at(i-1).Span == Straight && n.kink(i) > tangency {
+		if n[i].Joint.tangent() && n[i].Span == Straight && n.at(i-1).Span == Straight && n.kink(i) > tangency {
 			n[i].Joint = Corner
 		}
 	}
@@ -170,7 +197,7 @@ func (n nodes) settleLines() {
 // settleHandles aligns the handles of a Smooth node.
 func (n nodes) settleHandles(i int) {
 	k := &n[i]
-	if k.Joint != Smooth {
+	if !k.Joint.tangent() {
 		return
 	}
 	in, out := n.at(i-1).Span == Curved, k.Span == Curved

@@ -69,7 +69,7 @@ func TestSketchFollowsTheHand(t *testing.T) {
 					t.Errorf("%s: area %g, or it crosses itself", c.name, area)
 				}
 				for i, k := range f.nodes {
-					if k.Joint != Smooth || k.Span != Curved {
+					if k.Joint != Fair || k.Span != Curved {
 						t.Errorf("%s: node %d is %+v", c.name, i, k)
 					}
 				}

@@ -20,7 +20,7 @@ const (
 
 // holdBulge is the bulge nearest to b that span i can have.
 func (n nodes) holdBulge(i int, b float64) float64 {
-	if math.Abs(b)*4*flattest*n.size() < r2.Norm(n.chord(i)) {
+	if math.Abs(b)*4*flattest*n.size() < r2.Norm(n.at(i).toCircle(n.chord(i))) {
 		return 0
 	}
 	return math.Min(math.Max(b, -maxBulge), maxBulge)
@@ -33,6 +33,26 @@ func (n nodes) size() float64 {
 		box = plane.Join(box, plane.Around(n[i].At))
 	}
 	return plane.Diagonal(box)
+}
+
+// toCircle takes a vector to the plane in which the arc that leaves the node is
+// one of a circle: an ellipse is stretched across its tilt. toOval takes it
+// back.
+func (k *Node) toCircle(v r2.Vec) r2.Vec {
+	if k.Span != Elliptic {
+		return v
+	}
+	v = turnedBack(v, plane.Polar(k.Tilt))
+	v.Y /= k.Ratio
+	return v
+}
+
+func (k *Node) toOval(v r2.Vec) r2.Vec {
+	if k.Span != Elliptic {
+		return v
+	}
+	v.Y *= k.Ratio
+	return turned(v, plane.Polar(k.Tilt))
 }
 
 // bend is the unit vector at the angle of half the sweep of an arc of the given
@@ -55,6 +75,8 @@ func (n nodes) leaving(i int) r2.Vec {
 	switch a.Span {
 	case Bowed:
 		return turnedBack(plane.Unit(chord), bend(a.Bulge))
+	case Elliptic:
+		return plane.Unit(a.toOval(turnedBack(plane.Unit(a.toCircle(chord)), bend(a.Bulge))))
 	case Curved:
 		return firstNonNull(a.Out, r2.Add(chord, n.at(i+1).In), chord)
 	}
@@ -67,6 +89,8 @@ func (n nodes) arriving(i int) r2.Vec {
 	switch a.Span {
 	case Bowed:
 		return turned(plane.Unit(chord), bend(a.Bulge))
+	case Elliptic:
+		return plane.Unit(a.toOval(turned(plane.Unit(a.toCircle(chord)), bend(a.Bulge))))
 	case Curved:
 		return firstNonNull(r2.Scale(-1, n.at(i+1).In), r2.Sub(chord, a.Out), chord)
 	}
@@ -87,24 +111,32 @@ func (n nodes) kink(i int) float64 {
 	return math.Abs(plane.Angle(n.arriving(i-1), n.leaving(i)))
 }
 
-// bulgeLeaving is the bulge with which the arc along the chord leaves in the
-// direction d, bulgeArriving the one with which it arrives in it. They are
-// infinite where d points straight back.
-func bulgeLeaving(chord, d r2.Vec) float64 { return math.Tan(0.5 * plane.Angle(d, chord)) }
+// bulgeLeaving is the bulge with which the arc i leaves in the direction d,
+// bulgeArriving the one with which it arrives in it. They are infinite where d
+// points straight back.
+func (n nodes) bulgeLeaving(i int, d r2.Vec) float64 {
+	a := n.at(i)
+	return math.Tan(0.5 * plane.Angle(a.toCircle(d), a.toCircle(n.chord(i))))
+}
 
-func bulgeArriving(chord, d r2.Vec) float64 { return math.Tan(0.5 * plane.Angle(chord, d)) }
+func (n nodes) bulgeArriving(i int, d r2.Vec) float64 {
+	a := n.at(i)
+	return math.Tan(0.5 * plane.Angle(a.toCircle(n.chord(i)), a.toCircle(d)))
+}
 
-// middle is the point of the arc i half way along it.
+// middle is the point of the arc i half way along it; of an ellipse's, half way
+// along its eccentric angle.
 func (n nodes) middle(i int) r2.Vec {
-	a, chord := n.at(i), n.chord(i)
+	a := n.at(i)
+	chord := a.toCircle(n.chord(i))
 	// A left turn bows to the right of its chord, by bulge times half of it.
-	return r2.Add(a.At, r2.Sub(r2.Scale(0.5, chord), r2.Scale(0.5*a.Bulge, plane.Left(chord))))
+	return r2.Add(a.At, a.toOval(r2.Sub(r2.Scale(0.5, chord), r2.Scale(0.5*a.Bulge, plane.Left(chord)))))
 }
 
 // bulgeTo is the bulge with which the arc i comes nearest to p with its middle.
 func (n nodes) bulgeTo(i int, p r2.Vec) float64 {
-	chord := n.chord(i)
-	d := r2.Sub(p, plane.Lerp(n.at(i).At, n.at(i+1).At, 0.5))
+	chord := n.at(i).toCircle(n.chord(i))
+	d := n.at(i).toCircle(r2.Sub(p, plane.Lerp(n.at(i).At, n.at(i+1).At, 0.5)))
 	return n.holdBulge(i, -2*plane.Dot(d, plane.Left(chord))/plane.Dot(chord, chord))
 }
 
@@ -118,8 +150,10 @@ func (n nodes) cubicMiddle(i int) r2.Vec {
 // and the middle of the arc i: their length is 4/3 tan(sweep/4) of the radius
 // (common practice).
 func (n nodes) arcHandles(i int) (out, in r2.Vec) {
-	a, chord := n.at(i), n.chord(i)
+	a := n.at(i)
+	chord := a.toCircle(n.chord(i))
 	// radius = half the chord / sin(sweep/2), and sin(sweep/2) = 2b/(1+b²).
 	length := r2.Norm(chord) * (1 + a.Bulge*a.Bulge) / 3
-	return r2.Scale(length, n.leaving(i)), r2.Scale(-length, n.arriving(i))
+	u, b := plane.Unit(chord), bend(a.Bulge)
+	return a.toOval(r2.Scale(length, turnedBack(u, b))), a.toOval(r2.Scale(-length, turned(u, b)))
 }

@@ -15,6 +15,12 @@ func Smoothed(points []r2.Vec) Freeform {
 	if len(points) < 3 {
 		return NewPolygonal(points)
 	}
+	return NewFreeform(splined(points))
+}
+
+// splined are the nodes of the spline through three points or more, each apart
+// from the next.
+func splined(points []r2.Vec) nodes {
 	n := len(points)
 	step := make([]float64, n)
 	for i := range step {
@@ -30,7 +36,28 @@ func Smoothed(points []r2.Vec) Freeform {
 	for i := range flow {
 		flow[i] = r2.Vec{X: sx[i], Y: sy[i]}
 	}
-	return NewFreeform(flowing(points, flow, step))
+	return flowing(points, flow, step)
+}
+
+// flowOn changes the handles of a wall that is fair all round, whose nodes were
+// moved, as much as those of the spline through the nodes change: a spline
+// stays the spline, and what was shaped by hand stays.
+func (n nodes) flowOn(before nodes) {
+	if len(n) < 3 || n.fault() != nil || before.fault() != nil {
+		return
+	}
+	now, was := make([]r2.Vec, len(n)), make([]r2.Vec, len(n))
+	for i := range n {
+		if n[i].Joint != Fair || n[i].Span != Curved {
+			return
+		}
+		now[i], was[i] = n[i].At, before[i].At
+	}
+	a, b := splined(was), splined(now)
+	for i := range n {
+		n[i].In = r2.Add(n[i].In, r2.Sub(b[i].In, a[i].In))
+		n[i].Out = r2.Add(n[i].Out, r2.Sub(b[i].Out, a[i].Out))
+	}
 }
 
 // flowing are the nodes of the cubic spline through the points with the given
@@ -40,7 +67,7 @@ func flowing(points, flow []r2.Vec, step []float64) []Node {
 	list := make([]Node, n)
 	for i := range list {
 		list[i] = Node{
-			At: points[i], Joint: Smooth, Span: Curved,
+			At: points[i], Joint: Fair, Span: Curved,
 			In: r2.Scale(-step[(i+n-1)%n]/3, flow[i]), Out: r2.Scale(step[i]/3, flow[i]),
 		}
 	}

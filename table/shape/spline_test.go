@@ -62,7 +62,7 @@ func TestSmoothedIsSmooth(t *testing.T) {
 			in := c[(i+n-1)%n].Spans()
 			out := c[i].Spans()
 			a, b := in[len(in)-1].FrameAt(in[len(in)-1].T1), out[0].FrameAt(out[0].T0)
-			if d := math.Abs(plane.Angle(a.Tangent, b.Tangent)); f.nodes[i].Joint != Smooth || d > 1e-12 {
+			if d := math.Abs(plane.Angle(a.Tangent, b.Tangent)); f.nodes[i].Joint != Fair || d > 1e-12 {
 				t.Fatalf("node %d has a kink of %g", i, d)
 			}
 			if d := math.Abs(a.Curvature - b.Curvature); d > 1e-9*(1+math.Abs(a.Curvature)) {

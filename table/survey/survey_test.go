@@ -108,7 +108,7 @@ func TestSymmetryStays(t *testing.T) {
 			Shift: r2.Vec{X: rapid.Float64Range(-9, 9).Draw(t, "x"), Y: rapid.Float64Range(-9, 9).Draw(t, "y")},
 			Angle: rapid.Float64Range(-3, 3).Draw(t, "angle"), Scale: math.Exp(rapid.Float64Range(-2, 3).Draw(t, "log scale")),
 		}
-		one, two := of(t, 0, name).Symmetry, Of(placed(t, m, name), 0).Symmetry
+		one, two := symmetryAlone(placed(t, plane.Identity(), name)), symmetryAlone(placed(t, m, name))
 		if one.Name() != two.Name() {
 			t.Fatalf("%s is %s, moved %s", name, one.Name(), two.Name())
 		}
@@ -126,6 +126,8 @@ func TestSymmetryStays(t *testing.T) {
 		}
 	})
 }
+
+func symmetryAlone(tab *table.Table) Symmetry { return symmetryOf(tab, newNet(tab)) }
 
 // TestSymmetryIsNotGuessed: walls that miss a symmetry by little do not have
 // it, those that keep a part of it have that.
@@ -167,7 +169,7 @@ func TestSymmetryIsNotGuessed(t *testing.T) {
 		{"posts", []float64{4, 4, 0.2, 1, 1, 0}, "D4"},
 		{"posts", []float64{4, 4, 0.2, 1, 1, 0.3}, "C2"},
 	} {
-		if got := of(t, 0, c.kind, c.v...).Symmetry.Name(); got != c.want {
+		if got := symmetryAlone(placed(t, plane.Identity(), c.kind, c.v...)).Name(); got != c.want {
 			t.Errorf("%s %v is %s, want %s", c.kind, c.v, got, c.want)
 		}
 	}
@@ -215,8 +217,8 @@ func TestConvexToTheLimit(t *testing.T) {
 
 // TestManyPosts: the report of a table of thousands of pieces comes at once.
 func TestManyPosts(t *testing.T) {
-	r := of(t, 1, "box-of-posts", 1000, 3600, 1)
-	if r.Symmetry.Name() != "D4" || r.Convexity.Posts != 3600 || len(r.Tool.Beyond) != 4 {
+	r := of(t, 1, "box-of-posts", 1000, 1600, 1)
+	if r.Symmetry.Name() != "D4" || r.Convexity.Posts != 1600 || len(r.Tool.Beyond) != 4 {
 		t.Errorf("symmetry %s, %d posts, %d places out of reach", r.Symmetry.Name(), r.Convexity.Posts, len(r.Tool.Beyond))
 	}
 }

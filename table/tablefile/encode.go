@@ -1,8 +1,6 @@
 package tablefile
 
 import (
-	"slices"
-
 	"cavitywright/table"
 	"cavitywright/table/plane"
 	"cavitywright/table/shape"
@@ -61,7 +59,11 @@ func itemBlock(it table.Item) (block, error) {
 	case shape.Figure:
 		return append(b, field{"parameters", parameterBlock(s)}), nil
 	case shape.Freeform:
-		return append(b, field{"nodes", nodeLines(s)}), nil
+		b = append(b, field{"nodes", nodeLines(s)})
+		if k := s.Symmetry(); !k.None() {
+			b = append(b, field{"symmetry", symmetryLine(k)})
+		}
+		return b, nil
 	}
 	return nil, &BadValue{Place{Path: "items"}, "holds the shape " + quoted(it.Shape.Kind()) + ", which no file can hold", "take it out"}
 }
@@ -78,7 +80,7 @@ func parameterBlock(f shape.Figure) block {
 // anew, nodes that a drag has turned clockwise are in that order.
 func nodeLines(f shape.Freeform) list {
 	all := list{}
-	for _, n := range shape.NewFreeform(slices.Clone(f.Nodes())).Nodes() {
+	for _, n := range f.Forward().Nodes() {
 		l := line{{"at", xy(n.At)}}
 		if n.Joint != shape.Corner {
 			l = append(l, field{"joint", word(jointWords, int(n.Joint))})
@@ -95,9 +97,32 @@ func nodeLines(f shape.Freeform) list {
 		if !zero(n.Bulge) {
 			l = append(l, field{"bulge", n.Bulge})
 		}
+		if !zero(n.Ratio) {
+			l = append(l, field{"ratio", n.Ratio})
+		}
+		if !zero(n.Tilt) {
+			l = append(l, field{"tilt", n.Tilt})
+		}
+		if !zero(n.Fillet) {
+			l = append(l, field{"fillet", n.Fillet})
+		}
 		all = append(all, l)
 	}
 	return all
+}
+
+func symmetryLine(s shape.Symmetry) line {
+	l := line{}
+	if s.Fold > 1 {
+		l = append(l, field{"fold", s.Fold})
+	}
+	if s.Mirror {
+		l = append(l, field{"mirror", s.Axis})
+	}
+	if s.Centre != (r2.Vec{}) {
+		l = append(l, field{"centre", xy(s.Centre)})
+	}
+	return l
 }
 
 func coatLine(c table.Coat) line {
@@ -138,11 +163,21 @@ func studyBlock(s table.Study) block {
 		}
 		b = append(b, field{"launches", launches})
 	}
-	return append(b, field{"display", line{
+	b = append(b, field{"display", line{
 		{"sense", word(senseWords, int(s.Display.Sense))},
 		{"position", word(positionWords, int(s.Display.Position))},
 		{"momentum", word(momentumWords, int(s.Display.Momentum))},
 	}})
+	if len(s.Sweeps) > 0 {
+		b = append(b, field{"sweeps", sweepBlocks(s.Sweeps)})
+	}
+	if len(s.Tolerances) > 0 {
+		b = append(b, field{"tolerances", toleranceBlocks(s.Tolerances)})
+	}
+	if len(s.Wishes) > 0 {
+		b = append(b, field{"wishes", wishBlocks(s.Wishes)})
+	}
+	return b
 }
 
 // launchLine has just the keys that matter to the launch. A count below 1 means

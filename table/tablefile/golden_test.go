@@ -31,7 +31,11 @@ var same = cmp.Options{
 	cmp.Transformer("figure", func(f shape.Figure) map[string]any {
 		return map[string]any{"kind": f.Kind(), "values": f.Values()}
 	}),
-	cmp.Transformer("freeform", func(f shape.Freeform) []shape.Node { return f.Nodes() }),
+	cmp.Transformer("freeform", func(f shape.Freeform) freeWall {
+		return freeWall{nodes: f.Nodes(), symmetry: f.Symmetry()}
+	}),
+	cmp.AllowUnexported(freeWall{}),
+	cmpopts.IgnoreFields(freeWall{}, "fold"),
 }
 
 func at(x, y float64) plane.Similarity {
@@ -90,6 +94,27 @@ func features(t testing.TB) map[string]table.Design {
 	}))
 	all["freeform"] = d
 
+	d = onlyWall(shape.NewFreeform([]shape.Node{
+		{At: r2.Vec{X: -2, Y: -1}, Fillet: 0.25},
+		{At: r2.Vec{X: 2, Y: -1}, Span: shape.Elliptic, Bulge: 0.8, Ratio: 1.5, Tilt: 0.125},
+		// Both curvatures at the fair node are 8/9: 2/3 of 0.75 over 0.75².
+		{At: r2.Vec{X: 2, Y: 1}, Span: shape.Curved, Out: r2.Vec{X: -0.5, Y: -0.25}},
+		{At: r2.Vec{X: 0, Y: 1.5}, Joint: shape.Fair, Span: shape.Curved, In: r2.Vec{X: 0.75, Y: 0}, Out: r2.Vec{X: -0.75, Y: 0}},
+		{At: r2.Vec{X: -2, Y: 1}, In: r2.Vec{X: 0.5, Y: -0.25}},
+	}))
+	all["freeform-fair"] = d
+
+	var plate []shape.Node
+	for _, p := range []r2.Vec{{X: 2}, {X: 2.5, Y: 1.5}, {X: -2, Y: 1.5}, {X: -1.5}, {X: -2, Y: -1.5}, {X: 2.5, Y: -1.5}} {
+		plate = append(plate, shape.Node{At: p})
+	}
+	plate[0].Fillet, plate[3].Fillet = 0.5, 0.5
+	f, ok := shape.Symmetric(plate, shape.Symmetry{Fold: 2, Mirror: true, Centre: r2.Vec{X: 0.25}})
+	if !ok {
+		t.Fatal("the plate is not symmetric")
+	}
+	all["freeform-symmetric"] = onlyWall(f)
+
 	d = onlyWall(figure(t, "rectangle", nil))
 	d.Bare = wall.Lossy{Reflectivity: 0.995}
 	d.Coats = []table.Coat{
@@ -112,6 +137,7 @@ func features(t testing.TB) map[string]table.Design {
 		},
 		Display: table.Display{Sense: table.Clockwise, Position: table.Fraction, Momentum: table.Angle}}
 	all["study"] = d
+	all["sweeps"] = swept(t)
 	return all
 }
 

@@ -12,12 +12,13 @@ import (
 )
 
 var (
-	itemKeys = []string{"role", "shape", "at", "angle", "scale", "parameters", "nodes"}
-	nodeKeys = []string{"at", "joint", "in", "out", "span", "bulge"}
+	itemKeys = []string{"role", "shape", "at", "angle", "scale", "parameters", "nodes", "symmetry"}
+	nodeKeys = []string{"at", "joint", "in", "out", "span", "bulge", "ratio", "tilt", "fillet"}
+	foldKeys = []string{"fold", "mirror", "centre"}
 
 	roleWords  = []string{table.Wall: "wall", table.Post: "obstacle"}
-	jointWords = []string{shape.Corner: "corner", shape.Smooth: "smooth"}
-	spanWords  = []string{shape.Straight: "straight", shape.Bowed: "bowed", shape.Curved: "curved"}
+	jointWords = []string{shape.Corner: "corner", shape.Smooth: "smooth", shape.Fair: "fair"}
+	spanWords  = []string{shape.Straight: "straight", shape.Bowed: "bowed", shape.Curved: "curved", shape.Elliptic: "elliptic"}
 )
 
 // freeform is the word for a wall of nodes; all other shapes are in the
@@ -27,6 +28,15 @@ const freeform = "freeform"
 // mostBulge is the greatest bulge of an arc that a free wall keeps: 356 degrees
 // of a circle.
 const mostBulge = 60
+
+// mostFold is the greatest order of a rotation that a free wall keeps, leastRatio
+// the least ratio of the axes of an ellipse's arc (the greatest is its inverse),
+// mostFillet the greatest radius of one.
+const (
+	mostFold   = 64
+	leastRatio = 0.01
+	mostFillet = 1e9
+)
 
 func shapeWords() []string {
 	var words []string
@@ -40,7 +50,7 @@ func (c *cursor) item() table.Item {
 	at, seen := c.here(), seen{}
 	it := table.Item{Place: plane.Identity()}
 	inner, list := at, []given(nil)
-	kind, nodes := "", []shape.Node(nil)
+	kind, free := "", freeWall{}
 	for key := range c.keys(itemKeys...) {
 		seen.add(key)
 		switch key {
@@ -60,27 +70,45 @@ func (c *cursor) item() table.Item {
 				list = append(list, c.given(name))
 			}
 		case "nodes":
-			nodes = c.nodeList()
+			free.nodes = c.nodeList()
+		case "symmetry":
+			free.fold = c.here()
+			free.symmetry = c.symmetry()
 		}
 	}
 	c.need(at, seen, "role", "shape")
-	it.Shape = c.shape(kind, at, inner, seen, list, nodes)
+	it.Shape = c.shape(kind, at, inner, seen, list, free)
 	return it
+}
+
+// freeWall is what a file says of a free wall.
+type freeWall struct {
+	nodes    []shape.Node
+	symmetry shape.Symmetry
+	fold     mark // where the symmetry stands
 }
 
 // shape makes the shape of an item at the place at, with its parameters at the
 // place inner.
-func (c *cursor) shape(kind string, at, inner mark, s seen, list []given, nodes []shape.Node) shape.Shape {
+func (c *cursor) shape(kind string, at, inner mark, s seen, list []given, free freeWall) shape.Shape {
 	if kind == freeform {
 		c.need(at, s, "nodes")
 		c.surplus(at, s, "parameters", "a free wall has nodes")
 		if c.err != nil {
 			return nil
 		}
-		return shape.NewFreeform(nodes)
+		if free.symmetry.None() {
+			return shape.NewFreeform(free.nodes)
+		}
+		f, ok := shape.Symmetric(free.nodes, free.symmetry)
+		if !ok && shape.NewFreeform(free.nodes).Sound() {
+			c.refuse(free.fold, "take it out, or set the nodes right", "is not that of the nodes")
+		}
+		return f
 	}
 	c.need(at, s, "parameters")
 	c.surplus(at, s, "nodes", "only a freeform has nodes")
+	c.surplus(at, s, "symmetry", "only a freeform keeps one")
 	if c.err != nil {
 		return nil
 	}
@@ -118,8 +146,14 @@ func (c *cursor) nodeList() []shape.Node {
 	for i, n := range nodes {
 		before := nodes[(i+len(nodes)-1)%len(nodes)]
 		switch {
-		case n.Bulge != 0 && n.Span != shape.Bowed:
+		case n.Bulge != 0 && n.Span != shape.Bowed && n.Span != shape.Elliptic:
 			c.idle(marks[i], "bulge", "the span from here is not bowed")
+		case n.Ratio != 0 && n.Span != shape.Elliptic:
+			c.idle(marks[i], "ratio", "the span from here is not elliptic")
+		case n.Tilt != 0 && n.Span != shape.Elliptic:
+			c.idle(marks[i], "tilt", "the span from here is not elliptic")
+		case n.Fillet != 0 && n.Joint != shape.Corner:
+			c.idle(marks[i], "fillet", "the joint is no corner")
 		case n.Out != none && n.Span != shape.Curved:
 			c.idle(marks[i], "out", "the span from here is not curved")
 		case n.In != none && before.Span != shape.Curved:
@@ -151,8 +185,35 @@ func (c *cursor) node() shape.Node {
 			n.Span = shape.SpanKind(c.word(spanWords))
 		case "bulge":
 			n.Bulge = c.number(-mostBulge, mostBulge)
+		case "ratio":
+			n.Ratio = c.number(leastRatio, 1/leastRatio)
+		case "tilt":
+			n.Tilt = c.anyNumber()
+		case "fillet":
+			n.Fillet = c.number(0, mostFillet)
 		}
 	}
 	c.need(at, seen, "at")
 	return n
+}
+
+// symmetry is what a free wall keeps: the order of a rotation, the direction of
+// a mirror line (radians), or both, about a centre.
+func (c *cursor) symmetry() shape.Symmetry {
+	at, seen, s := c.here(), seen{}, shape.Symmetry{}
+	for key := range c.keys(foldKeys...) {
+		seen.add(key)
+		switch key {
+		case "fold":
+			s.Fold = int(c.whole(2, mostFold))
+		case "mirror":
+			s.Mirror, s.Axis = true, c.anyNumber()
+		case "centre":
+			s.Centre = c.point()
+		}
+	}
+	if s.None() {
+		c.refuse(at, `write in "fold", "mirror" or both`, "asks for nothing")
+	}
+	return s
 }

@@ -18,6 +18,7 @@ type (
 	line    []field   // a record on one line
 	list    []any     // one entry a line
 	numbers []float64 // on one line
+	texts   []string  // on one line
 )
 
 // layout appends the value to b; the lines after its first are indented by
@@ -47,6 +48,12 @@ func layout(b []byte, v any, depth int) []byte {
 		b = append(b, '[')
 		for i, x := range v {
 			b = appendNumber(spaced(b, i), x)
+		}
+		return append(b, ']')
+	case texts:
+		b = append(b, '[')
+		for i, x := range v {
+			b = appendText(spaced(b, i), x)
 		}
 		return append(b, ']')
 	case string:

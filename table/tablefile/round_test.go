@@ -53,9 +53,15 @@ func drawFree(t *rapid.T) shape.Shape {
 	for i := range nodes {
 		k := &nodes[i]
 		k.At = r2.Scale(real(t, 0.8, 1.2, "r"), plane.Polar(2*math.Pi*float64(i)/float64(n)))
-		k.Joint = pick(t, "joint", shape.Corner, shape.Smooth)
-		k.Span = pick(t, "span", shape.Straight, shape.Bowed, shape.Curved)
-		if k.Span == shape.Bowed {
+		k.Joint = pick(t, "joint", shape.Corner, shape.Smooth, shape.Fair)
+		k.Span = pick(t, "span", shape.Straight, shape.Bowed, shape.Curved, shape.Elliptic)
+		if k.Span == shape.Elliptic {
+			k.Ratio, k.Tilt = real(t, 0.5, 2, "ratio"), real(t, -4, 4, "tilt")
+		}
+		if k.Joint == shape.Corner && rapid.Bool().Draw(t, "filleted") {
+			k.Fillet = real(t, 0.01, 0.1, "fillet")
+		}
+		if k.Span == shape.Bowed || k.Span == shape.Elliptic {
 			k.Bulge = real(t, -0.1, 0.6, "bulge")
 		}
 	}
@@ -66,7 +72,13 @@ func drawFree(t *rapid.T) shape.Shape {
 			nodes[(i+1)%n].In = r2.Scale(-real(t, 0.1, 0.3, "in"), chord)
 		}
 	}
-	var s shape.Shape = shape.NewFreeform(nodes)
+	f := shape.NewFreeform(nodes)
+	if rapid.Bool().Draw(t, "symmetric") {
+		if g, err := f.WithSymmetry(shape.Symmetry{Fold: rapid.IntRange(1, 3).Draw(t, "fold"), Mirror: true, Axis: real(t, -1, 1, "axis")}); err == nil {
+			f = g
+		}
+	}
+	var s shape.Shape = f
 	for range rapid.IntRange(0, 2).Draw(t, "drags") {
 		h := s.Handles()
 		i := rapid.IntRange(0, len(h)-1).Draw(t, "handle")
@@ -144,6 +156,7 @@ func drawDesign(t *rapid.T) table.Design {
 	for range rapid.IntRange(0, 3).Draw(t, "launches") {
 		d.Study.Launches = append(d.Study.Launches, drawLaunch(t))
 	}
+	d.Study.Sweeps = drawSweeps(t)
 	return d
 }
 
@@ -153,7 +166,7 @@ func runsForward(d table.Design) table.Design {
 	items := append([]table.Item(nil), d.Items...)
 	for i, it := range items {
 		if f, ok := it.Shape.(shape.Freeform); ok {
-			items[i].Shape = shape.NewFreeform(f.Nodes())
+			items[i].Shape = f.Forward()
 		}
 	}
 	d.Items = items

@@ -3,7 +3,7 @@ package tablefile
 import "cavitywright/table"
 
 var (
-	studyKeys   = []string{"seed", "bounces", "launches", "display"}
+	studyKeys   = []string{"seed", "bounces", "launches", "display", "sweeps", "tolerances", "wishes"}
 	displayKeys = []string{"sense", "position", "momentum"}
 
 	originWords   = []string{table.OnWall: "wall", table.Inside: "inside"}
@@ -28,6 +28,12 @@ func (c *cursor) study() table.Study {
 			}
 		case "display":
 			s.Display = c.display()
+		case "sweeps":
+			s.Sweeps = c.sweeps()
+		case "tolerances":
+			s.Tolerances = c.tolerances()
+		case "wishes":
+			s.Wishes = c.wishes()
 		}
 	}
 	return s

@@ -30,7 +30,7 @@ func Short(l Law) string {
 		}
 		return fmt.Sprintf("dielectric, n = %.4g to %.4g, %s", l.Index, l.Outside, name)
 	case Rough:
-		return fmt.Sprintf("rough, %.4g %% by the cosine law", 100*l.Share)
+		return fmt.Sprintf("rough, %.4g %% scattered", 100*l.Share)
 	}
 	return l.Name()
 }

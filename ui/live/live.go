@@ -43,6 +43,7 @@ type Status struct {
 	Escaped   int64
 	FirstMs   float64 // from request to first frame, milliseconds
 	Held      Filling
+	Mapped    float64 // share of the map under the portrait that is known; 1 where none is asked for
 }
 
 // Filling says whether the portrait fills or was stopped by hand.

@@ -3,6 +3,7 @@ package live
 import (
 	"context"
 	"image"
+	"image/color"
 	"image/draw"
 	"reflect"
 	"time"
@@ -27,6 +28,7 @@ type portrait struct {
 	canvas  *pixel.Canvas
 	density pixel.Density
 	dots    *image.RGBA
+	layer   layer
 
 	next    measure.Portrait // what the next round runs
 	each    int              // bounces an orbit has so far
@@ -57,6 +59,13 @@ func (p *portrait) show(r *Request) {
 		p.section = measure.NewSection(r.Table)
 	}
 	same := old != nil && old.Section == r.Section && old.Portrait == r.Portrait && old.Table == r.Table
+	if !mapped(old, r) {
+		p.layer.mosaic = nil // at once, and anew when the axes are laid out
+		defer func() {
+			w, h := frameSize(p.plot)
+			p.layer.begin(r, p.tracer, w, h)
+		}()
+	}
 	if same && reflect.DeepEqual(old.Look, r.Look) {
 		return
 	}
@@ -64,6 +73,13 @@ func (p *portrait) show(r *Request) {
 	if !same {
 		p.restart()
 	}
+}
+
+// mapped reports whether the map of one request is that of the next, as far as
+// the tables, the axes and the size go.
+func mapped(old, r *Request) bool {
+	return old != nil && old.Settings.Layer == r.Settings.Layer && old.Section == r.Section && old.Portrait == r.Portrait &&
+		old.Table.SameWall(r.Table) && old.Table.Design().Study.Display == r.Table.Design().Study.Display && old.Look.Sizes == r.Look.Sizes
 }
 
 func (p *portrait) restart() {
@@ -105,12 +121,25 @@ func frameSize(p render.Plot) (w, h int) {
 
 // filling reports whether there is more to fill.
 func (p *portrait) filling(hold Filling) bool {
-	return p.req != nil && hold == Fills && p.next.Orbits() > 0 && p.each < p.req.Table.Design().Study.Bounces
+	return p.req != nil && hold == Fills && (p.dotting() || p.layer.filling())
+}
+
+// dotting reports whether orbits are to be followed further.
+func (p *portrait) dotting() bool {
+	return p.next.Orbits() > 0 && p.each < p.req.Table.Design().Study.Bounces
 }
 
 // fill runs a round. The first is run whatever holds.
 func (p *portrait) fill(fresh bool, hold Filling) bool {
-	if p.req == nil || p.next.Orbits() == 0 || p.rounds > 0 && !p.filling(hold) {
+	dotted := p.dot(fresh, hold)
+	if p.req == nil || fresh || hold != Fills {
+		return dotted // the first frame after a change has no map yet
+	}
+	return p.layer.fill(p.tracer, p.req.Table.Design().Study.Seed) || dotted
+}
+
+func (p *portrait) dot(fresh bool, hold Filling) bool {
+	if p.req == nil || p.next.Orbits() == 0 || p.rounds > 0 && !(hold == Fills && p.dotting()) {
 		return false
 	}
 	if p.rounds > 0 && fresh {
@@ -168,16 +197,23 @@ func (p *portrait) draw(img *image.RGBA) *image.RGBA {
 	copy(img.Pix, p.static.Pix)
 	w, h := frameSize(p.plot)
 	p.dots = sized(p.dots, image.Pt(w, h))
-	p.density.Shade(p.dots, p.req.Look)
 	at := image.Pt(int(p.plot.Frame.Min.X), int(p.plot.Frame.Min.Y))
-	draw.Draw(img, image.Rectangle{Min: at, Max: at.Add(image.Pt(w, h))}, p.dots, image.Point{}, draw.Over)
+	frame := image.Rectangle{Min: at, Max: at.Add(image.Pt(w, h))}
+	look := p.req.Look
+	if under := p.layer.paint(w, h, look); under != nil {
+		draw.Draw(img, frame, under, image.Point{}, draw.Src)
+		look.Sea = color.RGBA{} // the map says more of it than its dots, which would hide it
+	}
+	p.density.Shade(p.dots, look)
+	draw.Draw(img, frame, p.dots, image.Point{}, draw.Over)
 	p.canvas.Reset(img)
 	render.DrawMarks(p.canvas, p.axes, p.plot, p.req.Look)
+	p.layer.scale(p.canvas, p.plot, p.req.Look)
 	return img
 }
 
 func (p *portrait) status() Status {
-	s := Status{Bounces: p.bounces, PerSecond: p.pace, Undecided: p.stops.Undecided(), Lost: p.stops[sim.Lost], Escaped: p.stops[sim.Escaped]}
+	s := Status{Bounces: p.bounces, PerSecond: p.pace, Undecided: p.stops.Undecided(), Lost: p.stops[sim.Lost], Escaped: p.stops[sim.Escaped], Mapped: p.layer.done()}
 	if p.req != nil {
 		s.Revision = p.req.Revision
 		if most := p.req.Table.Design().Study.Bounces; most > 0 && p.next.Orbits() > 0 {

@@ -25,6 +25,7 @@ type Editor struct {
 	tool   *tool.Editor
 	mark   ring
 	breath ring
+	legend int // the corner that the legend of the coats stands in
 
 	breathing *fyne.Animation
 	picture   *image.RGBA
@@ -37,6 +38,7 @@ type Editor struct {
 // NewEditor is the editor's pane on a desk.
 func NewEditor(d *Desk) *Editor {
 	e := &Editor{desk: d, tool: tool.NewEditor(d.Session), mark: newRing(), breath: newRing()}
+	d.Tool = e.tool
 	e.Surface = newSurface(e, func() *image.RGBA { return e.picture }, func(int, int) {
 		d.Session.Editor = render.View{} // another size is fitted anew
 		e.Redraw()
@@ -209,7 +211,9 @@ func (e *Editor) Redraw() {
 	e.drawGrid(v, look)
 	render.DrawPaths(e.canvas, f, v, look)
 	e.drawOrigin(t, v, look)
+	e.drawLegend(v, look)
 	e.drawHandles(v, look)
+	e.drawFree(v, look)
 	e.drawDraft(v, look)
 	e.drawRefusal(v, look)
 	render.DrawScaleBar(e.canvas, f.Unit, v, live.ScaleBox(size, look), look)
@@ -262,6 +266,9 @@ const breathTime = 1400 * time.Millisecond
 func (e *Editor) HandlePlaces() []fyne.Position {
 	if e.Pixels().X < 2 {
 		return nil
+	}
+	if e.laysCoats() {
+		return e.coatPlaces()
 	}
 	v := e.view()
 	var all []fyne.Position

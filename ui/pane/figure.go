@@ -32,6 +32,9 @@ func NewFigure(d *Desk) *Figure {
 	return f
 }
 
+// Scrolls lets the wheel scroll what the figure lies in.
+func (f *Figure) Scrolls(in interface{ Scrolled(*fyne.ScrollEvent) }) { f.wheelElse = in.Scrolled }
+
 // Set shows a figure; nil shows none. The figure must not change afterwards.
 func (f *Figure) Set(fig figure.Figure) {
 	f.shown = fig

@@ -19,6 +19,7 @@ type number struct {
 	widget.Entry
 	nudge   func(k float64)
 	focused bool
+	stay    bool // leaving it takes nothing
 	before  string
 }
 
@@ -41,7 +42,7 @@ func (n *number) FocusGained() {
 func (n *number) FocusLost() {
 	n.focused = false
 	n.Entry.FocusLost()
-	if n.Text != n.before && n.OnSubmitted != nil {
+	if n.Text != n.before && n.OnSubmitted != nil && !n.stay {
 		n.OnSubmitted(n.Text)
 	}
 }
@@ -49,6 +50,8 @@ func (n *number) FocusLost() {
 // TypedKey nudges on Up and Down and gives up on Escape.
 func (n *number) TypedKey(e *fyne.KeyEvent) {
 	switch e.Name {
+	case fyne.KeyTab:
+		n.pass(heldKeys())
 	case fyne.KeyUp:
 		n.nudge(1)
 	case fyne.KeyDown:
@@ -62,6 +65,31 @@ func (n *number) TypedKey(e *fyne.KeyEvent) {
 		n.release()
 	default:
 		n.Entry.TypedKey(e)
+	}
+}
+
+// AcceptsTab asks for the Tab key.
+func (n *number) AcceptsTab() bool { return true }
+
+// mostPassed bounds the sliders that Tab passes by in a row.
+const mostPassed = 8
+
+// pass gives the keyboard to the next field, or with Shift to the one before,
+// and passes by the sliders: who types goes from number to number.
+func (n *number) pass(held fyne.KeyModifier) {
+	c := fyne.CurrentApp().Driver().CanvasForObject(n)
+	if c == nil {
+		return
+	}
+	for range mostPassed {
+		if held&fyne.KeyModifierShift != 0 {
+			c.FocusPrevious()
+		} else {
+			c.FocusNext()
+		}
+		if _, slides := c.Focused().(*widget.Slider); !slides {
+			return
+		}
 	}
 }
 

@@ -86,6 +86,10 @@ func (e *Editor) dot(c render.Point, radius float64, rim bool) {
 // drawHandles draws what can be dragged, in the one colour that says so: full
 // for the selected item, rings for the others, small for tangent handles.
 func (e *Editor) drawHandles(v render.View, look render.Look) {
+	if e.laysCoats() {
+		e.drawCoatHandles(v, look)
+		return
+	}
 	items := e.desk.Session.Table().Design().Items
 	sel := e.desk.Session.Selection
 	handles := make([][]shape.Handle, len(items))
@@ -112,8 +116,8 @@ func (e *Editor) drawHandles(v render.View, look render.Look) {
 
 // drawDraft draws the wall that is being drawn.
 func (e *Editor) drawDraft(v render.View, look render.Look) {
-	line, nodes := e.tool.Draft()
-	if len(line) > 1 {
+	lines, nodes := e.tool.Draft()
+	for _, line := range lines {
 		var p render.Path
 		for i, q := range line {
 			c := v.ToCanvas(q.X, q.Y)

@@ -150,7 +150,7 @@ func wallNote(t *table.Table, s float64) string {
 	} else if k < -1e-9/t.Length() {
 		bend = fmt.Sprintf("dispersing, radius %.4g %s", -1/k, t.Design().Unit)
 	}
-	return placeNote(t, s) + " · " + bend
+	return placeNote(t, s) + " · " + bend + lawNote(t, s)
 }
 
 // placeNote is a place on the wall in the convention of the display.

@@ -30,9 +30,10 @@ func (r *row) bring(x float64, unit table.Unit, size float64, busy bool) {
 	if x == r.value {
 		return
 	}
+	first := math.IsNaN(r.value)
 	r.value = x
 	r.quiet = true
-	if !busy {
+	if !busy || first {
 		r.slider.Min, r.slider.Max = r.around(x, size)
 	}
 	r.slider.Value = math.Min(math.Max(x, r.slider.Min), r.slider.Max)
@@ -51,6 +52,9 @@ func (r *row) around(x, size float64) (lo, hi float64) {
 	}
 	if r.spec.Lo < 0 {
 		return x - size, x + size
+	}
+	if r.spec.Lo == 0 && x == 0 {
+		return 0, math.Min(r.spec.Hi, size/8) // a fillet that is not there yet
 	}
 	if r.spec.Unit == param.Count {
 		return r.spec.Lo, math.Min(r.spec.Hi, math.Max(12, 4*x))

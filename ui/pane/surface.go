@@ -53,6 +53,8 @@ type Surface struct {
 
 	// keysElse takes the keys that mean nothing to the pane.
 	keysElse func(fyne.KeyName)
+	// wheelElse, if set, takes the wheel instead of a zoom.
+	wheelElse func(*fyne.ScrollEvent)
 
 	button  desktop.MouseButton
 	space   bool
@@ -251,6 +253,10 @@ func (s *Surface) MouseOut() {
 
 // Scrolled zooms about the pointer.
 func (s *Surface) Scrolled(e *fyne.ScrollEvent) {
+	if s.wheelElse != nil {
+		s.wheelElse(e)
+		return
+	}
 	x, y := s.pixel(e.Position)
 	d := math.Max(-100, math.Min(100, float64(e.Scrolled.DY+e.Scrolled.DX)))
 	s.hands.Zoom(x, y, math.Exp(d*zoomStep))

@@ -21,12 +21,14 @@ type Session struct {
 	path    string
 
 	Selection Selection
+	Coat      int          // the coat that is selected, NoCoat for none
 	Editor    render.View  // what the editor shows; one of no Scale fits the table
 	Section   table.Region // what the portrait shows
 	Settings  Settings
 	Refusal   error // why the last command was refused; nil after one that was not
 
 	revision uint64
+	gesture  int // number of the last gesture
 	changed  func()
 }
 
@@ -52,6 +54,7 @@ func (s *Session) OnChange(f func()) { s.changed = f }
 func (s *Session) Open(t *table.Table, path string) {
 	s.history, s.saved, s.path = edit.NewHistory(t), t, path
 	s.Selection, s.Editor, s.Section, s.Refusal = Selection{0, -1}, render.View{}, table.WholeSection(), nil
+	s.Coat = NoCoat
 	s.Touch()
 }
 
@@ -92,6 +95,9 @@ func (s *Session) Touch() {
 
 // hold keeps the selection within the document.
 func (s *Session) hold() {
+	if s.Coat >= len(s.Table().Design().Coats) {
+		s.Coat = NoCoat
+	}
 	items := s.Table().Design().Items
 	if s.Selection.Item >= len(items) {
 		s.Selection = Selection{-1, -1}
@@ -109,7 +115,20 @@ func (s *Session) Do(c edit.Command) error {
 }
 
 // Begin opens a gesture.
-func (s *Session) Begin() { s.history.Begin() }
+func (s *Session) Begin() {
+	s.gesture++
+	s.history.Begin()
+}
+
+// Gesture is the number of the gesture that is open, 0 for none. Who began one
+// can tell by it whether it is still the one: undo, a command or another
+// document end it.
+func (s *Session) Gesture() int {
+	if !s.history.InGesture() {
+		return 0
+	}
+	return s.gesture
+}
 
 // Amend replaces what the gesture did so far.
 func (s *Session) Amend(c edit.Command) error {

@@ -4,6 +4,7 @@ import (
 	"math"
 
 	"cavitywright/table"
+	"cavitywright/table/wall"
 
 	"gonum.org/v1/gonum/spatial/r2"
 )
@@ -15,18 +16,35 @@ type Settings struct {
 	Snap    Snapping
 	Pace    float64 // table sizes that a ball flies in a second
 	Motion  Motion
-	Drawn   int // bounces drawn of each ray
-	SeedAll int // orbits of an even seeding
+	Drawn   int      // bounces drawn of each ray
+	SeedAll int      // orbits of an even seeding
+	Law     wall.Law // that the coat tool lays; nil is an opening
+	Layer   Layer    // the map that lies under the portrait
 }
+
+// Layer is a map of the section that lies under the portrait's dots.
+type Layer uint8
+
+// The layers.
+const (
+	NoLayer    Layer = iota
+	Stretching       // finite-time stretching by the tangent map
+	Averages         // digits in which weighted Birkhoff averages agree
+	Lifetimes        // path until half has gone
+	Survivors        // what has not left after some bounces
+	Pasts            // and where that came from
+)
 
 // ToolName is the tool that the editor's pointer holds.
 type ToolName uint8
 
 // The tools of the editor.
 const (
-	Hand   ToolName = iota // take hold of what is there
-	Chain                  // set nodes by clicking
-	Stroke                 // draw freehand
+	Hand    ToolName = iota // take hold of what is there
+	Chain                   // set nodes by clicking
+	Stroke                  // draw freehand
+	Coats                   // lay coats along the wall
+	Measure                 // read off distances, angles and radii
 )
 
 // Bundle is what one pull in the rays launches.

@@ -5,6 +5,7 @@ import (
 	"os"
 	"os/exec"
 	"path/filepath"
+	"runtime"
 	"strings"
 	"testing"
 	"time"
@@ -207,6 +208,34 @@ func TestRuns(t *testing.T) {
 }
 
 // Two programs that keep at once do not get the same file.
+// A process that was killed keeps its number until whoever started it asks
+// after it; its copy is offered all the same.
+func TestKilledNotYetAskedAfter(t *testing.T) {
+	if runtime.GOOS != "linux" {
+		t.Skip("what a process is at is read from /proc, which only Linux has")
+	}
+	killed := exec.Command("sleep", "60")
+	if err := killed.Start(); err != nil {
+		t.Fatal(err)
+	}
+	defer func() { _ = killed.Wait() }()
+	o := owner{killed.Process.Pid, born(killed.Process.Pid)}
+	if o.Born == "" || !o.alive() {
+		t.Fatalf("a process that runs counts as ended: %+v", o)
+	}
+	if err := killed.Process.Kill(); err != nil {
+		t.Fatal(err)
+	}
+	for end := time.Now().Add(10 * time.Second); o.alive(); time.Sleep(time.Millisecond) {
+		if time.Now().After(end) {
+			t.Fatal("a process that was killed still counts as running after 10 s")
+		}
+	}
+	if !runs(o.PID) {
+		t.Error("the number of the process was given back before it was asked after, so nothing was tried")
+	}
+}
+
 func TestOwnFiles(t *testing.T) {
 	folder := t.TempDir()
 	seen := map[string]bool{}

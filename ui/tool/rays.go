@@ -18,6 +18,8 @@ type Rays struct {
 	from  table.Launch
 	at    r2.Vec
 	state pull
+
+	gesture int // the session's, of the pull
 }
 
 type pull uint8
@@ -54,11 +56,20 @@ func (r *Rays) Press(p r2.Vec, reach float64) {
 	}
 	r.from, r.state = l, pressed
 	r.s.Begin()
+	r.gesture = r.s.Gesture()
+}
+
+// heed lets go where the gesture is over: undo, a command or another document
+// came between.
+func (r *Rays) heed() {
+	if r.gesture != r.s.Gesture() {
+		r.state = idle
+	}
 }
 
 // Drag pulls the direction towards p.
 func (r *Rays) Drag(p r2.Vec, k Keys) {
-	if r.state == idle {
+	if r.heed(); r.state == idle {
 		return
 	}
 	if k.Has(Constrain) {
@@ -96,6 +107,7 @@ func sine(along, inward float64) float64 {
 // Release launches. A press without a pull on the wall launches along the
 // normal.
 func (r *Rays) Release() {
+	r.heed()
 	switch r.state {
 	case pressed:
 		if r.from.From == table.OnWall {
@@ -110,7 +122,7 @@ func (r *Rays) Release() {
 
 // Cancel takes the launch back.
 func (r *Rays) Cancel() {
-	if r.state != idle {
+	if r.heed(); r.state != idle {
 		r.s.Cancel()
 	}
 	r.state = idle
@@ -136,6 +148,7 @@ type Portrait struct {
 	s0, p0   float64
 	state    pull
 	together int
+	gesture  int // the session's, of the pull
 }
 
 // NewPortrait is the portrait's pointer on the session.
@@ -148,12 +161,20 @@ func (t *Portrait) Press(s, p float64) {
 	}
 	t.s0, t.p0, t.state = s, p, pressed
 	t.s.Begin()
+	t.gesture = t.s.Gesture()
 	_ = t.s.Amend(edit.Launch{New: []table.Launch{{S: s, P: p, Count: 1}}})
+}
+
+// heed lets go where the gesture is over, as for the rays.
+func (t *Portrait) heed() {
+	if t.gesture != t.s.Gesture() {
+		t.state = idle
+	}
 }
 
 // Drag sweeps a row of launches from the press to s, p.
 func (t *Portrait) Drag(s, p float64, k Keys) {
-	if t.state == idle {
+	if t.heed(); t.state == idle {
 		return
 	}
 	s, p = math.Min(math.Max(s, 0), math.Nextafter(1, 0)), math.Min(math.Max(p, -greatestP), greatestP)
@@ -168,7 +189,7 @@ func (t *Portrait) Drag(s, p float64, k Keys) {
 
 // Release keeps the launches.
 func (t *Portrait) Release() {
-	if t.state != idle {
+	if t.heed(); t.state != idle {
 		t.s.End()
 	}
 	t.state = idle
@@ -176,7 +197,7 @@ func (t *Portrait) Release() {
 
 // Cancel takes them back.
 func (t *Portrait) Cancel() {
-	if t.state != idle {
+	if t.heed(); t.state != idle {
 		t.s.Cancel()
 	}
 	t.state = idle

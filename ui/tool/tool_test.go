@@ -222,7 +222,7 @@ func TestRandomHands(t *testing.T) {
 		e, r, p := NewEditor(s), NewRays(s), NewPortrait(s)
 		for range rapid.IntRange(1, 12).Draw(t, "gestures") {
 			keys := Keys(rapid.IntRange(0, 3).Draw(t, "keys"))
-			switch rapid.IntRange(0, 8).Draw(t, "gesture") {
+			switch rapid.IntRange(0, 11).Draw(t, "gesture") {
 			case 0, 1:
 				from := point("from")
 				if h := s.Handles(); len(h) > 0 {
@@ -237,7 +237,8 @@ func TestRandomHands(t *testing.T) {
 			case 3:
 				_ = e.Delete()
 			case 4:
-				s.Settings.Tool = session.ToolName(rapid.IntRange(0, 2).Draw(t, "tool"))
+				s.Settings.Tool = session.ToolName(rapid.IntRange(0, int(session.Measure)).Draw(t, "tool"))
+				e.Next = shape.SpanKind(rapid.IntRange(0, 3).Draw(t, "next"))
 			case 5:
 				r.Press(point("r"), reach)
 				r.Drag(point("s"), keys)
@@ -250,7 +251,16 @@ func TestRandomHands(t *testing.T) {
 				e.Cancel()
 			case 8:
 				_ = SeedEvenly(s)
+			case 9:
+				_ = e.Align(Line(rapid.IntRange(0, int(SpreadY)).Draw(t, "line")))
+			case 10:
+				_ = e.Duplicate()
+			case 11:
+				_ = e.Copy()
+				e.Hover(point("o"))
+				_ = e.Paste()
 			}
+			_, _ = e.Draft()
 			_ = e.Hint(point("h"), reach)
 		}
 		e.Cancel()

@@ -12,7 +12,7 @@ import (
 func bar(name string, left []fyne.CanvasObject, right ...fyne.CanvasObject) fyne.CanvasObject {
 	row := append([]fyne.CanvasObject{title(name)}, left...)
 	l := &narrowing{split: len(row)}
-	row = append(row, right...)
+	row = tippedAll(name, append(row, right...))
 	for _, o := range row {
 		l.collect(o)
 	}

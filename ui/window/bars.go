@@ -16,7 +16,7 @@ import (
 
 // editorBar is the header of the table's pane: which tool the pointer holds.
 func (w *Window) editorBar() fyne.CanvasObject {
-	w.tools = newChoice([]string{"hand", "chain", "stroke"}, []string{"Reshape", "Nodes", "Freehand"}, func(i int) {
+	w.tools = newChoice([]string{"hand", "chain", "stroke", "coat", "measure"}, []string{"Reshape", "Nodes", "Freehand", "Coats", "Measure"}, func(i int) {
 		w.session.Settings.Tool = session.ToolName(i)
 		w.editor.Cancel()
 	})
@@ -85,7 +85,7 @@ func (w *Window) portraitBar() fyne.CanvasObject {
 	}
 	w.head.bounces = bounces
 	w.filling = quiet("stop", "", w.toggleFilling)
-	return bar("Portrait", []fyne.CanvasObject{quiet("seed", "Seed evenly", func() { w.sayErr(tool.SeedEvenly(w.session)) })},
+	return bar("Portrait", []fyne.CanvasObject{quiet("seed", "Seed evenly", func() { w.sayErr(tool.SeedEvenly(w.session)) }), w.layerChoice()},
 		widget.NewLabel("bounces"), bounces, w.filling,
 		quiet("fit", "", func() { w.portrait.Key(fyne.KeyF) }), quiet("grow", "", func() { w.grow(2) }))
 }

@@ -1,10 +1,12 @@
 package window
 
 import (
+	"context"
 	"fmt"
 	"time"
 
 	"cavitywright/table"
+	"cavitywright/ui/live"
 	"cavitywright/ui/store"
 
 	"fyne.io/fyne/v2/container"
@@ -19,9 +21,12 @@ type disk struct {
 	copy   *store.Recovery
 	timer  *time.Timer
 	kept   *table.Table
+	task   *live.Task       // the copy that is being written; nil for none
+	older  *store.Recovered // of a session before, brought back here; kept until there is a copy of our own
 }
 
-// keepAfter is how long the hand must rest before a copy is written.
+// keepAfter is how old a change gets before a copy of it is written. In a long
+// drag the copies follow each other at this distance.
 const keepAfter = 600 * time.Millisecond
 
 func newDisk(w *Window, folder string) disk {
@@ -32,27 +37,42 @@ func newDisk(w *Window, folder string) disk {
 	return d
 }
 
-// changed writes a copy once the hand rests.
+// changed writes a copy soon, or takes it away where nothing is unsaved any
+// more: what was undone must not come back after a crash.
 func (d *disk) changed() {
-	if d.copy == nil || !d.w.session.Unsaved() || d.kept == d.w.session.Table() {
-		return
+	switch {
+	case d.copy == nil:
+	case !d.w.session.Unsaved():
+		if d.kept != nil && !d.w.session.InGesture() {
+			d.clear()
+		}
+	case d.timer == nil && d.task == nil && d.kept != d.w.session.Table():
+		d.timer = time.AfterFunc(keepAfter, func() { d.w.post(d.keep) })
 	}
-	if d.timer != nil {
-		d.timer.Stop()
-	}
-	d.timer = time.AfterFunc(keepAfter, func() { d.w.post(d.keep) })
 }
 
+// keep writes the copy beside the window: the disk may take its time.
 func (d *disk) keep() {
-	t := d.w.session.Table()
-	if !d.w.session.Unsaved() || d.w.session.InGesture() {
+	d.timer = nil
+	t, path := d.w.session.Table(), d.w.session.Path()
+	if !d.w.session.Unsaved() || d.task != nil || t == d.kept {
 		return
 	}
-	if err := d.copy.Keep(t.Design(), d.w.session.Path(), time.Now()); err != nil {
-		d.w.foot.say(err.Error())
-		return
-	}
-	d.kept = t
+	write := func(context.Context, func(float64)) error { return d.copy.Keep(t.Design(), path, time.Now()) }
+	var task *live.Task
+	task = live.Start(d.w.post, write, func(float64) {}, func(err error) {
+		if d.task != task {
+			return // cleared meanwhile
+		}
+		d.task, d.kept = nil, t
+		if err != nil {
+			d.w.foot.say(err.Error())
+			return
+		}
+		d.dropOlder()
+		d.changed() // there may be a later change already
+	})
+	d.task = task
 }
 
 // clear forgets the copy: the document was saved, or given up.
@@ -60,7 +80,11 @@ func (d *disk) clear() {
 	if d.timer != nil {
 		d.timer.Stop()
 	}
-	d.kept = nil
+	if d.task != nil {
+		d.task.Wait() // one at a time may touch the copy
+	}
+	d.timer, d.task, d.kept = nil, nil, nil
+	d.dropOlder()
 	if d.copy != nil {
 		if err := d.copy.Clear(); err != nil {
 			d.w.foot.say(err.Error())
@@ -84,23 +108,32 @@ func (d *disk) offerRecovered() {
 	}
 	text := widget.NewLabel(fmt.Sprintf("The last session ended before %s was saved (%s).", name, r.At.Format("2 January 2006, 15:04")))
 	var q *dialog.CustomDialog
-	back := widget.NewButton("Bring it back", func() {
+	back := d.w.newAnswer("Bring it back", func() {
 		q.Hide()
 		t, err := table.New(r.Design)
 		if err != nil {
 			d.w.foot.say(err.Error())
 			return
 		}
+		d.older = &r
 		d.w.session.Adopt(t, r.Path)
-		d.forget(r)
 	})
 	back.Importance = widget.HighImportance
-	drop := widget.NewButton("Discard it", func() {
+	drop := d.w.newAnswer("Discard it", func() {
 		q.Hide()
 		d.forget(r)
 	})
 	q = dialog.NewCustomWithoutButtons("Bring back what was not saved?", container.NewVBox(text, container.NewHBox(back, drop)), d.w.win)
 	q.Show()
+	d.w.win.Canvas().Focus(back)
+}
+
+// dropOlder takes away the copy that the document was brought back from.
+func (d *disk) dropOlder() {
+	if d.older != nil {
+		d.forget(*d.older)
+		d.older = nil
+	}
 }
 
 func (d *disk) forget(r store.Recovered) {

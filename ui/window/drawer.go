@@ -40,7 +40,7 @@ func newDrawer(w *Window, sheets []sheet) *drawer {
 	for i, s := range sheets {
 		b := quiet("", s.Name(), func() { d.toggle(i) })
 		d.names = append(d.names, b)
-		row.Add(b)
+		row.Add(tipped("Sheets", b))
 	}
 	d.edge = container.New(layout.NewCustomPaddedLayout(0, 0, 6, 6), row)
 	return d

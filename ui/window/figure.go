@@ -25,7 +25,7 @@ import (
 
 // askFigure asks which figure is to be written, and how.
 func (w *Window) askFigure() {
-	what := widget.NewSelect([]string{"portrait", "table with rays"}, nil)
+	what := widget.NewSelect([]string{"portrait", "table with rays", "map under the portrait"}, nil)
 	what.SetSelectedIndex(0)
 	width := widget.NewSelectEntry([]string{"85", "120", "175"})
 	width.SetText("85")
@@ -49,13 +49,16 @@ func (w *Window) askFigure() {
 			return
 		}
 		o := export.Options{WidthMM: mm, DPI: res}
-		rays := what.SelectedIndex() == 1
-		name := strings.TrimSuffix(w.fileName(), ".cavity.json") + map[bool]string{false: "-portrait.", true: "-rays."}[rays] + kind.Selected
+		chosen := what.SelectedIndex()
+		name := strings.TrimSuffix(w.fileName(), ".cavity.json") + []string{"-portrait.", "-rays.", "-map."}[chosen] + kind.Selected
 		w.askPath(question{what: "Export the figure as", folder: w.folder(), name: name}, func(path string) error {
 			if err := store.CanWrite(path); err != nil {
 				return err
 			}
-			w.ExportFigure(path, rays, o)
+			if chosen == 2 {
+				return w.ExportMap(path, mapColumns, mapRows, o)
+			}
+			w.ExportFigure(path, chosen == 1, o)
 			return nil
 		})
 	}, w.win)
@@ -77,6 +80,17 @@ func (w *Window) exportBeside() {
 // ExportFigure writes the portrait, or the table with its rays, to a file. It
 // works beside the window, with progress, and can be stopped.
 func (w *Window) ExportFigure(path string, rays bool, o export.Options) {
+	t, drawn := w.session.Table(), w.session.Settings.Drawn
+	w.export(path, t, o, func(ctx context.Context, share func(float64)) (figure.Figure, error) {
+		return studyFigure(ctx, share, t, rays, drawn)
+	})
+}
+
+// maker computes a figure; share is told how much of it is done.
+type maker func(ctx context.Context, share func(float64)) (figure.Figure, error)
+
+// export writes a figure of a table to a file, beside the window.
+func (w *Window) export(path string, t *table.Table, o export.Options, make maker) {
 	format, err := export.FormatOf(path)
 	if err != nil {
 		w.foot.say(err.Error())
@@ -86,10 +100,9 @@ func (w *Window) ExportFigure(path string, rays bool, o export.Options) {
 		w.say("Another figure is being written; stop it, or wait until it is done.")
 		return
 	}
-	t, drawn := w.session.Table(), w.session.Settings.Drawn
 	w.foot.busy("Computing the figure", 0)
 	w.task = live.Start(w.post, func(ctx context.Context, share func(float64)) error {
-		return exportFigure(ctx, share, t, path, format, rays, drawn, o)
+		return exportFigure(ctx, share, t, path, format, o, make)
 	}, func(x float64) {
 		w.foot.busy("Computing the figure", x)
 	}, func(err error) {
@@ -115,8 +128,8 @@ func (w *Window) stopTask() {
 
 // exportFigure computes the figure from the study alone, as the batch program
 // does, and writes it with the table inside.
-func exportFigure(ctx context.Context, share func(float64), t *table.Table, path string, format export.Format, rays bool, drawn int, o export.Options) error {
-	fig, err := studyFigure(ctx, share, t, rays, drawn)
+func exportFigure(ctx context.Context, share func(float64), t *table.Table, path string, format export.Format, o export.Options, make maker) error {
+	fig, err := make(ctx, share)
 	if err != nil {
 		return err
 	}

@@ -35,6 +35,10 @@ func ReadTable(path string) (*table.Table, error) {
 // OpenPath opens a file. What is open stays where that fails.
 func (w *Window) OpenPath(path string) {
 	t, err := ReadTable(path)
+	if err != nil && HoldsOutline(path, err) {
+		w.ImportOutline(path)
+		return
+	}
 	if err != nil {
 		w.foot.say(err.Error())
 		return
@@ -68,12 +72,13 @@ func (w *Window) ifSaved(then func()) {
 	}
 	text := widget.NewLabel("The table has changes that are not saved.")
 	var d *dialog.CustomDialog
-	save := widget.NewButton("Save", func() { d.Hide(); w.saveThen(then) })
+	save := w.newAnswer("Save", func() { d.Hide(); w.saveThen(then) })
 	save.Importance = widget.HighImportance
-	drop := widget.NewButton("Do not save", func() { d.Hide(); then() })
-	back := widget.NewButton("Back to the table", func() { d.Hide() })
+	drop := w.newAnswer("Do not save", func() { d.Hide(); then() })
+	back := w.newAnswer("Back to the table", func() { d.Hide() })
 	d = dialog.NewCustomWithoutButtons("Save the changes?", container.NewVBox(text, container.NewHBox(save, drop, back)), w.win)
 	d.Show()
+	w.win.Canvas().Focus(save)
 }
 
 // close asks about unsaved changes and ends the program.
@@ -183,7 +188,7 @@ type question struct {
 // question comes again with the reason.
 func (w *Window) askPath(q question, then func(path string) error) {
 	where, file := newField(q.folder), newField(q.name)
-	browse := widget.NewButton("Browse…", func() {
+	browse := w.newAnswer("Browse…", func() {
 		d := dialog.NewFolderOpen(func(u fyne.ListableURI, err error) {
 			if err == nil && u != nil {
 				where.SetText(u.Path())
@@ -223,9 +228,9 @@ func (w *Window) askPath(q question, then func(path string) error) {
 	trouble := widget.NewLabel(q.trouble)
 	trouble.Wrapping = fyne.TextWrapWord
 	form := widget.NewForm(widget.NewFormItem("Name", file), widget.NewFormItem("Folder", container.NewBorder(nil, nil, nil, browse, where)))
-	ok := widget.NewButton("Write", write)
+	ok := w.newAnswer("Write", write)
 	ok.Importance = widget.HighImportance
-	cancel := widget.NewButton("Cancel", func() { d.Hide() })
+	cancel := w.newAnswer("Cancel", func() { d.Hide() })
 	d = dialog.NewCustomWithoutButtons(q.what, container.NewBorder(nil, container.NewHBox(layout.NewSpacer(), cancel, ok), nil, nil, container.NewVBox(form, trouble)), w.win)
 	for _, f := range []*field{where, file} {
 		f.OnSubmitted = func(string) { write() }
@@ -259,7 +264,10 @@ func (f *field) TypedKey(e *fyne.KeyEvent) {
 }
 
 // askOpen asks for a file to read.
-func (w *Window) askOpen() {
+func (w *Window) askOpen() { w.askFile(".json", ".png", ".svg", ".csv") }
+
+// askFile asks for a file with one of the endings, and opens it.
+func (w *Window) askFile(endings ...string) {
 	w.ifSaved(func() {
 		d := dialog.NewFileOpen(func(r fyne.URIReadCloser, err error) {
 			if err != nil || r == nil {
@@ -270,7 +278,7 @@ func (w *Window) askOpen() {
 			w.app.Preferences().SetString("folder", filepath.Dir(path))
 			w.OpenPath(path)
 		}, w.win)
-		d.SetFilter(storage.NewExtensionFileFilter([]string{".json", ".png", ".svg"}))
+		d.SetFilter(storage.NewExtensionFileFilter(endings))
 		if l, err := storage.ListerForURI(storage.NewFileURI(w.folder())); err == nil {
 			d.SetLocation(l)
 		}

@@ -44,7 +44,7 @@ func newFooter(w *Window) *footer {
 	cells := container.New(&thirds{}, f.left, f.middle, f.right)
 	f.halt = quiet("stop", "Stop", w.stopTask)
 	f.halt.Hide()
-	f.box = container.New(layout.NewCustomPaddedLayout(1, 4, 10, 10), container.NewBorder(nil, nil, nil, f.halt, cells))
+	f.box = container.New(layout.NewCustomPaddedLayout(1, 4, 10, 10), container.NewBorder(nil, nil, nil, tipped("", f.halt), cells))
 	f.readings = container.NewVBox(f.rail, container.New(layout.NewCustomPaddedLayout(0, 2, 10, 10), f.reading))
 	return f
 }

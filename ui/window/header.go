@@ -42,13 +42,13 @@ func newHeader(w *Window) *header {
 	}
 	h.undo = quiet("undo", "Undo", w.session.Undo)
 	h.redo = quiet("redo", "Redo", w.session.Redo)
-	h.box = container.NewHBox(
+	h.box = container.NewHBox(tippedAll("", []fyne.CanvasObject{
 		quiet("gallery", "Gallery", w.openGallery),
 		h.name, h.unit, h.saved, layout.NewSpacer(),
 		h.undo, h.redo,
 		quiet("open", "Open", w.askOpen), quiet("save", "Save", w.save),
 		quiet("figure", "Figure", w.askFigure),
-	)
+	})...)
 	return h
 }
 

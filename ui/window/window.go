@@ -40,10 +40,13 @@ type Window struct {
 	head     *header
 	foot     *footer
 	drawer   *drawer
+	tips     *tips
+	orbits   *pane.Orbits    // laid over portrait and rays by their sheet
 	floor    *fyne.Container // the panes, and the drawer beside them where it is open
 	tools    *choice
 	bundle   *choice
 	filling  *widget.Button
+	layers   *widget.Select // the map under the portrait
 	play     *widget.Button
 	commands []command
 	disk     disk
@@ -52,6 +55,9 @@ type Window struct {
 	rate     rate
 	variant  fyne.ThemeVariant
 	watch    func(State)
+	last     live.Status // of the work, as it was told last
+	beats    int
+	stalls   []live.Stall
 }
 
 // Options are what a caller may set.
@@ -81,12 +87,14 @@ func New(a fyne.App, t *table.Table, path string, o Options) *Window {
 	w.foot = newFooter(w)
 	w.desk.Hint, w.desk.Note, w.desk.Say, w.desk.Point = w.foot.hint, w.foot.note, w.foot.say, w.point
 	w.editor, w.rays, w.portrait = pane.NewEditor(w.desk), pane.NewRays(w.desk), pane.NewPortrait(w.desk)
+	w.orbits = pane.NewOrbits(w.desk, w.portrait, w.rays)
 	w.values = pane.NewValues(w.desk)
+	w.desk.Free = w.freed
 	w.head = newHeader(w)
 	w.layout()
 	w.session.OnChange(w.changed)
 	a.Settings().AddListener(func(fyne.Settings) { w.post(w.changed) })
-	w.commands = w.allCommands()
+	w.commands = w.withFreeWalls(w.allCommands())
 	w.win.SetMainMenu(w.menu())
 	w.win.Canvas().SetOnTypedKey(func(e *fyne.KeyEvent) { w.loose(e.Name) })
 	w.win.SetOnDropped(func(_ fyne.Position, uris []fyne.URI) { w.dropped(uris) })
@@ -99,14 +107,21 @@ func New(a fyne.App, t *table.Table, path string, o Options) *Window {
 
 // ShowAndRun shows the window and runs the program until it is closed.
 func (w *Window) ShowAndRun() {
+	var heart *live.Heart
 	w.app.Lifecycle().SetOnStarted(func() {
 		w.post(func() {
 			w.changed()
 			w.disk.offerRecovered()
 		})
 		time.AfterFunc(700*time.Millisecond, func() { w.post(w.editor.Breathe) })
+		if w.watch != nil {
+			heart = live.NewHeart(w.post, w.beat)
+		}
 	})
 	w.app.Lifecycle().SetOnStopped(func() {
+		if heart != nil {
+			heart.Close()
+		}
 		w.stopTask()
 		for _, k := range w.works {
 			k.Drop()
@@ -137,11 +152,22 @@ func (w *Window) layout() {
 	w.right.SetOffset(p.FloatWithFallback("rows", 0.46))
 	w.center = container.NewStack(w.columns)
 	w.drawer = newDrawer(w, []sheet{
+		newWallSheet(w),
 		newReadingsSheet(w),
+		newOrbitSheet(w),
+		newSurvivalSheet(w),
+		newFarFieldSheet(w),
+		newOpeningsSheet(w),
+		newModesSheet(w),
+		newOutlineSheet(w),
+		newStudiesSheet(w),
+		newToleranceSheet(w),
+		newWishSheet(w),
 	})
 	w.floor = container.NewStack()
 	w.arrange()
-	w.win.SetContent(container.NewBorder(w.head.box, container.NewVBox(w.drawer.edge, w.foot.box), nil, nil, w.floor))
+	w.tips = newTips(w.post)
+	w.win.SetContent(container.NewStack(container.NewBorder(w.head.box, container.NewVBox(w.drawer.edge, w.foot.box), nil, nil, w.floor), w.tips))
 }
 
 // arrange puts the panes beside the drawer, or lets them have all the room.
@@ -186,6 +212,7 @@ func (w *Window) grow(i int) {
 func (w *Window) changed() {
 	scale := float64(w.win.Canvas().Scale())
 	w.desk.Look = look(w.variant, max(scale, 1))
+	w.tips.hide()
 	w.head.refresh()
 	w.tools.show(int(w.session.Settings.Tool))
 	w.values.Refresh()
@@ -214,6 +241,7 @@ func (w *Window) pickUp() {
 
 // show asks the engine for what the session holds now.
 func (w *Window) show() {
+	w.orbits.Redraw()
 	r := live.Request{
 		Revision: w.session.Revision(), Table: w.session.Table(), Section: w.session.Section,
 		Settings: w.session.Settings, Look: w.desk.Look,
@@ -236,6 +264,7 @@ func (w *Window) shown(s live.Status) {
 	w.rays.Show()
 	w.portrait.Show()
 	w.foot.progress(s)
+	w.last = s
 	if w.watch != nil {
 		w.rate.count(time.Now(), w.engine.PortraitFrames.Taken())
 		w.watch(w.state(s))

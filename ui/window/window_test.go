@@ -24,7 +24,7 @@ import (
 
 // opened is a window on a table of the gallery, in the toolkit's headless
 // driver. Posts run when the test pumps them.
-func opened(t *testing.T, i int, size fyne.Size) (*Window, func()) {
+func opened(t testing.TB, i int, size fyne.Size) (*Window, func()) {
 	t.Helper()
 	a := test.NewTempApp(t)
 	tab, err := GalleryTable(i)

@@ -18,6 +18,7 @@ type work struct {
 	task *live.Task
 	on   *table.Table // the table of the work at hand, or of what it brought
 	turn int          // counts the works, so that a late post of an old one is known
+	next func()       // what waits for the work at hand to end; nil for nothing
 }
 
 // newWork is the work of a sheet; it ends with the window.
@@ -45,8 +46,18 @@ func (k *work) Stop() {
 // done included.
 func (k *work) Drop() {
 	k.Stop()
-	k.task, k.on = nil, nil
+	k.task, k.on, k.next = nil, nil, nil
 	k.turn++
+}
+
+// Follow is Start for short work that keeps up with a wall that is dragged:
+// work under way is let end, and of the calls that wait the newest is kept.
+func (k *work) Follow(do func(d desk) error, done func(error)) {
+	if k.task != nil {
+		k.next = func() { k.Start(do, nil, done) }
+		return
+	}
+	k.Start(do, nil, done)
 }
 
 // desk is what long work is given.
@@ -91,9 +102,13 @@ func (k *work) Start(do func(d desk) error, progress func(share float64), done f
 		if k.turn != turn {
 			return
 		}
-		k.task = nil
+		next := k.next
+		k.task, k.next = nil, nil
 		if done != nil && fits() {
 			done(err)
+		}
+		if next != nil {
+			next()
 		}
 	})
 }

@@ -21,9 +21,11 @@ type Sharing struct {
 // Orbits is the number of starts.
 func (m Sharing) Orbits() int { return m.Starts.Size() }
 
-// Bounces is what the opening of an orbit costs, as for Stretching: the tally
-// follows the orbit itself.
-func (m Sharing) Bounces() int { return m.Each / leads }
+// Bounces is Each.
+func (m Sharing) Bounces() int { return m.Each }
+
+// On is the table with mirrors.
+func (m Sharing) On() *sim.Tracer { return m.Tracer }
 
 // Start is a point of a lattice.
 func (m Sharing) Start(i int, _ func() float64) sim.Start {
@@ -32,7 +34,7 @@ func (m Sharing) Start(i int, _ func() float64) sim.Start {
 
 // Tally is a *SharingTally.
 func (m Sharing) Tally() measure.Tally {
-	return &SharingTally{of: m, trail: newTrail(m.Tracer), birkhoff: newBirkhoff(m.Tracer, m.Each), lots: measure.Lots[lot]{Size: m.Starts.Points.Size()}}
+	return &SharingTally{of: m, vector: newVector(m.Tracer), birkhoff: newBirkhoff(m.Tracer, m.Each), lots: measure.Lots[lot]{Size: m.Starts.Points.Size()}}
 }
 
 // Method is a way to tell chaotic orbits from regular ones.
@@ -41,26 +43,31 @@ type Method uint8
 // The methods.
 const (
 	ByGrowth   Method = iota
-	ByHalf            // by the growth over half of the bounces
 	ByAverages        // by weighted Birkhoff averages
 )
 
 const methods = int(ByAverages) + 1
 
-// lot is a lattice's orbits: their number and path, and those of the chaotic
-// ones.
+// leastLevel is the least number of bounces after which an orbit is told: with
+// fewer, growth as a power and growth as an exponential look alike.
+const leastLevel = 50
+
+// lot is a lattice's orbits: their number and path, and those of the orbits
+// that are chaotic by each method and at each level.
 type lot struct {
 	orbits, path float64
-	chaotic      [methods]float64
-	chaoticPath  [methods]float64
+	chaotic      [methods][levels]float64
+	chaoticPath  [methods][levels]float64
 }
 
 func (l *lot) add(o *lot) {
 	l.orbits += o.orbits
 	l.path += o.path
 	for m := range l.chaotic {
-		l.chaotic[m] += o.chaotic[m]
-		l.chaoticPath[m] += o.chaoticPath[m]
+		for k := range l.chaotic[m] {
+			l.chaotic[m][k] += o.chaotic[m][k]
+			l.chaoticPath[m][k] += o.chaoticPath[m][k]
+		}
 	}
 }
 
@@ -69,52 +76,59 @@ type SharingTally struct {
 	Stops    measure.Stops
 	Walked   int64 // bounces
 	of       Sharing
-	trail    trail
+	vector   vector
 	birkhoff birkhoff
-	start    sim.State
+	stop     sim.Stop
+	level    int                   // the next to be read off
+	is       [methods][levels]bool // whether the orbit at hand is chaotic
 	lots     measure.Lots[lot]
 }
 
 // Open begins orbit i.
-func (t *SharingTally) Open(i int) { t.lots.Open(i) }
+func (t *SharingTally) Open(i int) {
+	t.lots.Open(i)
+	t.level, t.is = levels-1, [methods][levels]bool{}
+}
 
-// Add takes the opening bounce; the rest is followed by Close.
+// Add takes the opening bounce, and one that stopped.
 func (t *SharingTally) Add(b *sim.Bounce) {
+	t.stop = b.Stop
 	if b.N == 0 {
-		t.start = b.State
+		t.birkhoff.open(b)
+		if b.Stop == sim.Going {
+			t.vector.open(b)
+		}
 	}
 }
 
-// Close follows the orbit.
-func (t *SharingTally) Close() {
-	b := t.trail.open(t.start)
-	t.birkhoff.open(&b)
-	half := 0.0
-	for b.Stop == sim.Going && b.N < t.of.Each {
-		if b = t.trail.next(); b.Stop != sim.Going {
-			break
-		}
-		t.birkhoff.add(&b)
-		if b.N == t.of.Each/2 {
-			half = t.trail.growth(&b)
+// Step takes a bounce with the derivative of the step to it.
+func (t *SharingTally) Step(b *sim.Bounce, j sim.Jacobian) {
+	t.vector.step(j)
+	t.birkhoff.add(b)
+	for ; t.level >= 0 && b.N >= Level(t.of.Each, t.level); t.level-- {
+		if b.N >= leastLevel {
+			t.is[ByGrowth][t.level] = exponential(t.vector.growth(b), b.N)
+			t.is[ByAverages][t.level] = t.birkhoff.digits() < agreeing(b.N)
 		}
 	}
-	t.Walked += int64(b.N)
-	if b.Stop != sim.Going {
-		t.Stops[b.Stop]++
+}
+
+// Close counts the orbit.
+func (t *SharingTally) Close() {
+	t.Walked += int64(len(t.birkhoff.end))
+	if t.stop != sim.Going {
+		t.Stops[t.stop]++
 		return
 	}
 	row, path := t.lots.Last(), t.birkhoff.path
 	row.orbits++
 	row.path += path
-	for m, is := range [methods]bool{
-		ByGrowth:   exponential(t.trail.growth(&b), t.of.Each),
-		ByHalf:     exponential(half, t.of.Each/2),
-		ByAverages: t.birkhoff.digits() < agreeing(t.of.Each),
-	} {
-		if is {
-			row.chaotic[m]++
-			row.chaoticPath[m] += path
+	for m := range t.is {
+		for k := range t.is[m] {
+			if t.is[m][k] {
+				row.chaotic[m][k]++
+				row.chaoticPath[m][k] += path
+			}
 		}
 	}
 }
@@ -131,15 +145,32 @@ func (t *SharingTally) Merge(next measure.Tally) {
 
 // Section is the chaotic share of the section (of ds dp) with its standard
 // error.
-func (t *SharingTally) Section(by Method) (share, stderr float64) {
-	return t.ratio(func(l *lot) (float64, float64) { return l.chaotic[by], l.orbits })
+func (t *SharingTally) Section(by Method) (share, stderr float64) { return t.SectionAt(by, 0) }
+
+// SectionAt is that share by the bounces of a level alone; 0 at a level of too
+// few bounces.
+func (t *SharingTally) SectionAt(by Method, level int) (share, stderr float64) {
+	return t.ratio(func(l *lot) (float64, float64) { return l.chaotic[by][level], l.orbits })
 }
 
 // Energy is the chaotic share of the energy surface: each start counts by the
 // mean flight of its orbit.
 func (t *SharingTally) Energy(by Method) (share, stderr float64) {
-	return t.ratio(func(l *lot) (float64, float64) { return l.chaoticPath[by], l.path })
+	return t.ratio(func(l *lot) (float64, float64) { return l.chaoticPath[by][0], l.path })
 }
+
+// Drifts reports whether the share of the section still changes when the
+// bounces of an orbit are doubled, by more than driftErrors of its standard
+// errors.
+func (t *SharingTally) Drifts(by Method) bool {
+	now, err := t.SectionAt(by, 0)
+	before, _ := t.SectionAt(by, 1)
+	return math.Abs(now-before) > driftErrors*err
+}
+
+// driftErrors is the number of standard errors by which a doubling of the
+// bounces must change a share for it to count as drifting.
+const driftErrors = 2
 
 // ratio is the share with its error. Where hardly any orbit is of the rarer
 // kind the scatter tells nothing; the error is then what n orbits of one kind
@@ -164,11 +195,7 @@ const (
 // multiplies their number, each is the number of bounces of one. The table
 // must be one that has a tangent map.
 func MeasureSharing(tr *sim.Tracer, run measure.Runner, effort float64, each int) (*SharingTally, error) {
-	bare, err := Mirrored(tr)
-	if err != nil {
-		return nil, err
-	}
-	starts, err := measure.DrawnLattices(bare, run, int(shareWork*effort/measure.Slowness(bare.Table())/float64(each)))
+	bare, starts, err := offMirrors(tr, run, shareWork*effort/float64(each))
 	if err != nil {
 		return nil, err
 	}

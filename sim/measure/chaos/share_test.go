@@ -86,7 +86,7 @@ func TestShareByBounces(t *testing.T) {
 		}
 		s := sharing(t, tr, 31, c.effort, c.each)
 		share, err := s.Section(chaos.ByGrowth)
-		before, _ := s.Section(chaos.ByHalf)
+		before, _ := s.SectionAt(chaos.ByGrowth, 1)
 		t.Logf("after %d bounces %.4f ± %.4f (after half of them %.4f)", c.each, share, err, before)
 		if math.Abs(share-c.want) > 0.01+2*err || err > 0.01 {
 			t.Errorf("after %d bounces the share is %g ± %g, want %g", c.each, share, err, c.want)

@@ -1,3 +1,10 @@
+// Package chaos tells chaotic motion from regular: how fast neighbouring rays
+// part, which share of the section is chaotic, and by two independent methods;
+// maps of it, the islands that remain, and the character of single orbits.
+//
+// All walls are taken as mirrors: what leaves or is absorbed is followed
+// further. Shares are of ds dp; the growth of a tangent vector is taken across
+// the ray, as trail.go says.
 package chaos
 
 import (
@@ -29,15 +36,11 @@ type Stretching struct {
 // Orbits is the number of starts.
 func (m Stretching) Orbits() int { return m.Starts.Size() }
 
-// Bounces is what the opening of an orbit costs whoever runs the measurement.
-// The tally follows the orbit itself: the tangent map is its walker's, and no
-// bounce carries it.
-func (m Stretching) Bounces() int { return m.Each / leads }
+// Bounces is the most that an orbit is followed for.
+func (m Stretching) Bounces() int { return Patience * (m.Skip + m.Each) }
 
-// leads is which part of an orbit is run before the tally runs all of it. It
-// sizes the blocks in which orbits are shared out: of some 800 000 bounces, a
-// fifth of a second.
-const leads = 16
+// On is the table with mirrors.
+func (m Stretching) On() *sim.Tracer { return m.Tracer }
 
 // Start is a point of a lattice.
 func (m Stretching) Start(i int, _ func() float64) sim.Start {
@@ -46,7 +49,7 @@ func (m Stretching) Start(i int, _ func() float64) sim.Start {
 
 // Tally is a *StretchingTally.
 func (m Stretching) Tally() measure.Tally {
-	return &StretchingTally{of: m, trail: newTrail(m.Tracer), lots: measure.Lots[grown]{Size: m.Starts.Points.Size()}}
+	return &StretchingTally{of: m, vector: newVector(m.Tracer), lots: measure.Lots[grown]{Size: m.Starts.Points.Size()}}
 }
 
 // ChaosPower is the power of n beyond which the growth over n bounces counts
@@ -63,14 +66,24 @@ const ChaosPower = 2.75
 func exponential(growth float64, n int) bool { return growth > ChaosPower*math.Log(float64(n)) }
 
 // grown is what the chaotic orbits of a lattice grew by and flew, in how many
-// bounces.
-type grown struct{ growth, path, bounces float64 }
+// bounces, at each level.
+type grown [levels]struct{ growth, path, bounces float64 }
 
 func (g *grown) add(o *grown) {
-	g.growth += o.growth
-	g.path += o.path
-	g.bounces += o.bounces
+	for k := range g {
+		g[k].growth += o[k].growth
+		g[k].path += o[k].path
+		g[k].bounces += o[k].bounces
+	}
 }
+
+// levels is the number of lengths of an orbit at which a measurement is read
+// off: all of its bounces, half of them, a quarter, and so on.
+const levels = 8
+
+// Level is the bounces of an orbit at a level: each at level 0, half of them at
+// level 1, and so on.
+func Level(each, level int) int { return each >> level }
 
 // StretchingTally is the sums over the chaotic orbits of each lattice.
 type StretchingTally struct {
@@ -80,18 +93,34 @@ type StretchingTally struct {
 	Late    int64 // chaotic ones that did not show it in half of the bounces allowed
 	Walked  int64 // bounces
 	of      Stretching
-	trail   trail
-	start   sim.State
+	vector  vector
+	orbit   stretched
 	lots    measure.Lots[grown]
 }
 
-// Open begins orbit i.
-func (t *StretchingTally) Open(i int) { t.lots.Open(i) }
+// stretched is what is known of the orbit at hand.
+type stretched struct {
+	stop    sim.Stop
+	n       int // bounces
+	counted grown
+	level   int     // the next to be read off
+	before  float64 // growth where the bounces that count begin
+	path    float64 // since
+	look    int     // bounces at which it is asked next whether it is chaotic
+	chaotic bool
+}
 
-// Add takes the opening bounce; the rest is followed by Close.
+// Open begins orbit i.
+func (t *StretchingTally) Open(i int) {
+	t.lots.Open(i)
+	t.orbit = stretched{level: levels - 1, look: t.of.Skip + t.of.Each}
+}
+
+// Add takes the opening bounce, and one that stopped.
 func (t *StretchingTally) Add(b *sim.Bounce) {
-	if b.N == 0 {
-		t.start = b.State
+	t.orbit.stop, t.orbit.n = b.Stop, b.N
+	if b.N == 0 && b.Stop == sim.Going {
+		t.vector.open(b)
 	}
 }
 
@@ -99,43 +128,47 @@ func (t *StretchingTally) Add(b *sim.Bounce) {
 // most, to see whether it is chaotic.
 const Patience = 4
 
-// Close follows the orbit.
-func (t *StretchingTally) Close() {
-	b := t.trail.open(t.start)
-	counted := grown{bounces: float64(t.of.Each)}
-	end := t.of.Skip + t.of.Each
-	chaotic, late := false, false
-	for n := end; !chaotic && n <= Patience*end && b.Stop == sim.Going; n *= 2 {
-		for b.Stop == sim.Going && b.N < n {
-			if b = t.trail.next(); b.Stop != sim.Going {
-				break
-			}
-			if b.N > t.of.Skip && b.N <= end {
-				counted.path += b.Flight
-			}
-			switch b.N {
-			case t.of.Skip:
-				counted.growth = -t.trail.growth(&b)
-			case end:
-				counted.growth += t.trail.growth(&b)
-			}
-		}
-		if b.Stop == sim.Going {
-			chaotic, late = exponential(t.trail.growth(&b), n), 2*n > Patience*end
+// Step takes a bounce with the derivative of the step to it.
+func (t *StretchingTally) Step(b *sim.Bounce, j sim.Jacobian) {
+	o := &t.orbit
+	t.vector.step(j)
+	o.n = b.N
+	if b.N > t.of.Skip {
+		o.path += b.Flight
+	}
+	if b.N == t.of.Skip {
+		o.before = t.vector.growth(b)
+	}
+	for ; o.level >= 0 && b.N == t.of.Skip+Level(t.of.Each, o.level); o.level-- {
+		c := &o.counted[o.level]
+		c.growth, c.path, c.bounces = t.vector.growth(b)-o.before, o.path, float64(Level(t.of.Each, o.level))
+	}
+	if b.N == o.look {
+		o.chaotic = exponential(t.vector.growth(b), b.N)
+		if !o.chaotic {
+			o.look *= 2
 		}
 	}
-	t.Walked += int64(b.N)
+}
+
+// Enough reports whether the orbit is known to be chaotic.
+func (t *StretchingTally) Enough() bool { return t.orbit.chaotic }
+
+// Close counts the orbit.
+func (t *StretchingTally) Close() {
+	o := &t.orbit
+	t.Walked += int64(o.n)
 	switch {
-	case b.Stop != sim.Going:
-		t.Stops[b.Stop]++
-	case !chaotic:
+	case o.stop != sim.Going:
+		t.Stops[o.stop]++
+	case !o.chaotic:
 		t.Regular++
 	default:
 		t.Chaotic++
-		if late {
+		if 2*o.n > t.of.Bounces() {
 			t.Late++
 		}
-		t.lots.Last().add(&counted)
+		t.lots.Last().add(&o.counted)
 	}
 }
 
@@ -151,13 +184,23 @@ func (t *StretchingTally) Merge(next measure.Tally) {
 
 // PerLength is the exponent per path length (1/length) with its standard
 // error; NaN where no orbit is chaotic.
-func (t *StretchingTally) PerLength() (rate, stderr float64) {
-	return t.rate(func(g *grown) (float64, float64) { return g.growth, g.path })
-}
+func (t *StretchingTally) PerLength() (rate, stderr float64) { return t.perLength(0) }
 
 // PerBounce is the same per bounce.
 func (t *StretchingTally) PerBounce() (rate, stderr float64) {
-	return t.rate(func(g *grown) (float64, float64) { return g.growth, g.bounces })
+	return t.rate(func(g *grown) (float64, float64) { return g[0].growth, g[0].bounces })
+}
+
+func (t *StretchingTally) perLength(level int) (rate, stderr float64) {
+	return t.rate(func(g *grown) (float64, float64) { return g[level].growth, g[level].path })
+}
+
+// counted is the number of bounces that the rate at a level rests on.
+func (t *StretchingTally) counted(level int) (n float64) {
+	for i := range t.lots.Rows {
+		n += t.lots.Rows[i][level].bounces
+	}
+	return n
 }
 
 // rate is a ratio of sums. To its scatter over the lattices the error adds the
@@ -167,65 +210,6 @@ func (t *StretchingTally) rate(of func(*grown) (a, b float64)) (rate, stderr flo
 	rate, stderr = t.lots.Ratio(of)
 	return rate, math.Hypot(stderr, rate*float64(t.Late)/float64(t.Chaotic))
 }
-
-// trail follows an orbit off mirrors with a tangent vector: a ray infinitely
-// near it. The vector's length is taken across the ray, as
-//
-//	(ds cos chi / l)^2 + (dp / cos chi)^2
-//
-// with the table's mean chord l: shift and turn of the beam. On a circle it
-// grows at most as the path, however near to grazing the orbit is. The vector
-// is not needed by its direction, but by its growth.
-type trail struct {
-	walker *sim.Walker
-	unit   float64 // l, in the table's unit
-	ds, dp float64
-	log    float64 // of what was taken out of the vector
-}
-
-func newTrail(tr *sim.Tracer) trail {
-	return trail{walker: tr.Walker(), unit: sim.MeanChord(tr.Table())}
-}
-
-// Bounds within which a vector is left as it is: one bounce multiplies it by
-// some 1e14 at most (two grazing cosines of 1e-7), and 1e300 is the largest
-// square.
-const (
-	vectorHigh = 1e100
-	vectorLow  = 1e-100
-)
-
-// open starts an orbit with a vector of length 1, half of it shift and half
-// turn.
-func (t *trail) open(st sim.State) sim.Bounce {
-	b := t.walker.Start(st)
-	cos := cosine(b.P)
-	t.ds, t.dp, t.log = math.Sqrt2/2*t.unit/cos, math.Sqrt2/2*cos, 0
-	return b
-}
-
-// next follows the orbit to its next bounce.
-func (t *trail) next() sim.Bounce {
-	b := t.walker.Next(0)
-	if b.Stop != sim.Going {
-		return b
-	}
-	t.ds, t.dp = t.walker.Jacobian().Apply(t.ds, t.dp)
-	if m := math.Max(math.Abs(t.ds)/t.unit, math.Abs(t.dp)); m > vectorHigh || m < vectorLow {
-		t.log += math.Log(m)
-		t.ds, t.dp = t.ds/m, t.dp/m
-	}
-	return b
-}
-
-// growth is the logarithm of the vector's length at the bounce b, which the
-// orbit stands at.
-func (t *trail) growth(b *sim.Bounce) float64 {
-	cos := cosine(b.P)
-	return t.log + math.Log(math.Hypot(t.ds*cos/t.unit, t.dp/cos))
-}
-
-func cosine(p float64) float64 { return math.Sqrt((1 - p) * (1 + p)) }
 
 const (
 	// stretchWork is the number of bounces that count at effort 1,
@@ -242,11 +226,7 @@ const (
 // MeasureStretching follows orbits of the table off mirrors; effort multiplies
 // their number. The table must be one that has a tangent map.
 func MeasureStretching(tr *sim.Tracer, run measure.Runner, effort float64) (*StretchingTally, error) {
-	bare, err := Mirrored(tr)
-	if err != nil {
-		return nil, err
-	}
-	starts, err := measure.DrawnLattices(bare, run, int(stretchWork*effort/measure.Slowness(bare.Table())/StretchBounces))
+	bare, starts, err := offMirrors(tr, run, stretchWork*effort/StretchBounces)
 	if err != nil {
 		return nil, err
 	}

@@ -7,7 +7,7 @@ import (
 
 // cellsASide is the number of cells along s and along p of the grid in which
 // the starts of lasting rays are noted.
-const cellsASide = 512
+const cellsASide = 1024
 
 // Cells is a part of the section: a set of cells of a grid over it.
 type Cells struct{ cells []int32 }
@@ -92,7 +92,7 @@ func (t *LastingTally) Merge(next measure.Tally) {
 // Cells are the cells from which a ray lasted, with all cells that touch them;
 // the whole section where none did.
 func (t *LastingTally) Cells() Cells {
-	var in [cellsASide * cellsASide]bool
+	in := make([]bool, cellsASide*cellsASide)
 	for _, k := range t.starts {
 		s, p := int(k%cellsASide), int(k/cellsASide)
 		for y := max(p-1, 0); y <= min(p+1, cellsASide-1); y++ {

@@ -50,3 +50,19 @@ func Opens(t *table.Table) string {
 	}
 	return ""
 }
+
+// Emits is why nothing gets out of the table through its wall, "" where
+// something does: absorbed is not out.
+func Emits(t *table.Table) string {
+	if t.Open() {
+		return ""
+	}
+	for _, l := range measure.Laws(t) {
+		for i := range measure.ProbeAngles {
+			if l.Scatter(measure.Probe(i), 0.5).Through.Weight > 0 {
+				return ""
+			}
+		}
+	}
+	return "nothing leaves through the wall of this table; lay an opening or a dielectric coat on it"
+}

@@ -52,10 +52,13 @@ const (
 	// sparse is the survival a bounce below which most starts are wasted and
 	// the pilot looks for the cells from which rays last.
 	sparse       = 0.6
-	searchPoints = 1 << 20 // at effort 1 and above
+	searchPoints = 1 << 22 // at effort 1 and above
 	searchLeast  = 1 << 16
-	// escapeWork is the number of flights at effort 1.
+	// escapeWork is the number of flights at effort 1, and sparseWork how many
+	// times more where most starts are wasted: among posts, where flights cost
+	// little.
 	escapeWork = 4e7
+	sparseWork = 3
 )
 
 // MeasureEscape measures the escape rate of a table; effort multiplies the
@@ -172,6 +175,9 @@ func (p *plan) main(effort float64) Escape {
 		flights = p.staying * p.rays * (1 - math.Pow(p.rays, float64(next))) / (1 - p.rays)
 	}
 	starts := escapeWork * effort / (1 + flights/p.cells.Share()) / measure.Slowness(p.tracer.Table())
+	if p.rays <= sparse {
+		starts *= sparseWork
+	}
 	points := measure.NewFibonacci(int(starts / measure.LeastLattices))
 	n := min(max(int(starts)/points.Size(), measure.LeastLattices), len(p.shifts))
 	return Escape{

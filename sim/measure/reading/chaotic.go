@@ -23,7 +23,7 @@ func (b bench) chaotic(name string, share func(*chaos.SharingTally, chaos.Method
 	if why := chaos.Integrable(b.tracer.Table()); why != "" {
 		return figure.Scalar{Unit: "1", Note: why + b.asMirrors()}, nil
 	}
-	t, err := chaos.MeasureSharing(b.tracer, b.run, b.effort, chaos.ShareBounces)
+	t, err := b.sharing()
 	if err != nil {
 		return figure.Scalar{}, err
 	}
@@ -33,16 +33,13 @@ func (b bench) chaotic(name string, share func(*chaos.SharingTally, chaos.Method
 	}
 	other, otherErr := share(t, chaos.ByAverages)
 	s.Note = fmt.Sprintf("%s; by growth over %d bounces an orbit, %.5f ± %.5f by weighted Birkhoff averages", starts, chaos.ShareBounces, other, otherErr)
-	if before, _ := share(t, chaos.ByHalf); math.Abs(s.Value-before) > driftErrors*s.StdErr {
-		s.Note += fmt.Sprintf("; still drifting: %.5f over %d bounces", before, chaos.ShareBounces/2)
+	if t.Drifts(chaos.ByGrowth) {
+		before, _ := t.SectionAt(chaos.ByGrowth, 1)
+		s.Note += fmt.Sprintf("; still drifting: %.5f of the section over %d bounces", before, chaos.ShareBounces/2)
 	}
 	s.Note += b.asMirrors() + t.Stops.Remark()
 	return s, nil
 }
-
-// driftErrors is the number of standard errors by which a doubling of the
-// bounces must change a share for it to count as drifting.
-const driftErrors = 2
 
 func lyapunovPerLength(b bench) (figure.Scalar, error) {
 	return b.lyapunov("lyapunov-per-length", "1/"+b.unit(), (*chaos.StretchingTally).PerLength, sim.MeanChord(b.tracer.Table()))
@@ -57,7 +54,7 @@ func (b bench) lyapunov(name, unit string, rate func(*chaos.StretchingTally) (fl
 	if why := chaos.Integrable(b.tracer.Table()); why != "" {
 		return figure.Scalar{Unit: unit, Note: why + b.asMirrors()}, nil
 	}
-	t, err := chaos.MeasureStretching(b.tracer, b.run, b.effort)
+	t, err := b.stretching()
 	if err != nil {
 		return figure.Scalar{}, err
 	}

@@ -27,11 +27,11 @@ type Reading struct {
 // Exactness says how a reading comes about.
 type Exactness uint8
 
-// The kinds of reading. Awaited ones have a name and no measurement yet.
+// The kinds of reading. Asked ones are measured, but only where they are named.
 const (
 	Exact Exactness = iota
 	Measured
-	Awaited
+	Asked
 )
 
 // NoReading says that no reading has the name.
@@ -40,9 +40,7 @@ type NoReading struct{ Name string }
 func (e *NoReading) Error() string {
 	var names []string
 	for _, r := range readings {
-		if r.Kind != Awaited {
-			names = append(names, r.Name)
-		}
+		names = append(names, r.Name)
 	}
 	return fmt.Sprintf("There is no reading called %q; use one of %s.", e.Name, strings.Join(names, ", "))
 }
@@ -57,15 +55,17 @@ var readings = []Reading{
 	{"mean-dwell", "Mean path of rays that enter through the openings by the cosine law until they leave, in the unit (pi A / W by Kac 1947).", Measured, leak.Opens, meanDwell},
 	{"lyapunov-per-length", "Largest Lyapunov exponent of the chaotic orbits off mirrors, in 1/unit of path (Benettin and Strelcyn 1978).", Measured, chaos.Mirrors, lyapunovPerLength},
 	{"lyapunov-per-bounce", "The same per bounce.", Measured, chaos.Mirrors, lyapunovPerBounce},
+	{"lyapunov-per-second", "The same per second at a speed that is given, divided by the index inside a dielectric wall, in 1/s.", Asked, chaos.Mirrors, lyapunovPerSecond},
+	{"precision-horizon", "Bounces after which double precision has lost an orbit: the logarithm of 2^53 by the exponent per bounce.", Measured, parts, precisionHorizon},
 	{"chaotic-share-section", "Share of ds dp whose orbits off mirrors are chaotic, by the growth of a tangent vector and by weighted Birkhoff averages (Sander and Meiss 2020).", Measured, chaos.Mirrors, chaoticSection},
 	{"chaotic-share-energy", "The same share of the energy surface: starts count by their mean flight.", Measured, chaos.Mirrors, chaoticEnergy},
-	awaited("window-share"),
-	awaited("lobe-width"),
-}
-
-func awaited(name string) Reading {
-	return Reading{Name: name, About: "Not measured by this version.", Kind: Awaited,
-		fits: func(*table.Table) string { return "this version does not measure it yet" }}
+	{"free-path-variance", "Variance of the flights between bounces over starts even in ds dp, in the unit squared (8/3 - pi^2/4 on a disc of radius 1).", Measured, measure.Closed, freePathVariance},
+	{"flight-correlation", "Correlation of a flight with the next one off mirrors: 0 where they are independent.", Measured, chaos.Mirrors, flightCorrelation},
+	{"window-share", "Share of what leaves within 30° of +x, refracted by Snell's law, from rays that start above the critical angle where the wall has one, else even in ds dp.", Measured, leak.Emits, windowShare},
+	{"back-share", "The same within 30° of the opposite direction.", Measured, leak.Emits, backShare},
+	{"lobe-width", "Full width at half maximum of the greatest lobe of the same far field, in degrees.", Measured, leak.Emits, lobeWidth},
+	{"mean-cosine", "Mean cosine of the direction of the same far field from +x.", Measured, leak.Emits, meanCosine},
+	{"far-field-entropy", "Entropy of the same far field relative to an even one: 1 where as much goes in every direction.", Measured, leak.Emits, farEntropy},
 }
 
 // Readings lists all readings.
@@ -78,7 +78,7 @@ func Wanted(t *table.Table, names []string) ([]Reading, error) {
 	var all []Reading
 	if len(names) == 0 {
 		for _, r := range readings {
-			if r.fits(t) == "" {
+			if r.Kind != Asked && r.fits(t) == "" {
 				all = append(all, r)
 			}
 		}
@@ -111,16 +111,15 @@ type bench struct {
 	tracer *sim.Tracer
 	run    measure.Runner
 	effort float64
+	speed  Speed
+	kept   *kept
 }
 
-// Take takes the reading, which must be Wanted on the tracer's table. run
-// knows the seed, which is only noted here; effort multiplies the number of
-// bounces. The error is a *measure.NotMeasured where it comes out that there is no
+// Take takes this one reading, which must be Wanted on the tracer's table, as a
+// Taker does; without a speed. The error is a *measure.NotMeasured where it comes out that there is no
 // such number, or run's.
 func (r Reading) Take(tr *sim.Tracer, run measure.Runner, effort float64, seed uint64) (figure.Scalar, error) {
-	s, err := r.take(bench{tr, run, effort})
-	s.Name, s.Seed = r.Name, seed
-	return s, err
+	return NewTaker(tr, run, effort, seed, 0).Take(r)
 }
 
 const (

@@ -55,8 +55,8 @@ func TestReadingsStadium(t *testing.T) {
 	if math.Abs(c.Value-2.1818117971465539) > 3*c.StdErr || c.StdErr > 0.01 {
 		t.Errorf("mean-chord is %g ± %g, want 2.1818", c.Value, c.StdErr)
 	}
-	if len(got) != 8 {
-		t.Errorf("a closed table has %d readings, want 8", len(got))
+	if len(got) != 11 {
+		t.Errorf("a closed table has %d readings, want 11", len(got))
 	}
 	for name, unit := range map[string]string{"perimeter": "mm", "area": "mm²", "mean-chord": "mm"} {
 		if got[name].Unit != unit {
@@ -120,16 +120,19 @@ var chaosReadings = []string{"lyapunov-per-length", "lyapunov-per-bounce", "chao
 // refusals to their kinds.
 func TestWanted(t *testing.T) {
 	glass := table.Coat{Side: table.AllSides, To: 1, Law: wall.Dielectric{Index: 3.3, Outside: 1}}
+	offMirrors := append(slices.Clone(chaosReadings), "free-path-variance", "flight-correlation")
+	far := []string{"window-share", "back-share", "lobe-width", "mean-cosine", "far-field-entropy"}
 	for _, c := range []struct {
 		name string
 		tr   *sim.Tracer
 		want []string
 	}{
-		{"closed", trial.Traced(t, "disc", []float64{1}), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact"}, chaosReadings...)},
-		{"posts", trial.Traced(t, "three-posts", []float64{1, 6}), []string{"perimeter", "escape-rate"}},
-		{"open", trial.Traced(t, "disc", []float64{1}, trial.Opening(0, 0, 0.1)), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate", "mean-dwell"}, chaosReadings...)},
-		{"glass", trial.Traced(t, "disc", []float64{1}, glass), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate"}, chaosReadings...)},
-		{"rough", trial.Traced(t, "disc", []float64{1}, table.Coat{Side: 0, To: 1, Law: wall.Rough{Share: 1}}), []string{"perimeter", "area", "mean-chord", "mean-chord-exact"}},
+		{"closed", trial.Traced(t, "disc", []float64{1}), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact"}, offMirrors...)},
+		{"chaotic", trial.Traced(t, "stadium", []float64{1, 1}), []string{"perimeter", "area", "mean-chord", "mean-chord-exact", "lyapunov-per-length", "lyapunov-per-bounce", "precision-horizon", "chaotic-share-section", "chaotic-share-energy", "free-path-variance", "flight-correlation"}},
+		{"posts", trial.Traced(t, "three-posts", []float64{1, 6}), append([]string{"perimeter", "escape-rate"}, far...)},
+		{"open", trial.Traced(t, "disc", []float64{1}, trial.Opening(0, 0, 0.1)), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate", "mean-dwell"}, append(slices.Clone(offMirrors), far...)...)},
+		{"glass", trial.Traced(t, "disc", []float64{1}, glass), append([]string{"perimeter", "area", "mean-chord", "mean-chord-exact", "escape-rate"}, append(slices.Clone(offMirrors), far...)...)},
+		{"rough", trial.Traced(t, "disc", []float64{1}, table.Coat{Side: 0, To: 1, Law: wall.Rough{Share: 1}}), []string{"perimeter", "area", "mean-chord", "mean-chord-exact", "free-path-variance"}},
 	} {
 		all, err := reading.Wanted(c.tr.Table(), nil)
 		var got []string
@@ -141,15 +144,6 @@ func TestWanted(t *testing.T) {
 		}
 	}
 	disc := trial.Traced(t, "disc", []float64{1}).Table()
-	for _, r := range reading.Readings() {
-		if r.Kind != reading.Awaited {
-			continue
-		}
-		_, err := reading.Wanted(disc, []string{r.Name})
-		if no := (*measure.NotMeasured)(nil); !errors.As(err, &no) {
-			t.Errorf("%s, not measured yet, is refused with %v", r.Name, err)
-		}
-	}
 	_, err := reading.Wanted(disc, []string{"perimeter", "escape-rate"})
 	if no := (*measure.NotMeasured)(nil); !errors.As(err, &no) {
 		t.Errorf("the escape rate of a closed disc is refused with %v", err)
