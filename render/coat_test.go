@@ -167,6 +167,34 @@ func TestCriticalOverItsStretch(t *testing.T) {
 	}
 }
 
+// The name of a critical line stands within the frame at the line's right end,
+// also near the frame's top; on a stretch without room for it, it is left out.
+func TestCriticalIsNamed(t *testing.T) {
+	look, box := Light(1), NewBox(0, 0, 500, 320)
+	f := scatter()
+	lo, hi := f.X.Lo, f.X.Hi
+	f.Y.Marks = []figure.Mark{{At: f.Y.Hi, Kind: figure.Critical, Name: "p = 1/n", From: lo, To: hi},
+		{At: 0, Kind: figure.Critical, Name: "p = 0.2", From: lo, To: lo + (hi-lo)/100}}
+	p := LayoutDots(f, box, look)
+	var c record
+	Draw(&c, f, box, look)
+	named := 0
+	for _, text := range c.texts {
+		switch text.String {
+		case "p = 0.2":
+			t.Error("a name stands over a stretch that is shorter than it")
+		case "p = 1/n":
+			named++
+			if !p.Frame.Contains(text.At) || text.At.X < p.Frame.Max.X-2*look.Small {
+				t.Errorf("the name stands at %v, the frame is %v", text.At, p.Frame)
+			}
+		}
+	}
+	if named != 1 {
+		t.Errorf("the line is named %d times", named)
+	}
+}
+
 // The legend stands under the plot, or the drawing, above the caption, within
 // the figure, and has one sample a line.
 func TestKeysAreSet(t *testing.T) {

@@ -78,8 +78,25 @@ func DrawMarks(c Canvas, f figure.Dots, p Plot, look Look) {
 	drawSpots(c, f, p, look)
 }
 
+// nameOver writes the name of a line over a stretch of the axis on paper at the
+// line's right end, within the frame; none where the stretch is short.
+func nameOver(c Canvas, name string, end Point, room float64, p Plot, look Look) {
+	w, gap := look.Small*letter.Width(name, letter.Regular), 0.3*look.Small
+	h := letter.CapHeight*look.Small + 2*gap
+	if name == "" || p.detail < numbered || 2*w > room {
+		return
+	}
+	top := end.Y - gap - h
+	if top < p.Frame.Min.Y {
+		top = end.Y + gap
+	}
+	ground := NewBox(end.X-w-3*gap, top, w+2*gap, h)
+	c.Fill(ground.Path(), Fade(look.Paper, 0.85))
+	c.Text(Text{At: Point{ground.Max.X - gap, top + h/2}, Size: look.Small, String: name, H: Right, V: Middle, Color: look.Ink})
+}
+
 // drawLevels draws the marks of a y axis: dashed lines right across, with
-// their names beside the frame. A line of paper colour under the dashes keeps
+// their names beside the frame, or within it where they cross a stretch alone. A line of paper colour under the dashes keeps
 // them readable across a dense sea.
 func drawLevels(c Canvas, marks []figure.Mark, p Plot, look Look) {
 	free := math.Inf(1)
@@ -105,7 +122,9 @@ func drawLevels(c Canvas, marks []figure.Mark, p Plot, look Look) {
 		} else {
 			c.Stroke(line, Pen{Width: look.Hair, Color: look.Ink, Cap: Butt})
 		}
-		if p.detail >= numbered && m.Name != "" && math.Abs(y-free) > look.Small {
+		if m.From < m.To {
+			nameOver(c, m.Name, Point{x1, y}, x1-x0, p, look)
+		} else if p.detail >= numbered && m.Name != "" && math.Abs(y-free) > look.Small {
 			free = y
 			c.Text(Text{At: Point{p.Frame.Max.X + labelGap*look.Small, y}, Size: look.Small,
 				String: m.Name, V: Middle, Color: look.Ink})

@@ -249,7 +249,7 @@ func widest(l Ladder, look Look) float64 {
 func markNames(marks []figure.Mark, look Look) float64 {
 	w := 0.0
 	for _, m := range marks {
-		if m.Name != "" {
+		if m.Name != "" && !(m.From < m.To) {
 			w = max(w, look.Small*letter.Width(m.Name, letter.Regular)+labelGap*look.Small)
 		}
 	}

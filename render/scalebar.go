@@ -9,12 +9,10 @@ import (
 
 // DrawScale draws the scale of a map that lies within a plot: a short bar of
 // colours in the lower right corner of the frame, with the numbers of its ends,
-// what they are, and a remark. It is left out where the frame is small.
+// what they are, and between them a remark, which does not change its size. It is
+// left out where the frame is small.
 func DrawScale(c Canvas, a figure.Axis, remark string, frame Box, look Look) {
 	name := title(a, 0)
-	if remark != "" {
-		name += " · " + remark
-	}
 	lo, hi := mended(a)
 	w := max(look.Small*letter.Width(name, letter.Regular), 9*look.Small)
 	h := (letter.CapHeight*2 + 0.5 + 0.7 + 0.5) * look.Small
@@ -41,7 +39,26 @@ func DrawScale(c Canvas, a figure.Axis, remark string, frame Box, look Look) {
 	below := bar.Max.Y + 0.5*look.Small
 	ink(bar.Min.X, below, short(lo), Left)
 	ink(bar.Max.X, below, short(hi), Right)
+	ink(bar.Min.X+bar.W()/2, below, remark, Center)
+}
+
+// DrawNote writes a sentence in the middle of a frame, on a ground of paper, so
+// that no dots run through the words.
+func DrawNote(c Canvas, text string, frame Box, look Look) {
+	gap := 0.6 * look.Small
+	lines := wrap([]string{text}, frame.W()-4*gap, look.Small)
+	w := 0.0
+	for _, l := range lines {
+		w = max(w, look.Small*letter.Width(l, letter.Regular))
+	}
+	h := float64(len(lines)) * lineHeight * look.Small
+	mid := frame.Center()
+	c.Fill(NewBox(mid.X-w/2-gap, mid.Y-h/2-gap, w+2*gap, h+2*gap).Path(), Fade(look.Paper, 0.92))
+	for i, l := range lines {
+		y := mid.Y + (float64(i)-float64(len(lines)-1)/2)*lineHeight*look.Small
+		c.Text(Text{At: Point{mid.X, y}, Size: look.Small, H: Center, V: Middle, Color: look.Ink, String: l})
+	}
 }
 
 // short is a number with two digits.
-func short(v float64) string { return proper(strconv.FormatFloat(v, 'g', 2, 64)) }
+func short(v float64) string { return Proper(strconv.FormatFloat(v, 'g', 2, 64)) }

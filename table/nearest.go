@@ -38,10 +38,12 @@ const nearestSamples = 24
 
 func (p *Piece) nearest(x r2.Vec) (local, dist float64) {
 	away := func(l float64) float64 {
-		if l < 0 {
-			l += p.Length // a piece that is a whole loop
-		} else if l > p.Length {
-			l -= p.Length
+		if p.Whole() { // its ends are one place
+			if l < 0 {
+				l += p.Length
+			} else if l > p.Length {
+				l -= p.Length
+			}
 		}
 		d := r2.Sub(p.FrameAt(p.T(l)).Point, x)
 		return math.Hypot(d.X, d.Y)

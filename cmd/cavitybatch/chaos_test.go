@@ -106,7 +106,6 @@ func TestChaosWrongUse(t *testing.T) {
 		{exitUse, []string{".csv"}, stadium, []string{"islands", "-", "-o", "x.png"}},
 		{exitFault, []string{"no outer wall"}, fine(t, "", "make", "three-posts"), []string{"stretching", "-", "-o", out}},
 		{exitFault, []string{"exactly 0"}, disc, []string{"convergence", "-", "-o", out}},
-		{exitFault, []string{"launches no orbit"}, stadium, []string{"launches", "-"}},
 	} {
 		refused(t, c.code, c.words, c.in, c.args...)
 	}
@@ -149,6 +148,11 @@ func TestLaunchesListed(t *testing.T) {
 	fine(t, table, "launches", "-", "-o", out)
 	if all := rows(t, out); len(all) != 2 {
 		t.Errorf("the rows are %v", all)
+	}
+	// Where the study launches nothing, what its portrait shows is told.
+	parsed(t, fine(t, fine(t, "", "make", "disc"), "launches", "-", "--bounces", "200", "--json"), &list)
+	if len(list.Orbits) != 60 {
+		t.Errorf("of a study without launches there are %d orbits, not the 60 of its portrait", len(list.Orbits))
 	}
 	if text := fine(t, table, "launches", "-"); !strings.Contains(text, "0.333333") || !strings.Contains(text, "nothing leaves") {
 		t.Errorf("the list is %q", text)

@@ -47,6 +47,7 @@ type emissionRow struct {
 	BackShare    valued     `json:"back_share"` // of the window's opposite
 	Lobe         valued     `json:"lobe_direction_deg"`
 	LobeWidth    valued     `json:"lobe_width_deg"`
+	Twins        []valued   `json:"twin_lobes_deg,omitempty"` // directions of lobes as high within their error
 	MeanCosine   valued     `json:"mean_cosine"`
 	Entropy      valued     `json:"entropy"`
 	MeanPath     valued     `json:"mean_path"`
@@ -155,6 +156,9 @@ func (c *emission) row(f *leak.FarField, pol string) emissionRow {
 		Lobe:        valued{l.Direction, l.DirectionErr}.in(deg), LobeWidth: valued{l.Width, l.WidthErr}.in(deg),
 		MeanCosine: withError(f.MeanCosine()), Entropy: withError(f.Entropy()), MeanPath: withError(f.MeanPath()),
 		Skipped: f.Skipped / f.Account.Started, Account: accounted(f.Account),
+	}
+	for _, twin := range l.Twins {
+		r.Twins = append(r.Twins, valued{twin.Direction, twin.DirectionErr}.in(deg))
 	}
 	if f.Watched {
 		r.MeetsAgain = &f.Again

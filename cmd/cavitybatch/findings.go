@@ -59,13 +59,10 @@ func (c *findings) report(ctx context.Context, t *table.Table, format export.For
 			return err
 		}
 	}
-	switch {
-	case c.JSON:
+	if c.JSON {
 		return writeJSON(std.out, content)
-	case c.Out == "":
-		return list(rows, std)
 	}
-	return nil
+	return list(rows, std)
 }
 
 // seeding reads how rays start, or what is natural for the table.

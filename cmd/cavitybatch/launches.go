@@ -12,6 +12,7 @@ import (
 	"cavitywright/sim"
 	"cavitywright/sim/measure"
 	"cavitywright/sim/measure/chaos"
+	"cavitywright/table"
 )
 
 // launches tells the character of the launched orbits.
@@ -44,6 +45,11 @@ type launchList struct {
 	Orbits []launchedOrbit `json:"orbits"`
 }
 
+// Help says what is followed where nothing is launched.
+func (*launches) Help() string {
+	return "Where the study launches no orbit of its own, orbits are seeded evenly in ds dp, as in its portrait."
+}
+
 // Run follows and lists.
 func (c *launches) Run(ctx context.Context, std streams) error {
 	if c.Bounces < 100 || c.Bounces > mostMapBounces {
@@ -65,7 +71,9 @@ func (c *launches) Run(ctx context.Context, std streams) error {
 		return err
 	}
 	if m.Orbits() == 0 {
-		return fmt.Errorf("%s: the study launches no orbit of its own inside the table; launch one, or map the section with cavitybatch stretching", quoted(c.File))
+		for _, l := range measure.WithLaunches(t, table.Study{}, 0).Launches {
+			m.Starts = append(m.Starts, tr.Launched(l)...)
+		}
 	}
 	r := newRunner(ctx, tr, t.Design().Study.Seed, c.Workers, std)
 	r.title = "launches"

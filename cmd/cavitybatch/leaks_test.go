@@ -142,15 +142,16 @@ func TestLeakFigures(t *testing.T) {
 	}
 }
 
-// TestLeakLists wants the numbers as a list where neither a figure nor JSON is
-// asked for, and the rows of the matrix to add up to 1.
+// TestLeakLists wants the numbers as a list where no JSON is asked for, also beside
+// a figure, and the rows of the matrix to add up to 1.
 func TestLeakLists(t *testing.T) {
 	d := fine(t, "", "make", "cut-disc", "--coat", "cut-disc:1:0.4:0.6:opening", "--coat", "cut-disc:2:0.1:0.2:opening")
 	for _, c := range []struct {
 		args  []string
 		words []string
 	}{
-		{[]string{"survival", "-", "--effort", "0.02"}, []string{"rate in the window", "mean dwell", "1/mm"}},
+		{[]string{"survival", "-", "--effort", "0.02", "-o", filepath.Join(t.TempDir(), "s.svg")}, []string{"rate in the window"}},
+		{[]string{"survival", "-", "--effort", "0.02"}, []string{"rate in the window", "mean path until gone", "1/mm"}},
 		{[]string{"emission", "-", "--effort", "0.2"}, []string{"window share", "lobe width", "entropy"}},
 		{[]string{"transmission", "-", "--effort", "0.02"}, []string{"opening 1 to 2", "mean dwell"}},
 		{[]string{"placement", "-", "--width", "0.3", "--effort", "0.05"}, []string{"greatest, s = ", "least, s = "}},

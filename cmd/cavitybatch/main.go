@@ -3,7 +3,8 @@
 // code as the designer.
 //
 // JSON goes to standard output where --json is given, progress to standard
-// error. Exit codes: 0 fine, 1 the table or study is at fault, 2 wrong use.
+// error. Exit codes: 0 fine, 1 the table or study is at fault or nothing
+// that was asked could be taken, 2 wrong use.
 // The same file with the same seed gives the same numbers on any number of
 // workers.
 package main
@@ -61,6 +62,7 @@ type commands struct {
 	Tolerance    copies       `cmd:"" help:"Take readings of copies of a table as a workshop makes them: their distribution, the yield, and which error matters."`
 	Wish         seek         `cmd:"" help:"Seek the wall for a wish: numbers of a table are turned until a reading is greatest, least, or at a value."`
 	Sheet        designSheet  `cmd:"" help:"Write the design sheet of a table: outline, readings, portrait and cautions on a page (pdf, svg or png)."`
+	Film         filmed       `cmd:"" help:"Turn a number of a table and write how the wall and the portrait change (gif, or numbered png)."`
 	Import       outlineIn    `cmd:"" help:"Make a table of an outline that was drawn (svg) or measured (csv), as it is or with a smooth wall fitted."`
 	Outline      outlineOut   `cmd:"" help:"Write the wall of a table for a workshop (svg, dxf, gds or csv), with bias and the error achieved."`
 
@@ -121,7 +123,7 @@ func hint(args []string) string {
 	for _, a := range args {
 		if !strings.HasPrefix(a, "-") {
 			switch a {
-			case "make", "check", "readings", "portrait", "rays", "stretching", "convergence", "islands", "paths", "correlation", "launches", "pace", "orbits", "modes", "survival", "lifetime", "emission", "transmission", "placement", "study", "gather", "tolerance", "wish", "import", "outline":
+			case "make", "check", "readings", "portrait", "rays", "stretching", "convergence", "islands", "paths", "correlation", "launches", "pace", "orbits", "modes", "survival", "lifetime", "emission", "transmission", "placement", "study", "gather", "tolerance", "wish", "import", "outline", "film":
 				return fmt.Sprintf("see cavitybatch %s --help", a)
 			}
 			break

@@ -10,6 +10,8 @@ import (
 	"strings"
 	"testing"
 
+	"cavitywright/sim/figure"
+
 	"github.com/go-json-experiment/json"
 )
 
@@ -209,6 +211,11 @@ func TestBadTable(t *testing.T) {
 	refused(t, 1, []string{"separation"}, "", "make", "three-posts", "separation=1")
 	refused(t, 1, []string{"reflectivity"}, "", "make", "disc", "--coat", "disc:1:0:1:lossy:reflectivity=3")
 	refused(t, 1, []string{"side 2"}, "", "make", "disc", "--coat", "disc:2:0:1:opening")
+	refused(t, 1, []string{"reflectivity", "bare wall"}, "", "make", "disc", "--bare", "lossy:reflectivity=3")
+	refused(t, 2, []string{"bare wall", "velvet"}, "", "make", "disc", "--bare", "velvet")
+	if text := fine(t, "", "make", "disc", "--bare", "dielectric:index=1.5"); !strings.Contains(text, `"law": "dielectric"`) || !strings.Contains(text, `"index": 1.5`) {
+		t.Errorf("the table of a bare wall of index 1.5 is %s", text)
+	}
 	refused(t, 1, []string{"Coat 1"}, "", "make", "disc", "--coat", "disc:1:0.5:0.5:opening")
 }
 
@@ -223,6 +230,19 @@ func TestNone(t *testing.T) {
 		refused(t, 1, []string{name, "nothing leaves"}, disc, "readings", "-", "--only", name, "--json")
 	}
 	refused(t, 1, []string{"mean-dwell", "opening"}, disc, "readings", "-", "--only", "mean-dwell")
+	// One that is not there withholds no other.
+	r := ran(t, disc, "readings", "-", "--only", "mean-dwell,perimeter,escape-rate", "--json")
+	var some struct {
+		Readings []figure.Scalar  `json:"readings"`
+		None     []figure.Missing `json:"none"`
+	}
+	parsed(t, r.out, &some)
+	if r.code != 0 || len(some.Readings) != 1 || some.Readings[0].Name != "perimeter" || strings.Count(r.err, "\n") != 2 {
+		t.Errorf("with two readings that are not there: exit %d, said %q, wrote %s", r.code, r.err, r.out)
+	}
+	if len(some.None) != 2 || some.None[0].Name != "mean-dwell" || !strings.Contains(some.None[0].Why, "opening") || some.None[1].Name != "escape-rate" {
+		t.Errorf("those that are not there are %+v", some.None)
+	}
 	refused(t, 2, []string{"not inside"}, fine(t, "", "make", "disc", "--coat", "disc:1:0:0.1:opening"), "survival", "-", "--from", "point:3,0")
 	refused(t, 2, []string{"no way to start"}, disc, "emission", "-", "--from", "light")
 	refused(t, 2, []string{"width"}, disc, "placement", "-", "--width", "wide")

@@ -21,6 +21,7 @@ type makeTable struct {
 	Shape string   `arg:"" optional:"" help:"Name of the shape; --list names them all."`
 	Set   []string `arg:"" optional:"" name:"name=value" help:"Parameters of the shape (lengths in the unit), and unit=m|cm|mm|um|nm (mm), name=TEXT, seed=N, bounces=N."`
 	Coat  []string `placeholder:"SHAPE:SIDE:FROM:TO:LAW[:name=value...]" sep:"none" help:"Lay a wall law on a stretch. SHAPE is the shape's name or its number, from 1; SIDE the number of the side along s, from 1, or all; FROM and TO are fractions of the side in the sense of increasing s. May be given again; a later coat covers an earlier one."`
+	Bare  string   `placeholder:"LAW[:name=value...]" help:"The law of the wall where no coat lies; mirror where none is given."`
 	List  bool     `help:"List the shapes and the wall laws with their parameters, units and ranges."`
 	Out   string   `short:"o" placeholder:"FILE" help:"Write to a file instead of standard output."`
 }
@@ -85,6 +86,11 @@ func (m *makeTable) design(kind *shape.Kind) (table.Design, error) {
 		return d, err
 	}
 	d.Items = []table.Item{{Shape: f, Place: plane.Identity()}}
+	if m.Bare != "" {
+		if d.Bare, err = bareLaw(m.Bare); err != nil {
+			return d, err
+		}
+	}
 	for _, text := range m.Coat {
 		c, err := coat(kind, text)
 		if err != nil {
@@ -164,6 +170,19 @@ func coat(kind *shape.Kind, text string) (table.Coat, error) {
 	return c, nil
 }
 
+// bareLaw reads LAW[:name=value...].
+func bareLaw(text string) (wall.Law, error) {
+	part := strings.Split(text, ":")
+	l, err := law(part[0], part[1:])
+	if re := (*param.RangeError)(nil); errors.As(err, &re) {
+		return nil, fmt.Errorf("the bare wall cannot be %q: %w", text, err)
+	}
+	if err != nil {
+		return nil, misuse("the bare wall cannot be %q: %v", text, err)
+	}
+	return l, nil
+}
+
 // law is the wall law called name, with parameters as name=value.
 func law(name string, set []string) (wall.Law, error) {
 	var names []string
@@ -209,7 +228,7 @@ func catalogue() []byte {
 		fmt.Fprintf(&b, "\n%s\n  %s\n  %s\n", k.Name, k.About, k.Formula)
 		specs(&b, k.Specs)
 	}
-	fmt.Fprintf(&b, "\nWall laws, for --coat.\n")
+	fmt.Fprintf(&b, "\nWall laws, for --coat and --bare.\n")
 	for _, k := range wall.Kinds() {
 		fmt.Fprintf(&b, "\n%s\n  %s\n", k.Name, k.About)
 		specs(&b, k.Specs)

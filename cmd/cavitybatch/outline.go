@@ -15,7 +15,7 @@ import (
 type outlineOut struct {
 	File       string  `arg:"" placeholder:"FILE" help:"The table, or - for standard input."`
 	Out        string  `short:"o" required:"" placeholder:"FILE" help:"The outline's file; its ending says the format: .svg (true arcs and cubics in real size), .dxf (lines and true arcs), .gds (polygons on a grid) or .csv (points, normals and curvature)."`
-	ChordError float64 `name:"chord-error" default:"0" placeholder:"E" help:"Greatest distance of the outline from the wall, in the table's unit; where none is given 1e-5 of the table's size, in SVG 1e-9."`
+	ChordError float64 `name:"chord-error" default:"0" placeholder:"E" help:"Greatest distance of the outline from the wall, in the table's unit; where none is given 1e-4 of the table's size but not below the grid, in SVG 1e-9."`
 	Bias       float64 `default:"0" placeholder:"B" help:"Move the wall by B out of the table, into the material, in the table's unit; negative into the table."`
 	Grid       float64 `default:"0" placeholder:"G" help:"Grid of .gds, in the table's unit; 1 nm where none is given."`
 	JSON       bool    `help:"Write what was achieved as JSON."`

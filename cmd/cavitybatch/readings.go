@@ -62,25 +62,32 @@ func (c *takeAll) Run(ctx context.Context, std streams) error {
 			return &wrongUse{err}
 		}
 	}
-	wanted, err := c.wanted(t, speed)
+	wanted, named, err := c.wanted(t, speed)
 	if err != nil {
-		if no := (*reading.NoReading)(nil); errors.As(err, &no) {
-			return &wrongUse{err}
-		}
-		return err
+		return &wrongUse{err}
 	}
 	seed := t.Design().Study.Seed
 	if c.Seed != nil {
 		seed = *c.Seed
 	}
-	rows, left, err := c.take(newRunner(ctx, sim.Compile(t), seed, c.Workers, std), wanted, speed)
+	rows, left, err := take(newRunner(ctx, sim.Compile(t), seed, c.Workers, std), wanted, c.Effort, speed)
 	if err != nil {
 		return err
 	}
-	for _, e := range left {
-		complain(std, e.Error())
+	left = append(named, left...)
+	if len(rows) == 0 && len(left) > 0 { // nothing could be taken
+		left, err = left[:len(left)-1], left[len(left)-1]
+	}
+	for _, no := range left {
+		complain(std, no.Error())
+	}
+	if err != nil {
+		return err
 	}
 	f := figure.Scalars{Rows: rows}
+	for _, no := range left {
+		f.None = append(f.None, figure.Missing{Name: no.Name, Why: no.Why})
+	}
 	if c.Out != "" {
 		var out bytes.Buffer
 		if err := export.Write(&out, format, f, export.Options{WidthMM: readingsMM, Header: header(t)}); err != nil {
@@ -102,18 +109,29 @@ func (c *takeAll) Run(ctx context.Context, std streams) error {
 // readingsMM is the width of a page of readings: two columns of a journal.
 const readingsMM = 175
 
-// wanted are the readings to take. One per second belongs to them where a speed
-// is given and the table has an exponent.
-func (c *takeAll) wanted(t *table.Table, speed reading.Speed) ([]reading.Reading, error) {
-	all, err := reading.Wanted(t, c.Only)
-	if err != nil || speed == 0 || slices.ContainsFunc(all, func(r reading.Reading) bool { return r.Name == perSecond }) {
-		return all, err
+// wanted are the readings to take, and those named that the table does not have.
+// One per second belongs to them where a speed is given and the table has an
+// exponent. The error is a *reading.NoReading.
+func (c *takeAll) wanted(t *table.Table, speed reading.Speed) (all []reading.Reading, none []*measure.NotMeasured, err error) {
+	names := c.Only
+	if len(names) == 0 {
+		all, _ = reading.Wanted(t, nil) // there is no name to be wrong
 	}
-	more, err := reading.Wanted(t, []string{perSecond})
-	if no := (*measure.NotMeasured)(nil); errors.As(err, &no) && len(c.Only) == 0 {
-		return all, nil
+	if speed != 0 && !slices.Contains(names, perSecond) {
+		names = append(slices.Clone(names), perSecond)
 	}
-	return append(all, more...), err
+	for _, name := range names {
+		one, err := reading.Wanted(t, []string{name})
+		if no := (*measure.NotMeasured)(nil); !errors.As(err, &no) {
+			if err != nil {
+				return nil, nil, err
+			}
+			all = append(all, one...)
+		} else if len(c.Only) > 0 {
+			none = append(none, no)
+		}
+	}
+	return all, none, nil
 }
 
 const perSecond = "lyapunov-per-second"
@@ -130,16 +148,16 @@ func checkWorkers(n int) error {
 	return nil
 }
 
-// take takes the readings in turn. A reading that turns out not to exist is an
-// error where it was named, else it is left out and said.
-func (c *takeAll) take(r *runner, wanted []reading.Reading, speed reading.Speed) (rows []figure.Scalar, left []error, err error) {
+// take takes the readings in turn. One that turns out not to exist withholds no
+// other: it is left out, with the reason.
+func take(r *runner, wanted []reading.Reading, effort float64, speed reading.Speed) (rows []figure.Scalar, left []*measure.NotMeasured, err error) {
 	defer r.close()
-	taker := reading.NewTaker(r.tracer, r.run, c.Effort, r.seed, speed)
+	taker := reading.NewTaker(r.tracer, r.run, effort, r.seed, speed)
 	for _, w := range wanted {
 		r.title = w.Name
 		s, err := taker.Take(w)
-		if no := (*measure.NotMeasured)(nil); errors.As(err, &no) && len(c.Only) == 0 {
-			left = append(left, err)
+		if no := (*measure.NotMeasured)(nil); errors.As(err, &no) {
+			left = append(left, no)
 			continue
 		}
 		if err != nil {

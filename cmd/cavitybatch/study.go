@@ -3,7 +3,6 @@ package main
 import (
 	"bytes"
 	"context"
-	"strconv"
 	"strings"
 
 	"cavitywright/render/export"
@@ -11,7 +10,6 @@ import (
 	"cavitywright/sim/measure"
 	"cavitywright/sim/run"
 	"cavitywright/sim/study"
-	"cavitywright/sim/study/part"
 	"cavitywright/table/tablefile"
 )
 
@@ -36,7 +34,7 @@ type studyRun struct {
 
 // Help explains the numbers above the flags.
 func (*studyRun) Help() string {
-	return "Numbers are called as cavitybatch study FILE --list shows them: eps, or 1.eps of shape 1; 1.x, 1.y, 1.turn, 1.scale; 1.node3.x; coat2.from, coat2.index; bare.index.\n\nThe readings are those of cavitybatch readings."
+	return "Numbers are called as cavitybatch study FILE --list shows them: eps, or 1.eps of shape 1; 1.x, 1.y, 1.turn, 1.scale; 1.node3.x, 1.node3.fillet; coat2.from, coat2.at (its middle, which slides it), coat2.index; bare.index.\n\nThe readings are those of cavitybatch readings."
 }
 
 // partEnding is the ending of the files of parts.
@@ -93,18 +91,8 @@ func (c *studyRun) check() (k, n int, err error) {
 			return 0, 0, err
 		}
 	}
-	k, n = 1, 1
-	if c.Part != "" {
-		a, b, ok := strings.Cut(c.Part, "/")
-		var err1, err2 error
-		k, err1 = strconv.Atoi(a)
-		n, err2 = strconv.Atoi(b)
-		switch {
-		case !ok || err1 != nil || err2 != nil || k < 1 || k > n || n > part.Most:
-			return 0, 0, misuse("the part %q is not understood; write K/N with K from 1 to N, for example 2/16", c.Part)
-		case !strings.HasSuffix(c.Out, partEnding):
-			return 0, 0, misuse("a part is written to a file that ends in %s; name one with -o", partEnding)
-		}
+	if k, n, err = partAsked(c.Part, c.Out); err != nil {
+		return 0, 0, err
 	}
 	switch {
 	case len(c.Vary) == 0 && (c.Sample != 0 || len(c.Readings) > 0 || c.Orbits != 0):

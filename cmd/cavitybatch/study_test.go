@@ -52,7 +52,7 @@ func TestStudyKilled(t *testing.T) {
 		if err := c.Start(); err != nil {
 			t.Fatal(err)
 		}
-		time.Sleep(time.Duration(float64(took) * 0.2 * chance.Float64()))
+		time.Sleep(time.Duration(float64(took) * 0.13 * chance.Float64()))
 		if err := c.Process.Kill(); err == nil {
 			killed++
 		}

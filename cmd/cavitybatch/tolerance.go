@@ -3,19 +3,16 @@ package main
 import (
 	"context"
 	"errors"
-	"fmt"
 	"math"
 	"math/rand/v2"
-	"slices"
 	"strconv"
 	"strings"
 
-	"cavitywright/render/export"
 	"cavitywright/sim"
-	"cavitywright/sim/figure"
 	"cavitywright/sim/measure"
 	"cavitywright/sim/run"
 	"cavitywright/sim/study"
+	"cavitywright/sim/study/part"
 	"cavitywright/sim/study/tolerance"
 	"cavitywright/table"
 )
@@ -32,7 +29,8 @@ type copies struct {
 	Wavelength float64  `default:"0" placeholder:"W" help:"Wavelength outside the body, in the table's unit, by which it is judged where rays hold."`
 	Effort     float64  `default:"0" placeholder:"K" help:"Multiply the number of bounces of each reading; the study's, or 0.1."`
 	JSON       bool     `help:"Write JSON."`
-	Out        string   `short:"o" placeholder:"FILE" help:"Write to a file; its ending says how: .csv the copies, one row each; .png, .svg or .pdf a figure."`
+	Part       string   `placeholder:"K/N" help:"Do part K of N alone, from 1; gather joins the parts."`
+	Out        string   `short:"o" placeholder:"FILE" help:"Write to a file; its ending says how: .csv the copies, one row each; .json the result; .png, .svg or .pdf a figure; .jsonl a part, which a run that was killed goes on with."`
 	Show       string   `placeholder:"NAME" help:"The reading that a figure shows; the first where none is given."`
 	Worst      bool     `help:"The figure: the worst copies drawn over the wall, in place of the distribution."`
 }
@@ -47,37 +45,22 @@ func (c *copies) Run(ctx context.Context, std streams) error {
 	if err := checkWorkers(c.Workers); err != nil {
 		return err
 	}
-	t, err := readTable(c.File, std)
+	k, n, err := partAsked(c.Part, c.Out)
 	if err != nil {
 		return err
 	}
-	if t, err = c.studied(t.Design()); err != nil {
-		return err
-	}
-	plan, err := c.plan(t)
+	tol, err := c.ready(std)
 	if err != nil {
 		return err
 	}
-	tol, err := tolerance.New(t, plan)
+	kit := kitOf(ctx, tol.Base.Design().Study.Seed, c.Workers)
+	if strings.HasSuffix(c.Out, partEnding) {
+		return c.runPart(std, tol, kit, k, n)
+	}
+	shown, format, err := c.asked(tol.Plan)
 	if err != nil {
-		return described(c.Error, err)
+		return err
 	}
-	shown := 0
-	if c.Show != "" {
-		if shown = slices.Index(plan.Readings, c.Show); shown < 0 {
-			return misuse("%s is not taken, so that it cannot be shown; add it to --take", c.Show)
-		}
-	}
-	format := export.CSV
-	if c.Out != "" {
-		if format, err = export.FormatOf(c.Out); err != nil {
-			return &wrongUse{err}
-		}
-		if format == export.JSON {
-			return misuse("JSON goes to standard output with --json, but %s ends in .json", c.Out)
-		}
-	}
-	kit := kitOf(ctx, t.Design().Study.Seed, c.Workers)
 	bar := newTaskBar(std, "copies", tol.Total())
 	r, err := tol.Run(kit, func(int, int, *tolerance.Result) { bar.step() })
 	bar.close()
@@ -87,41 +70,26 @@ func (c *copies) Run(ctx context.Context, std streams) error {
 	return c.report(ctx, std, r, kit, shown, format)
 }
 
-// report writes what was asked for.
-func (c *copies) report(ctx context.Context, std streams, r *tolerance.Result, kit tolerance.Kit, shown int, format export.Format) error {
-	switch {
-	case c.Out == "":
-	case format == export.CSV:
-		if err := writeFile(c.Out, r.CSV(program)); err != nil {
-			return err
-		}
-	default:
-		var f figure.Figure = r.Histogram(shown, program)
-		if c.Worst {
-			drawn, err := r.WorstDrawn(shown, kit, program)
-			if err != nil {
-				return err
-			}
-			f = drawn
-		}
-		if err := c.publish(ctx, r.Base, c.Out, format, f); err != nil {
-			return err
-		}
+// ready is the tolerance asked for, in the study of a table that holds it.
+func (c *copies) ready(std streams) (*tolerance.Tolerance, error) {
+	t, err := readTable(c.File, std)
+	if err != nil {
+		return nil, err
 	}
-	switch {
-	case c.JSON:
-		b, err := r.JSON()
-		if err != nil {
-			return err
-		}
-		_, err = std.out.Write(b)
-		return err
-	case c.Out == "":
-		for _, line := range r.Lines() {
-			fmt.Fprintln(std.out, line)
-		}
+	if t, err = c.studied(t.Design()); err != nil {
+		return nil, err
 	}
-	return nil
+	plan, err := c.plan(t)
+	if err != nil {
+		return nil, err
+	}
+	if _, err := tolerance.New(t, plan); err != nil {
+		return nil, described(c.Error, err)
+	}
+	if t, err = part.Holding(t, plan); err != nil {
+		return nil, err
+	}
+	return tolerance.New(t, plan)
 }
 
 // plan is the study's tolerance, or one that the flags make.

@@ -18,11 +18,11 @@ import (
 type seek struct {
 	leaf
 	Name        string   `placeholder:"NAME" help:"The wish of the study to carry out; without it and --free the only one there is."`
-	Free        []string `placeholder:"DIAL=LO:HI" help:"A number of the table that may be turned, within a range: eps=0.2:0.5, 1.node3.x=1:2."`
+	Free        []string `placeholder:"DIAL=LO:HI" help:"A number of the table that may be turned, within a range: eps=0.2:0.5, 1.node3.x=1:2, coat1.at=0.1:0.9."`
 	Maximise    []string `placeholder:"NAME[*W]" help:"A reading to be made great; several count with their weights W."`
 	Minimise    []string `placeholder:"NAME[*W]" help:"A reading to be made small."`
 	Hold        []string `placeholder:"NAME=V[*W]" help:"A reading to be brought to a value."`
-	Against     []string `placeholder:"NAME" help:"A second wish, for a front between the two: NAME to be made great, -NAME to be made small."`
+	Against     []string `placeholder:"NAME" help:"A second wish, for a front between the two: --against=NAME to be made great, --against=-NAME to be made small."`
 	Bend        string   `default:"any" enum:"any,convex,strict" help:"How the outer wall must bend: any, convex, or strict for strictly convex."`
 	LeastRadius float64  `default:"0" placeholder:"R" help:"No bend may be sharper, and no corner stand."`
 	Area        string   `placeholder:"LO:HI" help:"The range of the area."`

@@ -93,7 +93,7 @@ func randomDeeds(rng *rand.Rand, s window.State, n int) string {
 		switch k := rng.IntN(10); {
 		case k < 3 && len(s.Handles) > 0:
 			h := s.Handles[rng.IntN(len(s.Handles))]
-			return int(h[0]), int(h[1])
+			return min(max(int(h[0]), 0), 1279), min(max(int(h[1]), 0), 799) // a view that is zoomed has some outside
 		case k < 8:
 			if p := s.Panes[names[rng.IntN(3)]]; p[2] > 2 && p[3] > 2 {
 				return p[0] + rng.IntN(p[2]), p[1] + rng.IntN(p[3])
@@ -130,14 +130,31 @@ func randomDeeds(rng *rand.Rand, s window.State, n int) string {
 }
 
 // ours are the stalls in which the window's goroutine was at work for this
-// program, rather than for the toolkit's painting, and had a processor.
+// program, rather than for the toolkit's painting.
 func ours(all []live.Stall) []live.Stall {
 	return slices.DeleteFunc(slices.Clone(all), func(s live.Stall) bool {
 		paints := slices.ContainsFunc(s.Doing, func(f string) bool {
 			return strings.Contains(f, "drawSingleFrame") || strings.Contains(f, "writeState") || strings.Contains(f, "glCanvas).paint")
 		})
-		return paints || len(s.Doing) == 0 || s.OwnMs < float64(live.StallFrom.Milliseconds())
+		// What it waits for is of the program's making if it is a disk; a
+		// processor or another thread is not, on a machine that has more to do.
+		disk := slices.ContainsFunc(s.Doing, func(f string) bool { return strings.HasPrefix(f, "syscall.") || strings.HasPrefix(f, "os.") })
+		limit := float64(live.StallFrom.Milliseconds())
+		return paints || len(s.Doing) == 0 || s.RanMs < limit && !(disk && s.WaitMs-s.QueuedMs >= limit)
 	})
+}
+
+// outline is where a stall was: the innermost functions, and those of this
+// program.
+func outline(doing []string) []string {
+	var short []string
+	for i, f := range doing {
+		own := strings.HasPrefix(f, "window.") || strings.HasPrefix(f, "pane.") || strings.HasPrefix(f, "session.") || strings.HasPrefix(f, "tool.")
+		if i < 3 || own {
+			short = append(short, f)
+		}
+	}
+	return short
 }
 
 // tellStalls prints what was measured.
@@ -149,16 +166,55 @@ func tellStalls(t *testing.T, all []live.Stall) {
 	}
 	t.Logf("%d waits over %s, the longest %.0f ms; %d of them by the program itself", len(all), live.StallFrom, worst, len(mine))
 	for _, s := range mine {
-		t.Logf("%.0f ms (own %.0f): %s", s.WaitMs, s.OwnMs, strings.Join(s.Doing, " < "))
+		t.Logf("%.0f ms (of them at work %.0f): %s", s.WaitMs, s.RanMs, strings.Join(outline(s.Doing), " < "))
 	}
 }
+
+// search opens the list of commands, types, and takes the first that is found;
+// otherwise is typed where text is empty.
+func (d *designer) search(text, otherwise string) {
+	d.t.Helper()
+	if text == "" {
+		text = otherwise
+	}
+	d.do("key", "ctrl+k")
+	d.until("the list of commands", func(s window.State) bool { return s.Asks })
+	d.do("type", "--delay", "30", text)
+	d.do("key", "Return")
+	d.until("the list gone", func(s window.State) bool { return !s.Asks })
+}
+
+// stallTries is how often the session is gone through: a busy machine can only
+// add stalls, so one without any shows that the program has none.
+const stallTries = 3
 
 // TestNoStalls: in a session of dragging, sheets, measuring and exporting
 // nothing of the program holds the window for more than a tenth of a second.
 // Painting is left out: on a screen in memory it is done by the processor, in
-// the toolkit.
+// the toolkit. It measures time, and so runs only where it is asked for:
+//
+//	CAVITYWRIGHT_WINDOW=1 CAVITYWRIGHT_STALLS=1 go test -tags gles,no_emoji -run NoStalls ./cmd/cavitywright
 func TestNoStalls(t *testing.T) {
+	if os.Getenv("CAVITYWRIGHT_STALLS") != "1" {
+		t.Skip("set CAVITYWRIGHT_STALLS=1 to look for stalls")
+	}
 	needDisplay(t)
+	for try := 1; ; try++ {
+		stalls := atWork(t)
+		tellStalls(t, stalls)
+		n := len(ours(stalls))
+		if n == 0 {
+			return
+		}
+		if try == stallTries {
+			t.Fatalf("%d times the program itself held the window for more than %s", n, live.StallFrom)
+		}
+	}
+}
+
+// atWork goes through a session and is what the window's goroutine was late for.
+func atWork(t *testing.T) []live.Stall {
+	t.Helper()
 	home, file := work(t)
 	d := start(t, home, file)
 	s := d.until("handles", func(s window.State) bool { return len(s.Handles) > 0 })
@@ -166,23 +222,28 @@ func TestNoStalls(t *testing.T) {
 	x, y := int(grip[0]), int(grip[1])
 	d.drag(x, y, x+60, y)
 	d.drag(x+60, y, x+20, y)
-	for _, key := range strings.Fields("w r t i q m m m m") {
+	for _, key := range strings.Fields("w r t i q m m m m l l 1 1 h e ctrl+z h") {
 		d.do("key", key)
-		time.Sleep(700 * time.Millisecond)
+		time.Sleep(500 * time.Millisecond)
+	}
+	for _, key := range strings.Fields("ctrl+n a ctrl+e") {
+		d.do("key", key)
+		d.until("the question of "+key, func(s window.State) bool { return s.Asks })
+		d.do("key", "Escape")
+		d.until("the question gone", func(s window.State) bool { return !s.Asks })
+	}
+	for _, sheet := range []string{"Orbits", "Modes", "Outline", "Studies", "Tolerance", "Wish", "Film"} {
+		d.search(map[string]string{"Outline": "Export the wall", "Orbits": "Periodic orbits", "Film": "Film:"}[sheet], sheet)
+		d.until("the sheet "+sheet, func(s window.State) bool { return s.Sheet == sheet })
+		time.Sleep(600 * time.Millisecond)
 	}
 	d.do("key", "r")
 	s = d.until("the readings", func(s window.State) bool { return s.Sheet == "Readings" })
 	d.do("key", "ctrl+s")
 	d.do("key", "ctrl+shift+e")
-	d.do("key", "ctrl+k")
-	d.do("type", "--delay", "40", "portrait")
-	d.do("key", "Escape")
-	d.do("key", "Escape")
 	time.Sleep(2 * time.Second)
 	beats := d.until("the state", func(s window.State) bool { return s.Beats > 0 }).Beats
 	s = d.until("an answer", func(s window.State) bool { return s.Beats > beats+10 })
-	tellStalls(t, s.Stalls)
-	if n := len(ours(s.Stalls)); n > 0 {
-		t.Errorf("%d times the program itself held the window for more than %s", n, live.StallFrom)
-	}
+	d.kill()
+	return s.Stalls
 }

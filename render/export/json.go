@@ -13,7 +13,8 @@ import (
 
 // readings is the form of a JSON file of readings.
 type readings struct {
-	Readings []figure.Scalar `json:"readings"`
+	Readings []figure.Scalar  `json:"readings"`
+	None     []figure.Missing `json:"none,omitempty"`
 }
 
 // writeJSON writes readings with all their digits, and one line break at the
@@ -32,7 +33,7 @@ func writeJSON(w io.Writer, f figure.Figure) error {
 	if rows == nil {
 		rows = []figure.Scalar{}
 	}
-	if err := json.MarshalWrite(w, readings{rows}, jsontext.WithIndent("  ")); err != nil {
+	if err := json.MarshalWrite(w, readings{rows, scalars.None}, jsontext.WithIndent("  ")); err != nil {
 		return fmt.Errorf("write JSON: %w", err)
 	}
 	_, err := io.WriteString(w, "\n")

@@ -89,6 +89,9 @@ func (c *Canvas) Fill(p render.Path, col color.RGBA) {
 func (c *Canvas) paint(r rule, col color.RGBA) {
 	src := newSource(col)
 	c.cover.finish(r, func(y, x int, cover []uint16) {
+		if x >= c.img.Rect.Max.X {
+			return // the sums run past the area by what an edge at its right end adds
+		}
 		row := c.img.Pix[c.img.PixOffset(x, y):c.img.PixOffset(0, y+1)]
 		for i, a := range cover {
 			if a != 0 && 4*i < len(row) {

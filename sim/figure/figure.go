@@ -149,9 +149,17 @@ const (
 	Points             // marks alone, with bars for their errors
 )
 
-// Scalars is a list of readings.
+// Scalars is a list of readings, and of those that were asked for in vain.
 type Scalars struct {
 	Rows []Scalar
+	None []Missing
+}
+
+// Missing is a reading that a table does not have, and why in a sentence
+// without its end.
+type Missing struct {
+	Name string `json:"name"`
+	Why  string `json:"why"`
 }
 
 // Scalar is one reading: a value with its unit, its standard error (0 where it

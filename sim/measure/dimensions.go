@@ -48,8 +48,9 @@ func Dimensioned(t *table.Table) figure.Paths {
 // drawing is a dimensioned drawing as it is made.
 type drawing struct {
 	figure.Paths
-	unit string
-	size float64
+	unit  string
+	size  float64
+	known map[string]bool // lengths that are written already
 }
 
 // length is a length with the unit.
@@ -87,12 +88,13 @@ func (d *drawing) whole() {
 	d.label(at((x0+x1)/2, y0-off), d.length(x1-x0))
 	d.line(figure.Dimension, at(x0-off, y0), at(x0-off, y1))
 	d.label(at(x0-off, (y0+y1)/2), d.length(y1-y0))
+	d.known = map[string]bool{d.length(x1 - x0): true, d.length(y1 - y0): true}
 }
 
 // sides writes the straight sides and the arcs; of several alike the first.
 func (d *drawing) sides(t *table.Table) {
 	pieces := t.Pieces()
-	written := map[string]bool{}
+	written := d.known
 	straight, radii := 0, 0
 	for i := 0; i < len(pieces); {
 		p := &pieces[i]

@@ -2,6 +2,7 @@ package measure
 
 import (
 	"fmt"
+	"math"
 
 	"cavitywright/sim/figure"
 	"cavitywright/table"
@@ -129,20 +130,22 @@ func HandoverSentence(t *table.Table, a outline.Account, bias float64) string {
 }
 
 // HandoverDefaults are the options of a handover with what is 0 filled in: a
-// chord error of 1e-5 of the table's size, of a drawing 1e-9; a grid of 1 nm.
+// grid of 1 nm, and a chord error of 1e-4 of the table's size but not below the
+// grid, or of a drawing, which is to be read again, 1e-9 of the size.
 func HandoverDefaults(t *table.Table, h Handover) outline.Options {
 	o := h.Options
-	if o.ChordError == 0 {
-		o.ChordError = usualError * plane.Diagonal(t.Bounds())
-		if h.For == Drawing {
-			o.ChordError = fineError * plane.Diagonal(t.Bounds())
-		}
-	}
 	if o.Grid == 0 {
 		o.Grid = 1e-9 / t.Design().Unit.Metres()
+	}
+	if o.ChordError == 0 {
+		size := plane.Diagonal(t.Bounds())
+		o.ChordError = math.Max(usualError*size, o.Grid)
+		if h.For == Drawing {
+			o.ChordError = fineError * size
+		}
 	}
 	return o
 }
 
 // usualError and fineError are chord errors in sizes of the table.
-const usualError, fineError = 1e-5, 1e-9
+const usualError, fineError = 1e-4, 1e-9

@@ -1,6 +1,7 @@
 package measure
 
 import (
+	"fmt"
 	"math"
 
 	"cavitywright/sim/figure"
@@ -109,6 +110,19 @@ func (c Section) addCoat(f *figure.Dots, law wall.Law, s0, s1 float64) {
 	}
 	for _, p := range []float64{-d.Critical(), d.Critical()} {
 		_, y := c.At(0, p)
-		f.Y.Marks = append(f.Y.Marks, figure.Mark{At: y, Kind: figure.Critical, From: x0, To: x1})
+		f.Y.Marks = append(f.Y.Marks, figure.Mark{At: y, Kind: figure.Critical, Name: criticalName(d, y), From: x0, To: x1})
 	}
+}
+
+// criticalName is what a critical line is called: p = 1/n, of the sign that is
+// shown.
+func criticalName(d wall.Dielectric, shown float64) string {
+	sign := ""
+	if shown < 0 {
+		sign = "−"
+	}
+	if d.Outside == 1 {
+		return "p = " + sign + "1/n"
+	}
+	return fmt.Sprintf("p = %s%.4g", sign, d.Critical())
 }

@@ -89,7 +89,7 @@ func (st *Study) convexity(run []float64, kit Kit) (all []Mark, err error) {
 			}
 		}
 		t, err := st.Table([]float64{v})
-		return err == nil && survey.Of(t, 0).Convexity.Convex, nil
+		return err == nil && survey.ConvexityOf(t).Convex, nil
 	}
 	within := convexTo * (run[len(run)-1] - run[0])
 	last, err := convex(run[0])

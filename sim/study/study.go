@@ -233,7 +233,7 @@ func Label(d table.Design, x dial.Dial) string {
 }
 
 // plainNames are words for names of coats that read badly alone.
-var plainNames = map[string]string{"te": "polarisation", "from": "start", "to": "end", "outside": "index outside"}
+var plainNames = map[string]string{"te": "polarisation", "from": "start", "to": "end", "at": "middle", "outside": "index outside"}
 
 // Kit is what a study is carried out with; its rows do not depend on it.
 type Kit struct {

@@ -275,6 +275,10 @@ func TestFigures(t *testing.T) {
 	if p := r.Page("a program").(figure.Sheet); len(p.Rows) != 1 || len(p.Rows[0].Blocks) != 2 || !strings.Contains(strings.Join(p.Head, " "), "the same seed 1 at each") {
 		t.Errorf("the page is %+v", p)
 	}
+	many := carried(t, base, sweep(1, []string{"area"}, a, b, table.Turn{Dial: "1.x", From: 0, To: 1, Points: 3}), 1).Figure("area", "a program").(figure.Series)
+	if len(many.Curves) != 1 || many.Curves[0].Form != figure.Points || len(many.Curves[0].X) != 72 {
+		t.Errorf("72 points over three dials are drawn as %d curves", len(many.Curves))
+	}
 	s := sweep(1, []string{"area"}, a, b)
 	s.Sample = 20
 	if p := carried(t, base, s, 1).Page("a program").(figure.Sheet); len(p.Rows[0].Blocks) != 2 {

@@ -115,6 +115,12 @@ func cuts(s *Span, lo, hi float64, bends []float64) []float64 {
 // turns less than turnSamples/2 times.
 const turnSamples = 16
 
+// finestCut is the least width of a piece in the parameter. Nearer to a place of
+// no speed than the root of cuspSpeed2 the tangent is taken from the second
+// derivative, whichever way, and looks as if it turned right about: with finer
+// cuts a handle of no length at an end would be cut without end.
+const finestCut = 4e-9
+
 // cutTurn appends to out the cuts strictly inside (lo, hi), between which the
 // curve has no bend.
 func cutTurn(s *Span, lo, hi float64, out []float64) []float64 {
@@ -138,8 +144,8 @@ func cutTurn(s *Span, lo, hi float64, out []float64) []float64 {
 			f := (turn*j/n - at[k-1]) / (at[k] - at[k-1])
 			t := lo + (hi-lo)*(float64(k-1)+f)/turnSamples
 			j++
-			if t <= edge || t >= hi {
-				continue // a turn within the rounding of the parameter
+			if t-edge < finestCut || hi-t < finestCut {
+				continue // a turn that the parameter does not resolve
 			}
 			out = cutTurn(s, edge, t, out)
 			out = append(out, t)

@@ -8,7 +8,9 @@
 //	eps                 the parameter of the only item that has one of this name
 //	1.eps, 1.x          of item 1: a parameter; x, y (table's unit), turn (radians), scale
 //	1.node3.x           of item 1, a free wall: a coordinate of its node 3
+//	1.node3.fillet      of its node 3, a corner: the radius that rounds it
 //	coat2.from          of coat 2: from, to (fractions of its side), or a parameter of its law
+//	coat2.at            of coat 2: its middle, which slides it at the width that it has
 //	bare.index          a parameter of the law of the bare wall
 //
 // Items, nodes and coats are counted from 1, as a person counts them.
@@ -25,8 +27,6 @@ import (
 	"cavitywright/table/param"
 	"cavitywright/table/shape"
 	"cavitywright/table/wall"
-
-	"gonum.org/v1/gonum/spatial/r2"
 )
 
 // Part is what of a design a dial belongs to.
@@ -70,7 +70,7 @@ func (d Dial) String() string {
 
 var (
 	itemText = regexp.MustCompile(`^(\d{1,6})\.([a-z0-9-]+)$`)
-	nodeText = regexp.MustCompile(`^(\d{1,6})\.node(\d{1,6})\.([xy])$`)
+	nodeText = regexp.MustCompile(`^(\d{1,6})\.node(\d{1,6})\.(x|y|fillet)$`)
 	coatText = regexp.MustCompile(`^coat(\d{1,6})\.([a-z0-9-]+)$`)
 	bareText = regexp.MustCompile(`^bare\.([a-z0-9-]+)$`)
 )
@@ -159,7 +159,11 @@ var place = []param.Spec{
 var span = []param.Spec{
 	{Name: "from", Lo: 0, Hi: 1, Description: "where the coat begins, as a fraction of its side"},
 	{Name: "to", Lo: 0, Hi: 1, Default: 1, Description: "where the coat ends, as a fraction of its side"},
+	{Name: "at", Lo: 0, Hi: 1, Default: 0.5, Description: "where the middle of the coat lies, as a fraction of its side; its width stays"},
 }
+
+// rounding is the name of what rounds a corner.
+var rounding = param.Spec{Name: "fillet", Unit: param.Length, Lo: 0, Hi: 1e6, Description: "radius of the arc that rounds the corner, 0 for none"}
 
 // All are the dials of a design, in order.
 func All(d table.Design) []Dial {
@@ -171,8 +175,11 @@ func All(d table.Design) []Dial {
 				all = append(all, Dial{Part: Item, Of: i, Name: p.Name})
 			}
 		case shape.Freeform:
-			for k := range s.Nodes() {
+			for k, n := range s.Nodes() {
 				all = append(all, Dial{Node, i, k, "x"}, Dial{Node, i, k, "y"})
+				if n.Joint == shape.Corner {
+					all = append(all, Dial{Node, i, k, rounding.Name})
+				}
 			}
 		}
 		for _, p := range place {
@@ -227,134 +234,4 @@ func (d Dial) Turned(of table.Design, v float64) (table.Design, error) {
 		return table.Design{}, err
 	}
 	return set(v)
-}
-
-// seek finds the number: its description, its value, and how it is set.
-func (d Dial) seek(of table.Design) (s param.Spec, value float64, set func(float64) (table.Design, error), err error) {
-	switch d.Part {
-	case Item:
-		return d.seekItem(of)
-	case Node:
-		return d.seekNode(of)
-	case Coat:
-		return d.seekCoat(of)
-	}
-	s, value, remake, ok := seekLaw(of.Bare, d.Name)
-	if !ok {
-		return s, 0, nil, &Unknown{d.String(), "the bare wall's law has no such parameter"}
-	}
-	return s, value, func(v float64) (table.Design, error) {
-		of.Bare, err = remake(v)
-		return of, err
-	}, nil
-}
-
-func (d Dial) seekItem(of table.Design) (s param.Spec, value float64, set func(float64) (table.Design, error), err error) {
-	if d.Of < 0 || d.Of >= len(of.Items) {
-		return s, 0, nil, &Unknown{d.String(), fmt.Sprintf("the table has %d items", len(of.Items))}
-	}
-	changed := func(change func(*table.Item) error) (table.Design, error) {
-		items := append([]table.Item(nil), of.Items...)
-		if err := change(&items[d.Of]); err != nil {
-			return table.Design{}, err
-		}
-		of.Items = items
-		return of, nil
-	}
-	it := of.Items[d.Of]
-	if i, ok := d.param(of); ok {
-		f := it.Shape.(shape.Figure)
-		return f.Family().Specs[i], f.Values()[i], func(v float64) (table.Design, error) {
-			return changed(func(it *table.Item) error {
-				g, err := f.With(i, v)
-				it.Shape = g
-				return err
-			})
-		}, nil
-	}
-	for i, s := range place {
-		if s.Name == d.Name {
-			at := func(it *table.Item) *float64 {
-				return []*float64{&it.Place.Shift.X, &it.Place.Shift.Y, &it.Place.Angle, &it.Place.Scale}[i]
-			}
-			return s, *at(&it), func(v float64) (table.Design, error) {
-				return changed(func(it *table.Item) error { *at(it) = v; return nil })
-			}, nil
-		}
-	}
-	return s, 0, nil, &Unknown{d.String(), fmt.Sprintf("the %s has no such parameter", it.Shape.Kind())}
-}
-
-func (d Dial) seekNode(of table.Design) (s param.Spec, value float64, set func(float64) (table.Design, error), err error) {
-	if d.Of < 0 || d.Of >= len(of.Items) {
-		return s, 0, nil, &Unknown{d.String(), fmt.Sprintf("the table has %d items", len(of.Items))}
-	}
-	f, is := of.Items[d.Of].Shape.(shape.Freeform)
-	if !is || d.Node < 0 || d.Node >= len(f.Nodes()) {
-		return s, 0, nil, &Unknown{d.String(), "the item has no such node"}
-	}
-	s = place[0]
-	at := of.Items[d.Of].Place.Apply(f.Nodes()[d.Node].At)
-	value = at.X
-	if d.Name == "y" {
-		s, value = place[1], at.Y
-	}
-	return s, value, func(v float64) (table.Design, error) {
-		to := r2.Vec{X: v, Y: at.Y}
-		if d.Name == "y" {
-			to = r2.Vec{X: at.X, Y: v}
-		}
-		items := append([]table.Item(nil), of.Items...)
-		it := &items[d.Of]
-		it.Shape = f.MoveNode(d.Node, it.Place.Back(to))
-		of.Items = items
-		return of, nil
-	}, nil
-}
-
-func (d Dial) seekCoat(of table.Design) (s param.Spec, value float64, set func(float64) (table.Design, error), err error) {
-	if d.Of < 0 || d.Of >= len(of.Coats) {
-		return s, 0, nil, &Unknown{d.String(), fmt.Sprintf("the table has %d coats", len(of.Coats))}
-	}
-	changed := func(change func(*table.Coat) error) (table.Design, error) {
-		coats := append([]table.Coat(nil), of.Coats...)
-		if err := change(&coats[d.Of]); err != nil {
-			return table.Design{}, err
-		}
-		of.Coats = coats
-		return of, nil
-	}
-	c := of.Coats[d.Of]
-	for i, s := range span {
-		if s.Name == d.Name {
-			at := func(c *table.Coat) *float64 { return []*float64{&c.From, &c.To}[i] }
-			return s, *at(&c), func(v float64) (table.Design, error) {
-				return changed(func(c *table.Coat) error { *at(c) = v; return nil })
-			}, nil
-		}
-	}
-	s, value, remake, ok := seekLaw(c.Law, d.Name)
-	if !ok {
-		return s, 0, nil, &Unknown{d.String(), "the coat's law has no such parameter"}
-	}
-	return s, value, func(v float64) (table.Design, error) {
-		return changed(func(c *table.Coat) (err error) {
-			c.Law, err = remake(v)
-			return err
-		})
-	}, nil
-}
-
-// seekLaw finds a parameter of a law.
-func seekLaw(l wall.Law, name string) (s param.Spec, value float64, remake func(float64) (wall.Law, error), ok bool) {
-	for i, s := range specs(l) {
-		if s.Name == name {
-			return s, l.Values()[i], func(v float64) (wall.Law, error) {
-				values := append(param.Values(nil), l.Values()...)
-				values[i] = v
-				return wall.Make(l.Name(), values)
-			}, true
-		}
-	}
-	return s, 0, nil, false
 }

@@ -111,22 +111,6 @@ func (s stretch) part(lo, hi float64) stretch {
 	return s
 }
 
-// turn is the angle by which the tangent turns along the stretch.
-func (s *stretch) turn() float64 {
-	switch s.kind {
-	case Line:
-		return 0
-	case Arc:
-		return s.sweep
-	}
-	if s.span.Kind == curve.Oval { // may turn by more than half a turn
-		m := s.tangent(0.5)
-		q, r := s.tangent(0.25), s.tangent(0.75)
-		return plane.Angle(s.tangent(0), q) + plane.Angle(q, m) + plane.Angle(m, r) + plane.Angle(r, s.tangent(1))
-	}
-	return plane.Angle(s.tangent(0), s.tangent(1))
-}
-
 // gauss is the number of nodes of the quadrature of a stretch.
 const gauss = 48
 

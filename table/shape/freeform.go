@@ -84,19 +84,23 @@ const noArea = 1e-12
 func (n nodes) curves() []curve.Curve {
 	c := make([]curve.Curve, len(n))
 	for i := range n {
-		a, b := n.at(i), n.at(i+1)
-		switch a.Span {
-		case Bowed:
-			c[i] = curve.ArcThrough(a.At, b.At, a.Bulge)
-		case Elliptic:
-			c[i] = ovalThrough(a, b.At)
-		case Curved:
-			c[i] = curve.NewCubic(n.controls(i))
-		default:
-			c[i] = curve.NewLine(a.At, b.At)
-		}
+		c[i] = n.curve(i)
 	}
 	return c
+}
+
+// curve is the span from node i.
+func (n nodes) curve(i int) curve.Curve {
+	switch a, b := n.at(i), n.at(i+1); a.Span {
+	case Bowed:
+		return curve.ArcThrough(a.At, b.At, a.Bulge)
+	case Elliptic:
+		return ovalThrough(a, b.At)
+	case Curved:
+		return curve.NewCubic(n.controls(i))
+	default:
+		return curve.NewLine(a.At, b.At)
+	}
 }
 
 // controls are the control points of the Curved span i.

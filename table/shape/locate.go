@@ -51,7 +51,7 @@ func (f Freeform) SpanPath(i, count int) []r2.Vec {
 	if f.nodes.fault() != nil {
 		return []r2.Vec{f.nodes.at(i).At, f.nodes.at(i + 1).At}
 	}
-	c := f.nodes.curves()[f.nodes.wrap(i)]
+	c := f.nodes.curve(f.nodes.wrap(i))
 	out := make([]r2.Vec, count+1)
 	for k := range out {
 		out[k] = c.At(c.Length() * float64(k) / float64(count)).Point

@@ -99,7 +99,7 @@ func (b *Bend) extremes(t *table.Table, i int) {
 	if p.Kind == curve.Segment {
 		return
 	}
-	x := sharpest(p)
+	x := p.Sharpest()
 	kappa := curvature(p, x)
 	e := &b.Focusing
 	if p.Turn < 0 {
@@ -108,35 +108,4 @@ func (b *Bend) extremes(t *table.Table, i int) {
 	if radius := 1 / math.Abs(kappa); !e.Known() || radius < e.Radius*(1-1e-9) {
 		*e = Extreme{radius, placeAt(t, i, x)}
 	}
-}
-
-// sharpest is the length from the start of a piece at which it curves most: the
-// greatest of a set of samples, refined by golden sections, to half of the
-// digits in place and so all of them in curvature.
-func sharpest(p *table.Piece) float64 {
-	if p.Kind == curve.Circle {
-		return 0
-	}
-	f := func(x float64) float64 { return math.Abs(curvature(p, x)) }
-	step := p.Length / runSamples
-	best := 0.0
-	for k := range runSamples + 1 {
-		if x := p.Length * float64(k) / runSamples; f(x) > f(best)*(1+1e-12) {
-			best = x
-		}
-	}
-	const section = 0.6180339887498949
-	lo, hi := math.Max(0, best-step), math.Min(p.Length, best+step)
-	for hi-lo > 1e-9*p.Length {
-		a, c := hi-section*(hi-lo), lo+section*(hi-lo)
-		if f(a) < f(c) {
-			lo = a
-		} else {
-			hi = c
-		}
-	}
-	if mid := 0.5 * (lo + hi); f(mid) > f(best)*(1+1e-12) {
-		return mid
-	}
-	return best
 }

@@ -157,6 +157,7 @@ func drawDesign(t *rapid.T) table.Design {
 		d.Study.Launches = append(d.Study.Launches, drawLaunch(t))
 	}
 	d.Study.Sweeps = drawSweeps(t)
+	d.Study.Tolerances, d.Study.Wishes = drawTolerances(t), drawWishes(t)
 	return d
 }
 

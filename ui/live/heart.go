@@ -13,11 +13,12 @@ import (
 // to it.
 type Stall struct {
 	WaitMs float64 // from the post to the answer, milliseconds
-	// OwnMs is the part of it in which the window's thread was not merely
-	// waiting for a processor that other programs had; the same as WaitMs where
-	// the system does not tell.
-	OwnMs float64
-	Doing []string // the functions it was in after StallFrom, innermost first
+	// RanMs is how long the window's thread computed in it, QueuedMs how long it
+	// merely waited for a processor that others had; the rest it waited for a
+	// disk, the screen or another thread. RanMs is WaitMs where the system does
+	// not tell.
+	RanMs, QueuedMs float64
+	Doing           []string // the functions it was in after StallFrom, innermost first
 }
 
 const (
@@ -26,7 +27,7 @@ const (
 	// beatEvery is the time from an answer to the next post.
 	beatEvery = 20 * time.Millisecond
 	// doingDepth is the number of functions of a stall that are kept.
-	doingDepth = 24
+	doingDepth = 96
 )
 
 // Heart posts to the window's goroutine again and again and measures how long
@@ -56,14 +57,17 @@ func (h *Heart) beat(post func(func()), told func(time.Duration, *Stall)) {
 	for {
 		// Each beat has its own answer, so that one that never comes is nobody's.
 		answered := make(chan struct{})
-		begun, queued := time.Now(), queuedTime()
+		begun, before := time.Now(), threadTimes()
 		looked := make(chan []string, 1)
 		post(func() {
 			wait := time.Since(begun)
 			close(answered)
 			var s *Stall
 			if wait >= StallFrom {
-				s = &Stall{WaitMs: ms(wait), OwnMs: ms(wait - (queuedTime() - queued))}
+				s = &Stall{WaitMs: ms(wait), RanMs: ms(wait)}
+				if now := threadTimes(); now.known && before.known {
+					s.RanMs, s.QueuedMs = ms(now.ran-before.ran), ms(now.queued-before.queued)
+				}
 				select {
 				case s.Doing = <-looked:
 				case <-time.After(time.Second):
@@ -98,19 +102,24 @@ func (h *Heart) beat(post func(func()), told func(time.Duration, *Stall)) {
 
 func ms(d time.Duration) float64 { return float64(d.Microseconds()) / 1000 }
 
-// queuedTime is how long the first thread of the program, which is the
-// window's, has waited for a processor in all (Linux, proc(5), schedstat,
-// second number); 0 where the system does not tell.
-func queuedTime() time.Duration {
+// times are how long a thread has run, and waited for a processor, in all.
+type times struct {
+	ran, queued time.Duration
+	known       bool
+}
+
+// threadTimes are those of the first thread of the program, which is the
+// window's (Linux, proc(5), schedstat).
+func threadTimes() times {
 	b, err := os.ReadFile(fmt.Sprintf("/proc/self/task/%d/schedstat", os.Getpid()))
 	if err != nil {
-		return 0
+		return times{}
 	}
-	var ran, waited int64
-	if n, _ := fmt.Sscan(string(b), &ran, &waited); n < 2 {
-		return 0
+	var ran, queued int64
+	if n, _ := fmt.Sscan(string(b), &ran, &queued); n < 2 {
+		return times{}
 	}
-	return time.Duration(waited)
+	return times{time.Duration(ran), time.Duration(queued), true}
 }
 
 // windowDoing are the functions that the first goroutine is in, which is the

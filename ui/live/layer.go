@@ -10,6 +10,7 @@ import (
 
 	"cavitywright/render"
 	"cavitywright/sim"
+	"cavitywright/sim/figure"
 	"cavitywright/sim/measure"
 	"cavitywright/sim/run"
 )
@@ -22,6 +23,7 @@ type layer struct {
 	mosaic  *measure.Mosaic // nil where nothing is mapped
 	why     string          // why there is no map, where one was asked for
 	picture *image.RGBA
+	held    figure.Axis // of the colours; it holds still while the map is refined
 }
 
 const (
@@ -85,13 +87,44 @@ func (y *layer) fill(tr *sim.Tracer, seed uint64) bool {
 	return true
 }
 
+// widening is by how much the colours' range goes beyond a value that left it,
+// in ranges: the map is not coloured anew for each value that is a little
+// greater.
+const widening = 0.25
+
+// axis is the axis of the colours. Its range is that of the first pass and is
+// only widened, in steps.
+func (y *layer) axis() figure.Axis {
+	a := y.mosaic.Axis()
+	if !(y.held.Lo < y.held.Hi) {
+		y.held = a
+		return a
+	}
+	to, back := func(v float64) float64 { return v }, func(v float64) float64 { return v }
+	if a.Scale == figure.Log {
+		to, back = math.Log, math.Exp
+	}
+	step := widening * (to(y.held.Hi) - to(y.held.Lo))
+	if a.Hi > y.held.Hi {
+		y.held.Hi = back(to(a.Hi) + step)
+	}
+	if a.Lo < y.held.Lo {
+		least := back(to(a.Lo) - step)
+		if a.Lo >= 0 {
+			least = math.Max(least, 0)
+		}
+		y.held.Lo = least
+	}
+	return y.held
+}
+
 // paint is the map as a picture of w by h pixels, nil where there is none.
 func (y *layer) paint(w, h int, look render.Look) *image.RGBA {
 	if y.mosaic == nil {
 		return nil
 	}
 	y.picture = sized(y.picture, image.Pt(w, h))
-	ramp, at := render.NewRamp(look), render.ValueScale(y.mosaic.Axis())
+	ramp, at := render.NewRamp(look), render.ValueScale(y.axis())
 	line := make([]color.RGBA, y.mosaic.Columns)
 	before := -1
 	for py := range h {
@@ -121,13 +154,12 @@ func (y *layer) paint(w, h int, look render.Look) *image.RGBA {
 func (y *layer) scale(c render.Canvas, p render.Plot, look render.Look) {
 	switch {
 	case y.why != "":
-		c.Text(render.Text{At: p.Frame.Center(), Size: look.Small, H: render.Center, V: render.Middle, Color: look.Ink,
-			String: "No map here: " + y.why + "."})
+		render.DrawNote(c, "No map here: "+y.why+".", p.Frame, look)
 	case y.mosaic != nil:
 		remark := ""
 		if y.filling() {
 			remark = fmt.Sprintf("%.0f %%", math.Floor(100*y.mosaic.Done()))
 		}
-		render.DrawScale(c, y.mosaic.Axis(), remark, p.Frame, look)
+		render.DrawScale(c, y.axis(), remark, p.Frame, look)
 	}
 }

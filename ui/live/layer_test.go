@@ -152,3 +152,32 @@ func TestLayerStops(t *testing.T) {
 	}
 	p.draw(nil)
 }
+
+// TestLayerColoursHoldStill: the range of the colours is that of the first pass
+// and is widened a few times at most until the map is whole; it holds all that
+// is known.
+func TestLayerColoursHoldStill(t *testing.T) {
+	p, picture := mapping(t, opened(t, 1), session.Stretching)
+	p.fill(true, Fills)
+	p.fill(false, Fills)
+	picture()
+	changes, before := 0, p.layer.axis()
+	for p.layer.filling() {
+		if !p.fill(false, Fills) {
+			t.Fatalf("the map stands at %g", p.layer.done())
+		}
+		picture()
+		now, known := p.layer.axis(), p.layer.mosaic.Axis()
+		if now.Lo > before.Lo || now.Hi < before.Hi || now.Lo > known.Lo || now.Hi < known.Hi {
+			t.Fatalf("the range goes from %g to %g, then from %g to %g; known is %g to %g", before.Lo, before.Hi, now.Lo, now.Hi, known.Lo, known.Hi)
+		}
+		if now.Lo != before.Lo || now.Hi != before.Hi {
+			changes++
+		}
+		before = now
+	}
+	t.Logf("widened %d times", changes)
+	if changes > 4 {
+		t.Errorf("the colours changed %d times", changes)
+	}
+}

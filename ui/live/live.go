@@ -30,6 +30,8 @@ type Request struct {
 	Portrait image.Point // size of the portrait's picture in pixels
 	Rays     image.Point // size of the rays' picture in pixels
 	RaysView render.View // one of no Scale fits the table
+
+	Reference *table.Table // whose portrait lies faint under this one's; nil for none
 }
 
 // Status is what the status line says of the work.

@@ -29,6 +29,7 @@ type portrait struct {
 	density pixel.Density
 	dots    *image.RGBA
 	layer   layer
+	ghost   ghost
 
 	next    measure.Portrait // what the next round runs
 	each    int              // bounces an orbit has so far
@@ -66,6 +67,10 @@ func (p *portrait) show(r *Request) {
 			p.layer.begin(r, p.tracer, w, h)
 		}()
 	}
+	defer func() {
+		w, h := frameSize(p.plot)
+		p.ghost.show(r, w, h)
+	}()
 	if same && reflect.DeepEqual(old.Look, r.Look) {
 		return
 	}
@@ -121,7 +126,7 @@ func frameSize(p render.Plot) (w, h int) {
 
 // filling reports whether there is more to fill.
 func (p *portrait) filling(hold Filling) bool {
-	return p.req != nil && hold == Fills && (p.dotting() || p.layer.filling())
+	return p.req != nil && hold == Fills && (p.dotting() || p.layer.filling() || p.ghost.filling())
 }
 
 // dotting reports whether orbits are to be followed further.
@@ -135,6 +140,7 @@ func (p *portrait) fill(fresh bool, hold Filling) bool {
 	if p.req == nil || fresh || hold != Fills {
 		return dotted // the first frame after a change has no map yet
 	}
+	dotted = p.ghost.fill(p.plot) || dotted
 	return p.layer.fill(p.tracer, p.req.Table.Design().Study.Seed) || dotted
 }
 
@@ -204,6 +210,7 @@ func (p *portrait) draw(img *image.RGBA) *image.RGBA {
 		draw.Draw(img, frame, under, image.Point{}, draw.Src)
 		look.Sea = color.RGBA{} // the map says more of it than its dots, which would hide it
 	}
+	p.ghost.draw(img, frame, p.req.Look)
 	p.density.Shade(p.dots, look)
 	draw.Draw(img, frame, p.dots, image.Point{}, draw.Over)
 	p.canvas.Reset(img)

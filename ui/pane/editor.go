@@ -33,6 +33,7 @@ type Editor struct {
 	outline   []figure.Line
 	of        *table.Table // whose outline it is, drawn at scale
 	scale     float64
+	ghost     ghost
 }
 
 // NewEditor is the editor's pane on a desk.
@@ -209,6 +210,7 @@ func (e *Editor) Redraw() {
 	}
 	f := figure.Paths{Unit: t.Design().Unit.String(), Lines: e.outline}
 	e.drawGrid(v, look)
+	e.drawGhost(v, look)
 	render.DrawPaths(e.canvas, f, v, look)
 	e.drawOrigin(t, v, look)
 	e.drawLegend(v, look)

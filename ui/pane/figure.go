@@ -2,6 +2,7 @@ package pane
 
 import (
 	"image"
+	"reflect"
 
 	"cavitywright/render"
 	"cavitywright/render/pixel"
@@ -17,6 +18,7 @@ type Figure struct {
 	desk    *Desk
 	shown   figure.Figure // nil for none
 	picture *image.RGBA
+	look    render.Look // that the picture is drawn in
 	// Picked, if set, is told the place of a press in the figure's own
 	// coordinates, and Pointed the place that the pointer is over.
 	Picked, Pointed func(x, y float64)
@@ -42,8 +44,12 @@ func (f *Figure) Set(fig figure.Figure) {
 	f.Show()
 }
 
-// Redraw draws the figure anew, in another look.
-func (f *Figure) Redraw() { f.Set(f.shown) }
+// Redraw draws the figure anew where the look or the size is another one.
+func (f *Figure) Redraw() {
+	if f.picture == nil || f.picture.Rect.Size() != f.Pixels() || !reflect.DeepEqual(f.look, f.desk.Look) {
+		f.Set(f.shown)
+	}
+}
 
 // draw paints the figure at the pane's size.
 func (f *Figure) draw() {
@@ -57,7 +63,7 @@ func (f *Figure) draw() {
 	if f.shown != nil {
 		render.Draw(c, f.shown, f.box(), f.desk.Look)
 	}
-	f.picture = img
+	f.picture, f.look = img, f.desk.Look
 }
 
 func (f *Figure) box() render.Box {

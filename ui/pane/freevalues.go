@@ -302,7 +302,7 @@ func (v *Values) freeHead(f shape.Freeform) fyne.CanvasObject {
 		v.Refresh()
 	}
 	if h < 0 || h >= len(f.Handles()) {
-		return container.NewHBox(v.name, widget.NewLabel("keeps"), v.symmetries(f),
+		return container.New(&flow{}, v.name, container.NewHBox(widget.NewLabel("keeps"), v.symmetries(f)),
 			widget.NewLabel("Click a node to change it."))
 	}
 	node := f.Handles()[h].Of
@@ -321,7 +321,7 @@ func (v *Values) freeHead(f shape.Freeform) fyne.CanvasObject {
 	span.SetSelectedIndex(int(n.Span))
 	span.OnChanged = func(string) { reshape(f.SetSpan(node, shape.SpanKind(span.SelectedIndex())), "change a span") }
 	v.name.SetText(f.Handles()[h].Name)
-	return container.NewHBox(v.name, joint, widget.NewLabel("joint"), span, widget.NewLabel("span"),
+	return container.New(&flow{}, v.name, container.NewHBox(widget.NewLabel("joint"), joint), container.NewHBox(widget.NewLabel("span"), span),
 		widget.NewButton("Split span", func() { reshape(f.InsertNode(node, 0.5), "split a span") }),
 		widget.NewButton("Merge spans", func() { reshape(f.DeleteNode(node), "merge two spans") }))
 }

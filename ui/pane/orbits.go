@@ -64,21 +64,25 @@ func (o *Orbits) Redraw() {
 	o.lines.refresh(fits && len(o.chosen) > 0)
 }
 
-// chosenSize is how much larger the marks of the chosen orbit are.
-const chosenSize = 1.5
+// chosenSize and otherSize are by how much the marks of the chosen orbit are
+// larger and those of the others smaller.
+const chosenSize, otherSize = 1.5, 0.85
 
 func (o *Orbits) paintMarks(c *pixel.Canvas) {
 	t, look := o.desk.Session.Table(), o.desk.Look
 	plot := o.portrait.plot()
-	render.DrawMarks(c, figure.Dots{Spots: orbit.Spots(t, o.all, -1)}, plot, look)
+	small := look
+	small.Paper, small.Sea = color.RGBA{}, look.Orbit(otherHue) // without an edge, which would cover the portrait
+	small.Tick *= otherSize
+	render.DrawMarks(c, figure.Dots{Spots: orbit.Spots(t, o.all, -1)}, plot, small)
 	look.Sea = look.Orbit(chosenHue)
 	look.Tick *= chosenSize
 	look.Hair *= chosenSize
 	render.DrawMarks(c, figure.Dots{Spots: orbit.Spots(t, o.chosen, -1)}, plot, look)
 }
 
-// chosenHue is the colour of the chosen orbit.
-const chosenHue = 1
+// chosenHue and otherHue are the colours of the chosen orbit and of the others.
+const chosenHue, otherHue = 1, 0
 
 func (o *Orbits) paintLines(c *pixel.Canvas) {
 	look := o.desk.Look

@@ -20,6 +20,7 @@ type row struct {
 	entry  *number
 	slider *widget.Slider
 	value  float64
+	unit   table.Unit // that the text is in
 	set    func(float64) edit.Command
 	quiet  bool // the slider is being set by the program
 }
@@ -27,11 +28,11 @@ type row struct {
 // bring shows the value x. The slider's range follows the value, but never
 // under the hand.
 func (r *row) bring(x float64, unit table.Unit, size float64, busy bool) {
-	if x == r.value {
+	if x == r.value && unit == r.unit {
 		return
 	}
 	first := math.IsNaN(r.value)
-	r.value = x
+	r.value, r.unit = x, unit
 	r.quiet = true
 	if !busy || first {
 		r.slider.Min, r.slider.Max = r.around(x, size)

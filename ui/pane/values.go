@@ -40,7 +40,7 @@ type selected struct {
 
 // NewValues is the strip on a desk.
 func NewValues(d *Desk) *Values {
-	v := &Values{desk: d, Box: container.NewVBox(), name: widget.NewLabel("")}
+	v := &Values{desk: d, Box: container.New(tower{}), name: widget.NewLabel("")}
 	v.name.TextStyle.Bold = true
 	v.View = container.NewVScroll(v.Box)
 	v.View.SetMinSize(fyne.NewSize(0, stripHeight))
@@ -128,7 +128,7 @@ func (v *Values) build() {
 		about.Truncation = fyne.TextTruncateEllipsis
 		v.Box.Add(container.NewBorder(nil, nil, head, v.freeing(), about))
 	} else {
-		v.Box.Add(container.NewHScroll(v.freeHead(it.Shape.(shape.Freeform))))
+		v.Box.Add(v.freeHead(it.Shape.(shape.Freeform)))
 	}
 	v.Box.Add(grid)
 }

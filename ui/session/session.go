@@ -25,11 +25,13 @@ type Session struct {
 	Editor    render.View  // what the editor shows; one of no Scale fits the table
 	Section   table.Region // what the portrait shows
 	Settings  Settings
-	Refusal   error // why the last command was refused; nil after one that was not
+	Reference *table.Table // kept to compare with; nil for none
+	Refusal   error        // why the last command was refused; nil after one that was not
 
-	revision uint64
-	gesture  int // number of the last gesture
-	changed  func()
+	revision  uint64
+	documents int // number of the document at work
+	gesture   int // number of the last gesture
+	changed   func()
 }
 
 // Selection is what the values strip shows and Delete takes out.
@@ -53,6 +55,7 @@ func (s *Session) OnChange(f func()) { s.changed = f }
 // Open replaces the document. The history begins anew.
 func (s *Session) Open(t *table.Table, path string) {
 	s.history, s.saved, s.path = edit.NewHistory(t), t, path
+	s.documents++
 	s.Selection, s.Editor, s.Section, s.Refusal = Selection{0, -1}, render.View{}, table.WholeSection(), nil
 	s.Coat = NoCoat
 	s.Touch()
@@ -71,6 +74,9 @@ func (s *Session) Table() *table.Table { return s.history.Now() }
 
 // Revision counts the changes.
 func (s *Session) Revision() uint64 { return s.revision }
+
+// Document is the number of the document, counted from when the program began.
+func (s *Session) Document() int { return s.documents }
 
 // Path is the document's file, empty for a new one.
 func (s *Session) Path() string { return s.path }

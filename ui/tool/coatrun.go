@@ -65,7 +65,7 @@ func loopOf(t *table.Table, item, side int) (loop, at int) {
 func RunOf(t *table.Table, i int) CoatRun {
 	coats := t.Design().Coats
 	r := CoatRun{First: i, Last: i, Law: coats[i].Law, Loop: -1}
-	loop, at := loopOf(t, coats[i].Item, coats[i].Side)
+	loop, _ := loopOf(t, coats[i].Item, coats[i].Side)
 	if loop < 0 || coats[i].Side == table.AllSides {
 		return r
 	}
@@ -76,7 +76,7 @@ func RunOf(t *table.Table, i int) CoatRun {
 	for r.Last+1 < len(coats) && r.Last-r.First+1 <= len(sides) && adjoin(t, coats[r.Last], coats[r.Last+1]) {
 		r.Last++
 	}
-	_, at = loopOf(t, coats[r.First].Item, coats[r.First].Side)
+	_, at := loopOf(t, coats[r.First].Item, coats[r.First].Side)
 	r.Loop, r.From = loop, sides[at].at(coats[r.First].From)
 	for _, c := range coats[r.First : r.Last+1] {
 		_, at := loopOf(t, c.Item, c.Side)

@@ -231,18 +231,7 @@ func (p *person) turn() edit.Command {
 	if err != nil {
 		p.fail("the number %s has no value: %v", one, err)
 	}
-	next, err := one.Turned(d, v*(1+0.1*p.rng.NormFloat64())+0.01*p.rng.NormFloat64())
-	if err != nil {
-		return Refused(err)
-	}
-	if one.Part == dial.Coat || one.Part == dial.Bare {
-		return edit.Coating{Bare: next.Bare, Coats: next.Coats, Name: "turn a number"}
-	}
-	it := next.Items[one.Of]
-	if it.Place != d.Items[one.Of].Place {
-		return edit.Shift{Item: one.Of, Place: it.Place}
-	}
-	return edit.Reshape{Item: one.Of, Shape: it.Shape, Name: "turn a number"}
+	return Turn{one, v*(1+0.1*p.rng.NormFloat64()) + 0.01*p.rng.NormFloat64()}
 }
 
 // coatByNumbers is what the values of the selected coat do.

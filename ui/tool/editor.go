@@ -150,6 +150,11 @@ func (e *Editor) Drag(p r2.Vec, step float64, k Keys) {
 		to := p
 		if k.Has(Constrain) {
 			to = constrained(e.from, p)
+		} else if e.onGrip(sel.Item, sel.Handle) {
+			if e.snaps(step, k) {
+				_ = e.s.Amend(fineDrag{sel.Item, sel.Handle, p})
+				return
+			}
 		} else {
 			to = e.snapped(p, step, k)
 		}
@@ -186,10 +191,14 @@ func alongAxis(d r2.Vec) r2.Vec {
 }
 
 func (e *Editor) snapped(p r2.Vec, step float64, k Keys) r2.Vec {
-	if step <= 0 || k.Has(Free) || e.s.Settings.Snap == session.SnapOff {
+	if !e.snaps(step, k) {
 		return p
 	}
 	return session.Snapped(p, step)
+}
+
+func (e *Editor) snaps(step float64, k Keys) bool {
+	return step > 0 && !k.Has(Free) && e.s.Settings.Snap == session.SnapOn
 }
 
 // Release lets go. It may be called twice.
@@ -378,7 +387,14 @@ func (e *Editor) Hint(p r2.Vec, reach float64) string {
 		if e.node(h.Item, h.Index) >= 0 {
 			return "Drag to move " + it.Shape.Handles()[h.Index].Name + ". Shift holds the direction, a click with Shift selects it beside others."
 		}
-		return "Drag to change " + it.Shape.Handles()[h.Index].Name + ". Shift holds the direction, Ctrl passes the grid."
+		say := "Drag to change " + it.Shape.Handles()[h.Index].Name + ". Shift holds the direction"
+		switch {
+		case e.s.Settings.Snap == session.SnapOff:
+			return say + "."
+		case e.onGrip(h.Item, h.Index):
+			return say + ", Ctrl takes any value."
+		}
+		return say + ", Ctrl passes the grid."
 	}
 	if i := e.ItemAt(p, reach); i >= 0 {
 		if _, ok := e.s.Table().Design().Items[i].Shape.(shape.Freeform); ok {

@@ -276,3 +276,44 @@ func TestRandomHands(t *testing.T) {
 		}
 	})
 }
+
+// A grip of a shape goes in fine round steps of its number where nodes go to
+// the grid: a coarse grid does not keep a hand from a value.
+func TestGripsGoFinely(t *testing.T) {
+	s := opened(t, 0)
+	s.Settings.Snap = session.SnapOn
+	e := NewEditor(s)
+	all := s.Handles()
+	grip := all[len(all)-1]
+	eps := func() float64 { return s.Table().Design().Items[0].Shape.(shape.Figure).Values()[1] }
+	const grid = 0.5 // as in the window: a tenth of eps
+	hint := e.Hint(grip.At, 0.1)
+	e.Press(grip.At, 0.1, 0)
+	seen := map[float64]bool{}
+	for i := range 50 {
+		x := grip.At.X + 0.01*float64(i)
+		e.Drag(r2.Vec{X: x, Y: grip.At.Y}, grid, 0)
+		seen[eps()] = true
+		if d := math.Abs(eps() - (0.16 + 0.01*float64(i)/5)); d > 1e-3 {
+			t.Fatalf("eps is %g, %g from where the hand is", eps(), d)
+		}
+		if m := eps() * 1e4; math.Abs(m-math.Round(m)) > 1e-9 {
+			t.Errorf("eps is %v, no round value", eps())
+		}
+	}
+	if len(seen) < 45 {
+		t.Errorf("a pull by 50 places gave %d values", len(seen))
+	}
+	e.Drag(r2.Vec{X: grip.At.X, Y: grip.At.Y}, grid, 0)
+	if eps() != 0.16 {
+		t.Errorf("back where it began eps is %v", eps())
+	}
+	e.Drag(r2.Vec{X: grip.At.X + 0.0123, Y: grip.At.Y}, grid, Free)
+	if d := math.Abs(eps() - 0.16 - 0.0123/5); d > 1e-12 {
+		t.Errorf("with Ctrl eps is %v, %g off", eps(), d)
+	}
+	_ = e.Release()
+	if want := "Drag to change eps. Shift holds the direction, Ctrl takes any value."; hint != want {
+		t.Errorf("the hint says %q", hint)
+	}
+}

@@ -8,49 +8,38 @@ import (
 	"cavitywright/ui/pane"
 
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/dialog"
 	"fyne.io/fyne/v2/widget"
 )
 
 // askName asks for the name and the notes of the table.
 func (w *Window) askName() {
 	d := w.session.Table().Design()
-	name, notes := widget.NewEntry(), widget.NewMultiLineEntry()
-	name.SetText(d.Name)
-	notes.SetText(d.Notes)
+	name, notes := newField(d.Name), newField(d.Notes)
+	notes.MultiLine = true
 	notes.Wrapping = fyne.TextWrapWord
 	notes.SetMinRowsVisible(6)
-	f := dialog.NewForm("Name and notes", "Keep", "Leave as it was", []*widget.FormItem{
+	w.askForm("Name and notes", "Keep", "Leave as it was", []*widget.FormItem{
 		widget.NewFormItem("Name", name), widget.NewFormItem("Notes", notes),
-	}, func(ok bool) {
-		if ok && (name.Text != d.Name || notes.Text != d.Notes) {
+	}, fyne.NewSize(520, 340), func() {
+		if name.Text != d.Name || notes.Text != d.Notes {
 			w.sayErr(w.session.Do(edit.SetHead{Name: name.Text, Notes: notes.Text, Unit: w.session.Table().Design().Unit}))
 		}
-	}, w.win)
-	f.Resize(fyne.NewSize(520, 340))
-	f.Show()
+	})
 }
 
 // askBundle asks what one pull launches.
 func (w *Window) askBundle() {
 	b := w.session.Settings.Bundle
-	entry := func(v float64) *widget.Entry {
-		e := widget.NewEntry()
-		e.SetText(fmt.Sprintf("%.6g", v))
-		return e
-	}
+	entry := func(v float64) *field { return newField(fmt.Sprintf("%.6g", v)) }
 	n, fan, beam, drawn := entry(float64(b.Count)), entry(b.SpreadDeg), entry(b.Width), entry(float64(w.session.Settings.Drawn))
-	f := dialog.NewForm("What a pull launches", "Keep", "Leave as it was", []*widget.FormItem{
+	w.askForm("What a pull launches", "Keep", "Leave as it was", []*widget.FormItem{
 		widget.NewFormItem("Rays of a fan or beam (2 to 200)", n),
 		widget.NewFormItem("Angle of a fan (degrees)", fan),
 		widget.NewFormItem("Width of a beam (share of the table's size)", beam),
 		widget.NewFormItem("Bounces drawn of each ray (0 to 500)", drawn),
-	}, func(ok bool) {
-		if !ok {
-			return
-		}
+	}, fyne.NewSize(560, 280), func() {
 		var v [4]float64
-		for i, e := range []*widget.Entry{n, fan, beam, drawn} {
+		for i, e := range []*field{n, fan, beam, drawn} {
 			x, err := pane.Evaluate(e.Text, w.session.Table().Design().Unit)
 			if err != nil {
 				w.foot.say(err.Error())
@@ -64,18 +53,14 @@ func (w *Window) askBundle() {
 		s.Bundle.Width = math.Min(math.Max(v[2], 1e-6), 1)
 		s.Drawn = int(math.Min(math.Max(v[3], 0), 500))
 		w.session.Touch()
-	}, w.win)
-	f.Resize(fyne.NewSize(560, 280))
-	f.Show()
+	})
 }
 
 // help is one page of what is what.
 func (w *Window) help() {
 	t := widget.NewRichTextFromMarkdown(helpText)
 	t.Wrapping = fyne.TextWrapWord
-	d := dialog.NewCustom("What is what", "Close", widget.NewCard("", "", t), w.win)
-	d.Resize(fyne.NewSize(720, 560))
-	d.Show()
+	w.closable("What is what", widget.NewCard("", "", t), fyne.NewSize(720, 560)).Show()
 }
 
 const helpText = `**Table.** The wall, drawn to scale. The coloured band is the arclength s: the same colour stands for the same place in all three panes. Drag what is magenta to reshape the wall; drag the wall to move it. *Nodes* sets a wall click by click, *Freehand* makes one of a stroke. A wall drawn inside the wall becomes an obstacle. Click a free wall twice to add a node.

@@ -24,7 +24,6 @@ func bar(name string, left []fyne.CanvasObject, right ...fyne.CanvasObject) fyne
 type narrowing struct {
 	split int
 	words []word
-	bare  float32 // the row's width without the words
 }
 
 // word is the text of a button with an icon, which may go.

@@ -10,7 +10,6 @@ import (
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/container"
-	"fyne.io/fyne/v2/dialog"
 	"fyne.io/fyne/v2/driver/desktop"
 	"fyne.io/fyne/v2/widget"
 )
@@ -55,6 +54,7 @@ func (w *Window) allCommands() []command {
 		{"File", "Save", ctrl(fyne.KeyS), "", "Ctrl+S", w.save, nil},
 		{"File", "Save as…", ctrlShift(fyne.KeyS), "", "Ctrl+Shift+S", w.saveAs, nil},
 		{"File", "Export figure…", ctrl(fyne.KeyE), "", "Ctrl+E", w.askFigure, nil},
+		{"File", "Design sheet as PDF…", nil, "", "", w.askSheet, nil},
 		{"File", "Portrait as PNG beside the table file", ctrlShift(fyne.KeyE), "", "Ctrl+Shift+E", w.exportBeside, nil},
 		{"Edit", "Undo", &fyne.ShortcutUndo{}, "", "Ctrl+Z", w.undo, nil},
 		{"Edit", "Redo", &fyne.ShortcutRedo{}, "", "Ctrl+Y", w.redo, nil},
@@ -91,6 +91,9 @@ func (w *Window) allCommands() []command {
 		{"View", "Tolerance: copies of the wall as a workshop makes them", nil, "", "", func() { w.drawer.named("Tolerance") }, nil},
 		{"View", "Wish: seek a wall for it", nil, "", "", func() { w.drawer.named("Wish") }, nil},
 		{"View", "Map under the portrait: the next one, or none", nil, fyne.KeyM, "M", w.nextLayer, nil},
+		{"View", "Film: let a number run, and write it as a film", nil, "", "", func() { w.drawer.named("Film") }, nil},
+		{"View", "Reference: exchange it with the table at work", nil, fyne.KeyJ, "J", w.exchangeReference, nil},
+		{"View", "Reference: keep this table to compare with, or drop the one kept", nil, fyne.KeyH, "H", w.toggleReference, func() bool { return w.session.Reference != nil }},
 		{"View", "Table fills the window", nil, fyne.Key1, "1", func() { w.grow(0) }, nil},
 		{"View", "Rays fill the window", nil, fyne.Key2, "2", func() { w.grow(1) }, nil},
 		{"View", "Portrait fills the window", nil, fyne.Key3, "3", func() { w.grow(2) }, nil},
@@ -212,9 +215,10 @@ func (w *Window) askCommand() {
 			c.Objects[0].(*widget.Label).SetText(found[i].menu + ": " + found[i].name)
 			c.Objects[1].(*widget.Label).SetText(found[i].keys)
 		})
-	search := widget.NewEntry()
+	search := newField("")
 	search.SetPlaceHolder("Type a few letters of what you want to do")
-	d := dialog.NewCustom("All commands", "Close", container.NewBorder(search, nil, nil, nil, list), w.win)
+	d := w.closable("All commands", container.NewBorder(search, nil, nil, nil, list), fyne.NewSize(560, 520))
+	search.escape = d.Hide
 	search.OnChanged = func(s string) {
 		found = nil
 		for _, c := range w.commands {
@@ -235,7 +239,6 @@ func (w *Window) askCommand() {
 			found[0].run()
 		}
 	}
-	d.Resize(fyne.NewSize(560, 520))
 	d.Show()
 	w.win.Canvas().Focus(search)
 }

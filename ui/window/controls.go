@@ -2,6 +2,7 @@ package window
 
 import (
 	"image/color"
+	"sort"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
@@ -75,6 +76,7 @@ type caption struct {
 	widget.BaseWidget
 	text  *canvas.Text
 	full  string // what is cut where it does not fit
+	brief string // what stands for it there; empty for none
 	align fyne.TextAlign
 	min   float32
 }
@@ -96,6 +98,17 @@ func (c *caption) set(s string) {
 	c.text.Refresh()
 }
 
+// setBrief is set with a shorter text, for where the first does not fit.
+func (c *caption) setBrief(s, brief string) {
+	c.brief = brief
+	c.set(s)
+}
+
+// wide is the width of the whole text.
+func (c *caption) wide() float32 {
+	return fyne.MeasureText(c.full, c.text.TextSize, c.text.TextStyle).Width
+}
+
 // fit cuts the text to the width with an ellipsis.
 func (c *caption) fit() {
 	w := c.Size().Width
@@ -103,12 +116,21 @@ func (c *caption) fit() {
 	if w <= 0 {
 		return
 	}
-	r := []rune(c.full)
-	for len(r) > 1 && fyne.MeasureText(string(r), c.text.TextSize, c.text.TextStyle).Width > w {
-		r = r[:len(r)-2]
-		r = append(r, '…')
+	fits := func(s string) bool { return fyne.MeasureText(s, c.text.TextSize, c.text.TextStyle).Width <= w }
+	if fits(c.full) {
+		return
 	}
-	c.text.Text = string(r)
+	say := c.full
+	if c.brief != "" {
+		if say = c.brief; fits(say) {
+			c.text.Text = say
+			return
+		}
+	}
+	// Measuring costs more than all else: halve instead of trying each length.
+	r := []rune(say)
+	n := sort.Search(len(r), func(n int) bool { return !fits(string(r[:n]) + "…") })
+	c.text.Text = string(r[:max(n-1, 0)]) + "…"
 }
 
 func (c *caption) CreateRenderer() fyne.WidgetRenderer {

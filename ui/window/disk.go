@@ -54,11 +54,11 @@ func (d *disk) changed() {
 // keep writes the copy beside the window: the disk may take its time.
 func (d *disk) keep() {
 	d.timer = nil
-	t, path := d.w.session.Table(), d.w.session.Path()
-	if !d.w.session.Unsaved() || d.task != nil || t == d.kept {
+	t, path, c := d.w.session.Table(), d.w.session.Path(), d.copy
+	if c == nil || !d.w.session.Unsaved() || d.task != nil || t == d.kept {
 		return
 	}
-	write := func(context.Context, func(float64)) error { return d.copy.Keep(t.Design(), path, time.Now()) }
+	write := func(context.Context, func(float64)) error { return c.Keep(t.Design(), path, time.Now()) }
 	var task *live.Task
 	task = live.Start(d.w.post, write, func(float64) {}, func(err error) {
 		if d.task != task {
@@ -73,6 +73,17 @@ func (d *disk) keep() {
 		d.changed() // there may be a later change already
 	})
 	d.task = task
+}
+
+// end writes no further copy, and waits for the one that is being written.
+func (d *disk) end() {
+	if d.timer != nil {
+		d.timer.Stop()
+	}
+	if d.task != nil {
+		d.task.Wait()
+	}
+	d.copy = nil
 }
 
 // clear forgets the copy: the document was saved, or given up.
@@ -108,7 +119,7 @@ func (d *disk) offerRecovered() {
 	}
 	text := widget.NewLabel(fmt.Sprintf("The last session ended before %s was saved (%s).", name, r.At.Format("2 January 2006, 15:04")))
 	var q *dialog.CustomDialog
-	back := d.w.newAnswer("Bring it back", func() {
+	back := newAnswer("Bring it back", func() {
 		q.Hide()
 		t, err := table.New(r.Design)
 		if err != nil {
@@ -119,7 +130,7 @@ func (d *disk) offerRecovered() {
 		d.w.session.Adopt(t, r.Path)
 	})
 	back.Importance = widget.HighImportance
-	drop := d.w.newAnswer("Discard it", func() {
+	drop := newAnswer("Discard it", func() {
 		q.Hide()
 		d.forget(r)
 	})

@@ -30,11 +30,12 @@ type drawer struct {
 	names  []*widget.Button
 	sheets []sheet
 	views  []fyne.CanvasObject
-	open   int // the sheet that is open, -1 for none
+	worn   []fyne.ThemeVariant // the one that each view was last seen in
+	open   int                 // the sheet that is open, -1 for none
 }
 
 func newDrawer(w *Window, sheets []sheet) *drawer {
-	d := &drawer{w: w, sheets: sheets, views: make([]fyne.CanvasObject, len(sheets)), open: -1, body: container.NewStack()}
+	d := &drawer{w: w, sheets: sheets, views: make([]fyne.CanvasObject, len(sheets)), worn: make([]fyne.ThemeVariant, len(sheets)), open: -1, body: container.NewStack()}
 	row := container.NewHBox(layout.NewSpacer())
 	row.Layout = layout.NewCustomPaddedHBoxLayout(1)
 	for i, s := range sheets {
@@ -65,14 +66,24 @@ func (d *drawer) show(i int) {
 	d.body.RemoveAll()
 	if i >= 0 {
 		if d.views[i] == nil {
-			d.views[i] = d.sheets[i].View()
+			d.views[i], d.worn[i] = d.sheets[i].View(), d.w.variant
 		}
 		d.names[i].Importance = widget.MediumImportance
 		d.names[i].Refresh()
 		d.body.Add(d.views[i])
 	}
 	d.w.arrange()
+	if i >= 0 && d.worn[i] != d.w.variant {
+		d.w.dressUp()
+	}
 	d.changed()
+}
+
+// dressed notes that what is seen wears a variant.
+func (d *drawer) dressed(v fyne.ThemeVariant) {
+	if d.open >= 0 {
+		d.worn[d.open] = v
+	}
 }
 
 // named opens the sheet of that name, for a command.

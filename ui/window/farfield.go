@@ -33,14 +33,14 @@ type farFieldSheet struct {
 	shown   []fieldShown
 }
 
-// fieldShown is a far field with what it is called: its polarisation, or nothing.
+// fieldShown is a far field with its polarisation.
 type fieldShown struct {
-	name string
-	far  *leak.FarField
+	polarisation
+	far *leak.FarField
 }
 
 func newFarFieldSheet(w *Window) *farFieldSheet {
-	return &farFieldSheet{w: w, rounds: newRounds(w, newCaption(fyne.TextAlignLeading, 120))}
+	return &farFieldSheet{w: w, rounds: newRounds(w)}
 }
 
 // Name is "Far field".
@@ -67,7 +67,7 @@ func (s *farFieldSheet) View() fyne.CanvasObject {
 	head := bar("Far field", nil, widget.NewLabel("start"), s.starts.box)
 	options := container.NewHBox(s.which.box, widget.NewLabel("window at"), small(s.towards), widget.NewLabel("° ±"), small(s.half), widget.NewLabel("°"))
 	transient := container.NewHBox(widget.NewLabel("count what leaves after path"), small(s.skip))
-	return page(head, s.rounds.state, s.plate.pane.Scrolls, options, transient, s.plate.box, s.list.box, s.lines)
+	return page(head, s.rounds.line, s.plate.pane.Scrolls, options, transient, s.plate.box, s.list.box, s.lines)
 }
 
 // The kinds of figure.
@@ -122,12 +122,14 @@ func (s *farFieldSheet) begin() {
 	which, skip := s.which.at, math.Max(0, number(s.skip, t.Design().Unit, 0))
 	s.rounds.Begin(func(d desk, rays float64) (func(), error) {
 		var all []fieldShown
-		for _, p := range polarisations(which) {
-			f, err := p.field(d, from, leak.EmissionPlan{Rays: int(rays), Skip: skip})
+		pols := polarisations(which)
+		for i, p := range pols {
+			n := float64(len(pols))
+			f, err := p.field(d.part(float64(i)/n, float64(i+1)/n), from, leak.EmissionPlan{Rays: int(rays), Skip: skip})
 			if err != nil {
 				return nil, err
 			}
-			all = append(all, fieldShown{p.name, f})
+			all = append(all, fieldShown{p, f})
 		}
 		return func() { s.shown = all; s.draw() }, nil
 	}, farFieldRays...)
@@ -136,12 +138,13 @@ func (s *farFieldSheet) begin() {
 // polarisation is one of those that are measured: as the wall is drawn, or of
 // a kind.
 type polarisation struct {
-	name string // "" as drawn
-	is   wall.Polarisation
+	name  string // "" as drawn
+	short string // the name in a list of numbers
+	is    wall.Polarisation
 }
 
 func polarisations(which int) []polarisation {
-	tm, te := polarisation{leak.Words(wall.TM), wall.TM}, polarisation{leak.Words(wall.TE), wall.TE}
+	tm, te := polarisation{leak.Words(wall.TM), "TM", wall.TM}, polarisation{leak.Words(wall.TE), "TE", wall.TE}
 	return [][]polarisation{{{}}, {tm}, {te}, {tm, te}}[which]
 }
 
@@ -176,7 +179,7 @@ func (s *farFieldSheet) draw() {
 	var rows []figure.Scalar
 	for _, one := range s.shown {
 		f = leak.Overlaid(f, s.figure(one))
-		rows = append(rows, one.far.Scalars(one.name, s.w.session.Table().Design().Study.Seed, towards*deg, half*deg)...)
+		rows = append(rows, one.far.Scalars(one.short, s.w.session.Table().Design().Study.Seed, towards*deg, half*deg)...)
 	}
 	s.plate.set(f)
 	s.list.Set(readoutRows(rows))

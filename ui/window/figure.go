@@ -19,29 +19,22 @@ import (
 	"cavitywright/ui/store"
 
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/dialog"
 	"fyne.io/fyne/v2/widget"
 )
 
 // askFigure asks which figure is to be written, and how.
 func (w *Window) askFigure() {
-	what := widget.NewSelect([]string{"portrait", "table with rays", "map under the portrait"}, nil)
-	what.SetSelectedIndex(0)
-	width := widget.NewSelectEntry([]string{"85", "120", "175"})
-	width.SetText("85")
-	dpi := widget.NewSelectEntry([]string{"300", "600", "1200"})
-	dpi.SetText("600")
-	kind := widget.NewSelect([]string{"png", "svg", "pdf", "csv"}, nil)
-	kind.SetSelectedIndex(0)
-	f := dialog.NewForm("Export a figure", "Choose a file", "Cancel", []*widget.FormItem{
+	what := newPick([]string{"portrait", "table with rays", "map under the portrait"}, 0)
+	width, dpi := newField("85"), newField("600")
+	kind := newPick([]string{"png", "svg", "pdf", "csv"}, 0)
+	wide := widget.NewFormItem("Width (mm)", width)
+	wide.HintText = "Columns of journals are mostly 85, 120 or 175 mm wide."
+	w.askForm("Export a figure", "Choose a file", "Cancel", []*widget.FormItem{
 		widget.NewFormItem("Figure", what),
-		widget.NewFormItem("Width (mm)", width),
+		wide,
 		widget.NewFormItem("Resolution (dpi, png)", dpi),
 		widget.NewFormItem("Format", kind),
-	}, func(ok bool) {
-		if !ok {
-			return
-		}
+	}, fyne.NewSize(460, 320), func() {
 		mm, err1 := pane.Evaluate(width.Text, "mm")
 		res, err2 := pane.Evaluate(dpi.Text, "mm")
 		if err1 != nil || err2 != nil {
@@ -61,9 +54,7 @@ func (w *Window) askFigure() {
 			w.ExportFigure(path, chosen == 1, o)
 			return nil
 		})
-	}, w.win)
-	f.Resize(fyne.NewSize(420, 300))
-	f.Show()
+	})
 }
 
 // exportBeside writes the portrait as a PNG for one column of a journal, next

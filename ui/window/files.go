@@ -72,10 +72,10 @@ func (w *Window) ifSaved(then func()) {
 	}
 	text := widget.NewLabel("The table has changes that are not saved.")
 	var d *dialog.CustomDialog
-	save := w.newAnswer("Save", func() { d.Hide(); w.saveThen(then) })
+	save := newAnswer("Save", func() { d.Hide(); w.saveThen(then) })
 	save.Importance = widget.HighImportance
-	drop := w.newAnswer("Do not save", func() { d.Hide(); then() })
-	back := w.newAnswer("Back to the table", func() { d.Hide() })
+	drop := newAnswer("Do not save", func() { d.Hide(); then() })
+	back := newAnswer("Back to the table", func() { d.Hide() })
 	d = dialog.NewCustomWithoutButtons("Save the changes?", container.NewVBox(text, container.NewHBox(save, drop, back)), w.win)
 	d.Show()
 	w.win.Canvas().Focus(save)
@@ -188,7 +188,7 @@ type question struct {
 // question comes again with the reason.
 func (w *Window) askPath(q question, then func(path string) error) {
 	where, file := newField(q.folder), newField(q.name)
-	browse := w.newAnswer("Browse…", func() {
+	browse := newAnswer("Browse…", func() {
 		d := dialog.NewFolderOpen(func(u fyne.ListableURI, err error) {
 			if err == nil && u != nil {
 				where.SetText(u.Path())
@@ -228,9 +228,9 @@ func (w *Window) askPath(q question, then func(path string) error) {
 	trouble := widget.NewLabel(q.trouble)
 	trouble.Wrapping = fyne.TextWrapWord
 	form := widget.NewForm(widget.NewFormItem("Name", file), widget.NewFormItem("Folder", container.NewBorder(nil, nil, nil, browse, where)))
-	ok := w.newAnswer("Write", write)
+	ok := newAnswer("Write", write)
 	ok.Importance = widget.HighImportance
-	cancel := w.newAnswer("Cancel", func() { d.Hide() })
+	cancel := newAnswer("Cancel", func() { d.Hide() })
 	d = dialog.NewCustomWithoutButtons(q.what, container.NewBorder(nil, container.NewHBox(layout.NewSpacer(), cancel, ok), nil, nil, container.NewVBox(form, trouble)), w.win)
 	for _, f := range []*field{where, file} {
 		f.OnSubmitted = func(string) { write() }

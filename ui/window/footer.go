@@ -28,9 +28,11 @@ type footer struct {
 	middle   *caption
 	right    *caption
 	reading  *caption
+	readOf   *table.Table // whose readings stand there
 	line     *canvas.Rectangle
 	rail     *fyne.Container
-	halt     *widget.Button // stops long work
+	cells    *fyne.Container // of the bottom line
+	halt     *widget.Button  // stops long work
 	held     live.Filling
 	standing string // the sentence that stays until the next
 	saidAt   uint64 // the revision it was said at
@@ -41,26 +43,52 @@ func newFooter(w *Window) *footer {
 	f := &footer{w: w, left: newCaption(fyne.TextAlignLeading, 120), middle: newCaption(fyne.TextAlignLeading, 120), right: newCaption(fyne.TextAlignTrailing, 120), reading: newCaption(fyne.TextAlignLeading, 120)}
 	f.line = canvas.NewRectangle(theme.Color(theme.ColorNameForeground))
 	f.rail = container.New(&thin{f}, f.line)
-	cells := container.New(&thirds{}, f.left, f.middle, f.right)
+	f.cells = container.New(thirds{f}, f.left, f.middle, f.right)
 	f.halt = quiet("stop", "Stop", w.stopTask)
 	f.halt.Hide()
-	f.box = container.New(layout.NewCustomPaddedLayout(1, 4, 10, 10), container.NewBorder(nil, nil, nil, tipped("", f.halt), cells))
+	f.box = container.New(layout.NewCustomPaddedLayout(1, 4, 10, 10), container.NewBorder(nil, nil, nil, tipped("", f.halt), f.cells))
 	f.readings = container.NewVBox(f.rail, container.New(layout.NewCustomPaddedLayout(0, 2, 10, 10), f.reading))
 	return f
 }
 
-// thirds shares a line between hint, numbers and progress.
-type thirds struct{}
+// thirds shares a line between hint, numbers and progress. A long hint takes the
+// room that the numbers leave.
+type thirds struct{ f *footer }
+
+const (
+	// hintPart and progressPart are the shares of the line of those two.
+	hintPart, progressPart float32 = 0.46, 0.24
+	// cellGap is between two parts of the line.
+	cellGap = 12
+)
 
 func (thirds) MinSize([]fyne.CanvasObject) fyne.Size { return fyne.NewSize(300, 20) }
-func (thirds) Layout(o []fyne.CanvasObject, s fyne.Size) {
-	x := float32(0)
-	for i, part := range []float32{0.46, 0.3, 0.24} {
-		o[i].Move(fyne.NewPos(x, 0))
-		o[i].Resize(fyne.NewSize(s.Width*part-12, s.Height))
-		x += s.Width * part
+func (t thirds) Layout(o []fyne.CanvasObject, s fyne.Size) {
+	end := s.Width * (1 - progressPart)
+	left := s.Width * hintPart
+	if wants := t.f.left.wide() + cellGap + 2; wants > left {
+		most := end
+		if t.f.middle.full != "" {
+			most -= t.f.middle.wide() + cellGap + 2
+		}
+		left = min(wants, max(left, most))
 	}
-	o[2].Resize(fyne.NewSize(s.Width*0.24, s.Height))
+	for i, x := range []float32{0, left, end, s.Width + cellGap} {
+		if i > 0 {
+			o[i-1].Resize(fyne.NewSize(x-o[i-1].Position().X-cellGap, s.Height))
+		}
+		if i < len(o) {
+			o[i].Move(fyne.NewPos(x, 0))
+		}
+	}
+}
+
+// tell writes the hint and the numbers and shares the line between them anew.
+func (f *footer) tell(c *caption, s string) {
+	if s != c.full {
+		c.set(s)
+		f.cells.Layout.Layout(f.cells.Objects, f.cells.Size())
+	}
 }
 
 // thin lays the line of progress: its length is the share done.
@@ -83,14 +111,14 @@ func (f *footer) hint(s string) {
 	if f.standing != "" {
 		s = f.standing
 	}
-	f.left.set(s)
+	f.tell(f.left, s)
 }
 
-func (f *footer) note(s string) { f.middle.set(s) }
+func (f *footer) note(s string) { f.tell(f.middle, s) }
 
 func (f *footer) say(s string) {
 	f.standing, f.saidAt = sentence(s), f.w.session.Revision()
-	f.left.set(f.standing)
+	f.tell(f.left, f.standing)
 }
 
 // sentence begins with a capital and ends with a stop.
@@ -121,24 +149,28 @@ func (f *footer) idle() { f.halt.Hide() }
 func (f *footer) refresh() {
 	if f.standing != "" && f.w.session.Revision() > f.saidAt && f.w.session.Refusal == nil {
 		f.standing = "" // what was said is past
-		f.left.set("")
+		f.tell(f.left, "")
 	}
-	t := f.w.session.Table()
-	f.reading.set(exactReadings(t))
+	if t := f.w.session.Table(); t != f.readOf {
+		f.readOf = t
+		r := t.SmallestRadius() // the one that takes time
+		f.reading.setBrief(exactReadings(t, r, "mean chord ", "smallest radius"), exactReadings(t, r, "", "radius ≥"))
+	}
 	f.line.FillColor = theme.Color(theme.ColorNameForeground)
 }
 
-// exactReadings are perimeter, area, mean chord and smallest radius.
-func exactReadings(t *table.Table) string {
+// exactReadings are perimeter, area, mean chord and smallest radius, which is r;
+// the words for the last two are given.
+func exactReadings(t *table.Table, r float64, chord, radius string) string {
 	u := t.Design().Unit
 	parts := []string{fmt.Sprintf("L = %.6g %s", t.Length(), u)}
 	if !t.Open() {
-		parts = append(parts, fmt.Sprintf("A = %.6g %s²", t.Area(), u), fmt.Sprintf("mean chord πA/L = %.6g %s", sim.MeanChord(t), u))
+		parts = append(parts, fmt.Sprintf("A = %.6g %s²", t.Area(), u), fmt.Sprintf("%sπA/L = %.6g %s", chord, sim.MeanChord(t), u))
 	} else {
 		parts = append(parts, "open plane: rays can escape")
 	}
-	if r := t.SmallestRadius(); !math.IsInf(r, 1) {
-		parts = append(parts, fmt.Sprintf("smallest radius %.4g %s", r, u))
+	if !math.IsInf(r, 1) {
+		parts = append(parts, fmt.Sprintf("%s %.4g %s", radius, r, u))
 	}
 	return strings.Join(parts, "  ·  ")
 }

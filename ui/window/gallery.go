@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"image"
 	"strings"
+	"time"
 
 	"cavitywright/assets"
 	"cavitywright/render"
@@ -16,6 +17,7 @@ import (
 	"cavitywright/table/plane"
 	"cavitywright/table/shape"
 	"cavitywright/table/tablefile"
+	"cavitywright/ui/session"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
@@ -50,9 +52,31 @@ func card(picture fyne.CanvasObject, name, about string, tapped func()) fyne.Can
 	n.Truncation = fyne.TextTruncateEllipsis
 	a := widget.NewLabel(about)
 	a.Wrapping = fyne.TextWrapWord
-	b := widget.NewButton("", tapped)
+	b := newAnswer("", tapped)
 	b.Importance = widget.LowImportance
 	return container.NewStack(container.NewBorder(picture, nil, nil, nil, container.NewBorder(n, nil, nil, nil, a)), b)
+}
+
+// cardEvery is the time from card to card while a grid of them is laid out: the
+// window stays free for whoever has seen enough.
+const cardEvery = 2 * time.Millisecond
+
+// lay puts n cards into a grid, the first at once and the others one by one
+// while the window shows them. make returns nil where there is none.
+func (w *Window) lay(grid *fyne.Container, n int, make func(int) fyne.CanvasObject) {
+	var next func(i int)
+	next = func(i int) {
+		if i > 0 && w.win.Canvas().Overlays().Top() == nil {
+			return // the dialog has gone
+		}
+		if c := make(i); c != nil {
+			grid.Add(c)
+		}
+		if i+1 < n {
+			time.AfterFunc(cardEvery, func() { w.post(func() { next(i + 1) }) })
+		}
+	}
+	next(0)
 }
 
 // GalleryTable is the table at a place of the gallery.
@@ -68,20 +92,19 @@ func GalleryTable(i int) (*table.Table, error) {
 func (w *Window) openGallery() {
 	grid := container.NewGridWrap(fyne.NewSize(232, 262))
 	var d *dialog.CustomDialog
-	for i := range assets.Gallery() {
+	w.lay(grid, len(assets.Gallery()), func(i int) fyne.CanvasObject {
 		t, err := GalleryTable(i)
 		if err != nil {
 			w.foot.say(err.Error())
-			continue
+			return nil
 		}
 		des := t.Design()
-		grid.Add(card(thumbnail(t, w.desk.Look), des.Name, firstLine(des.Notes), func() {
+		return card(thumbnail(t, w.desk.Look), des.Name, firstLine(des.Notes), func() {
 			d.Hide()
 			w.ifSaved(func() { w.openTable(t, "") })
-		}))
-	}
-	d = dialog.NewCustom("Gallery of the Larkmoor workshop (made up)", "Close", container.NewVScroll(grid), w.win)
-	d.Resize(fyne.NewSize(1000, 640))
+		})
+	})
+	d = w.closable("Gallery of the Larkmoor workshop (made up)", newBrisk(grid), fyne.NewSize(1000, 640))
 	d.Show()
 }
 
@@ -114,24 +137,80 @@ func (w *Window) openShapes() {
 	role := widget.NewRadioGroup([]string{"as the wall", "as an obstacle"}, nil)
 	role.Horizontal = true
 	role.SetSelected("as the wall")
+	search := newField("")
+	search.SetPlaceHolder("Part of a name, or of what is known")
 	var d *dialog.CustomDialog
-	for _, k := range shape.Catalogue() {
+	var all []offer
+	w.lay(grid, len(shape.Catalogue()), func(i int) fyne.CanvasObject {
+		k := shape.Catalogue()[i]
 		f, err := shape.New(k.Name, param.Defaults(k.Specs))
 		if err != nil {
-			continue
+			return nil
 		}
 		t, err := table.New(table.Design{Unit: table.Millimetre, Items: []table.Item{{Shape: f, Place: plane.Identity()}}})
 		if err != nil {
-			continue
+			return nil
 		}
-		grid.Add(card(thumbnail(t, w.desk.Look), k.Title, brief(k.About), func() {
+		take := func() {
 			d.Hide()
 			w.place(f, role.Selected == "as an obstacle")
-		}))
+		}
+		o := offer{k, card(thumbnail(t, w.desk.Look), k.Title, brief(k.About), take), take}
+		all = append(all, o)
+		o.match(search.Text)
+		return o.card
+	})
+	list := newBrisk(grid)
+	search.OnChanged = func(s string) {
+		for _, o := range all {
+			o.match(s)
+		}
+		grid.Refresh()
+		list.ScrollToTop()
 	}
-	d = dialog.NewCustom("Place a shape", "Close", container.NewBorder(role, nil, nil, nil, container.NewVScroll(grid)), w.win)
-	d.Resize(fyne.NewSize(1000, 640))
+	search.OnSubmitted = func(s string) {
+		for _, o := range all {
+			if s != "" && o.card.Visible() {
+				o.take()
+				return
+			}
+		}
+	}
+	head := container.NewBorder(nil, nil, role, nil, search)
+	d = w.closable("Place a shape", container.NewBorder(head, nil, nil, nil, list), fyne.NewSize(1000, 640))
+	search.escape = d.Hide
 	d.Show()
+	time.AfterFunc(focusAfter, func() {
+		w.post(func() {
+			if c := w.win.Canvas(); c.Overlays().Top() != nil && c.Focused() == nil {
+				c.Focus(search)
+			}
+		})
+	})
+}
+
+// focusAfter is how long a field of a list that one letter opens waits for the
+// keyboard: else it would get that letter.
+const focusAfter = 60 * time.Millisecond
+
+// offer is a family of shapes with its card.
+type offer struct {
+	kind *shape.Kind
+	card fyne.CanvasObject
+	take func()
+}
+
+// match shows the card where each word of a text stands in the family's name
+// or facts, and else hides it.
+func (o offer) match(text string) {
+	said := strings.ToLower(o.kind.Title + " " + o.kind.Name + " " + o.kind.About)
+	for _, word := range strings.Fields(strings.ToLower(text)) {
+		if !strings.Contains(said, word) {
+			o.card.Hide()
+			return
+		}
+	}
+	o.card.Show()
 }
 
 // sized is the figure with every length multiplied by k.
@@ -172,6 +251,7 @@ func (w *Window) place(f shape.Figure, obstacle bool) {
 	} else {
 		w.session.Editor, w.rays.View = render.View{}, render.View{}
 	}
+	w.session.Settings.Tool = session.Hand // its numbers are in the strip
 	w.session.Select(at, -1)
 	w.changed()
 }

@@ -37,7 +37,9 @@ func newHeader(w *Window) *header {
 	h.unit.OnChanged = func(s string) {
 		u, err := table.ParseUnit(s)
 		if d := w.session.Table().Design(); err == nil && u != d.Unit {
-			_ = w.session.Do(edit.SetHead{Name: d.Name, Notes: d.Notes, Unit: u})
+			if w.session.Do(edit.SetHead{Name: d.Name, Notes: d.Notes, Unit: u}) == nil {
+				w.say("The numbers stay; the table is now in %v.", u)
+			}
 		}
 	}
 	h.undo = quiet("undo", "Undo", w.session.Undo)

@@ -76,6 +76,15 @@ func TestFarFieldSheet(t *testing.T) {
 	}
 	s.which.buttons[3].OnTapped()
 	wait("both polarisations", func() bool { return len(s.shown) == 2 })
+	if name := s.list.rows[0].Name; name != "window share, TM" {
+		t.Errorf("a row is called %q", name)
+	}
+	wait("refining", func() bool { return s.rounds.stop.Visible() && strings.HasPrefix(s.rounds.state.full, "Refining") })
+	s.rounds.stop.OnTapped()
+	wait("its end", func() bool { return !s.rounds.Busy() })
+	if s.rounds.stop.Visible() || !strings.HasPrefix(s.rounds.state.full, "Stopped") || len(s.shown) != 2 {
+		t.Errorf("after a stop the sheet says %q and shows %d far fields", s.rounds.state.full, len(s.shown))
+	}
 	path := filepath.Join(t.TempDir(), "far.csv")
 	if err := writeFigure(path, s.rounds.work.on, s.plate.full, 85); err != nil {
 		t.Fatal(err)

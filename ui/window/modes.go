@@ -5,6 +5,7 @@ import (
 	"strconv"
 	"strings"
 
+	"cavitywright/render"
 	"cavitywright/sim/measure/modes"
 	"cavitywright/table"
 	"cavitywright/ui/pane"
@@ -18,15 +19,16 @@ import (
 // modesSheet counts the modes of the table, and of a cavity of its plan and a
 // constant height, by Weyl's law: at once, for it takes no time.
 type modesSheet struct {
-	w      *Window
-	wall   *widget.Select
-	speed  *widget.Entry // m/s
-	height *widget.Entry // "" for the plane alone
-	below  *widget.Entry // a frequency
-	count  *widget.Entry // a number of modes
-	list   *readout
-	plot   *pane.Figure
-	state  *caption
+	w          *Window
+	wall       *widget.Select
+	speed      *widget.Entry // m/s
+	height     *widget.Entry // "" for the plane alone
+	heightName *widget.Label // with the table's unit
+	below      *widget.Entry // a frequency
+	count      *widget.Entry // a number of modes
+	list       *readout
+	plot       *pane.Figure
+	state      *caption
 }
 
 func newModesSheet(w *Window) *modesSheet { return &modesSheet{w: w} }
@@ -46,6 +48,7 @@ func (s *modesSheet) View() fyne.CanvasObject {
 		return e
 	}
 	s.list, s.plot, s.state = newReadout(), pane.NewFigure(s.w.desk), newCaption(fyne.TextAlignLeading, 120)
+	s.heightName = widget.NewLabel("")
 	s.speed, s.height, s.below, s.count = entry(strconv.Itoa(modes.LightSpeed)), entry(""), entry(""), entry("100")
 	s.below.SetPlaceHolder("where there are so many, or 10 GHz")
 	s.height.SetPlaceHolder("none: the plane alone")
@@ -59,7 +62,7 @@ func (s *modesSheet) View() fyne.CanvasObject {
 	form := container.New(layout.NewFormLayout(),
 		widget.NewLabel("Wall"), s.wall,
 		widget.NewLabel("Speed of the waves (m/s)"), s.speed,
-		widget.NewLabel("Height of the cavity"), s.height,
+		s.heightName, s.height,
 		widget.NewLabel("Count below"), s.below,
 		widget.NewLabel("Number of modes"), s.count)
 	body := container.NewVBox(form, s.list.box, title("Modes below a frequency"), container.New(tall(bendHeight), s.plot.Surface))
@@ -82,6 +85,7 @@ func (s *modesSheet) Changed() {
 // take counts; the error says what of the form cannot be read.
 func (s *modesSheet) take() error {
 	t := s.w.session.Table()
+	s.heightName.SetText("Height of the cavity (" + t.Design().Unit.String() + ")")
 	wall := []modes.Wall{modes.Dirichlet, modes.Neumann}[s.wall.SelectedIndex()]
 	n, err := modes.Of(t, wall)
 	if err != nil {
@@ -106,11 +110,14 @@ func (s *modesSheet) take() error {
 			return err
 		}
 	}
+	if !(n.Count(m.K(f)) >= 1) || !(n.Density(m.K(f)) > 0) {
+		return fmt.Errorf("below %s the law counts no mode of this table; ask above %s", frequency(f), frequency(m.Hertz(n.At(1))))
+	}
 	s.list.Set(s.rows(n, p, m, f, many))
 	fig := modes.Figure(n, p, m, f)
 	fig.Caption = nil
 	s.plot.Set(fig)
-	s.state.set("Smooth counts by Weyl's law; the exact number fluctuates about them.")
+	s.state.set("Smooth counts by Weyl's law; exact ones fluctuate.")
 	return nil
 }
 
@@ -131,9 +138,9 @@ func (s *modesSheet) plate(t *table.Table) (*modes.Plate, error) {
 func (s *modesSheet) rows(n modes.Weyl, p *modes.Plate, m modes.Medium, f, many float64) []readoutRow {
 	k := m.K(f)
 	u := m.Unit.String()
-	law := fmt.Sprintf("Weyl's law A k²/4π ∓ L k/4π + bend + corners (Baltes and Hilf 1976): A = %.6g %s², L = %.6g %s, bend %.4g, corners %.4g. Smooth; the exact number fluctuates about it.", n.Area, u, n.Perimeter, u, n.Bend, n.Corners)
+	law := render.Proper(fmt.Sprintf("Weyl's law A k²/4π ∓ L k/4π + bend + corners (Baltes and Hilf 1976): A = %.6g %s², L = %.6g %s, bend %.4g, corners %.4g. Smooth; the exact number fluctuates about it.", n.Area, u, n.Perimeter, u, n.Bend, n.Corners))
 	rows := []readoutRow{
-		{"Modes below " + frequency(f), fmt.Sprintf("%.1f", n.Count(k)), law},
+		{"Modes below " + frequency(f), render.Proper(fmt.Sprintf("%.1f", n.Count(k))), law},
 		{"Mean spacing there", frequency(1 / (n.Density(k) * m.K(1))), "The inverse of the density of modes of the plane at that frequency."},
 		{fmt.Sprintf("Frequency of %g modes", many), frequency(m.Hertz(n.At(many))), "Below this frequency the law counts so many modes of the plane."},
 	}
@@ -142,7 +149,7 @@ func (s *modesSheet) rows(n modes.Weyl, p *modes.Plate, m modes.Medium, f, many 
 	}
 	return append(rows,
 		readoutRow{"Two-dimensional below", frequency(m.Hertz(p.Cutoff())), "c/2h: half a wave fits over the height from there on (common practice)."},
-		readoutRow{"Of the cavity, below " + frequency(f), fmt.Sprintf("%.1f", p.Count(k)), "The plane's law summed over the half waves that fit over the height. " + sentence(p.Field.Convention())},
+		readoutRow{"Of the cavity, below " + frequency(f), render.Proper(fmt.Sprintf("%.1f", p.Count(k))), "The plane's law summed over the half waves that fit over the height. " + sentence(p.Field.Convention())},
 		readoutRow{fmt.Sprintf("Frequency of %g, cavity", many), frequency(m.Hertz(p.At(many))), "Below this frequency the cavity has so many modes by the same sum."},
 		readoutRow{"Mean free path 4V/S", fmt.Sprintf("%.6g %s", p.FreePath(), u), "Of rays in the cavity, over uniform places and directions (Kosten 1960)."})
 }

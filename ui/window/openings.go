@@ -34,7 +34,7 @@ type openingsSheet struct {
 }
 
 func newOpeningsSheet(w *Window) *openingsSheet {
-	return &openingsSheet{w: w, rounds: newRounds(w, newCaption(fyne.TextAlignLeading, 120))}
+	return &openingsSheet{w: w, rounds: newRounds(w)}
 }
 
 // Name is "Openings".
@@ -55,7 +55,7 @@ func (s *openingsSheet) View() fyne.CanvasObject {
 	s.none = widget.NewLabel("")
 	s.none.Wrapping = fyne.TextWrapWord
 	head := bar("Openings", nil, widget.NewLabel("width"), container.NewGridWrap(fyne.NewSize(96, 34), s.width))
-	return page(head, s.rounds.state, s.places.pane.Scrolls, s.places.box, s.best.box, title("Between the openings"), s.none, s.matrix.box, s.dwell.box)
+	return page(head, s.rounds.line, s.places.pane.Scrolls, s.places.box, s.best.box, title("Between the openings"), s.none, s.matrix.box, s.dwell.box)
 }
 
 // Changed measures anew where the wall is another one.

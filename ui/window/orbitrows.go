@@ -4,10 +4,12 @@ import (
 	"cmp"
 	"fmt"
 	"math"
+	"math/cmplx"
 	"slices"
 	"strconv"
 	"strings"
 
+	"cavitywright/render"
 	"cavitywright/sim/orbit"
 	"cavitywright/table"
 )
@@ -26,11 +28,12 @@ type orbitColumn struct {
 func orbitColumns(unit string) []orbitColumn {
 	least := func(o *orbit.Orbit) float64 { p, _ := o.PRange(); return p }
 	return []orbitColumn{
-		{"bounces", 78, "Bounces of one period.", func(o *orbit.Orbit, _ string) string { return strconv.Itoa(o.Period()) }, func(o *orbit.Orbit) float64 { return float64(o.Period()) }},
-		{"length (" + unit + ")", 108, "Length of one period.", func(o *orbit.Orbit, _ string) string { return fmt.Sprintf("%.9g", o.Length) }, func(o *orbit.Orbit) float64 { return o.Length }},
-		{"kind", 138, "What its neighbours do.", func(o *orbit.Orbit, _ string) string { return o.Sort() }, nil},
-		{"trace", 92, "Trace of the monodromy matrix of one period: stable between −2 and 2.", func(o *orbit.Orbit, _ string) string { return signed("%.6g", o.Trace()) }, (*orbit.Orbit).Trace},
+		{"bounces", 76, "Bounces of one period.", func(o *orbit.Orbit, _ string) string { return strconv.Itoa(o.Period()) }, func(o *orbit.Orbit) float64 { return float64(o.Period()) }},
+		{"length (" + unit + ")", 88, "Length of one period.", func(o *orbit.Orbit, _ string) string { return fmt.Sprintf("%.7g", o.Length) }, func(o *orbit.Orbit) float64 { return o.Length }},
+		{"kind", 124, "What its neighbours do.", func(o *orbit.Orbit, _ string) string { return o.Sort() }, nil},
+		{"trace", 78, "Trace of the monodromy matrix of one period: stable between −2 and 2.", func(o *orbit.Orbit, _ string) string { return signed("%.5g", o.Trace()) }, (*orbit.Orbit).Trace},
 		{"residue", 92, "(2 − trace)/4: stable between 0 and 1.", func(o *orbit.Orbit, _ string) string { return signed("%.6g", o.Residue()) }, (*orbit.Orbit).Residue},
+		{"multipliers", 150, "Eigenvalues of the monodromy matrix: on the circle, as angles, or real ones.", multipliersText, func(o *orbit.Orbit) float64 { great, _ := o.Multipliers(); return cmplx.Abs(great) }},
 		{"turns", 56, "How often it runs round the wall in one period.", turnsText, func(o *orbit.Orbit) float64 { return float64(o.Winding) }},
 		{"stays", 60, "Whether nothing leaves along it: no bounce lies on an opening or within the critical angle.", func(o *orbit.Orbit, leaks string) string { return staysText(o, leaks) }, nil},
 		{"|p|", 132, "The least and the greatest |p| of its bounces.", rangeText, least},
@@ -44,7 +47,19 @@ func signed(format string, x float64) string {
 	if math.Abs(x) < 1e-12 {
 		x = 0 // what rounding leaves
 	}
-	return strings.ReplaceAll(fmt.Sprintf(format, x), "-", "−")
+	return render.Proper(fmt.Sprintf(format, x))
+}
+
+// multipliersText are the multipliers of an orbit, those of a family being 1.
+func multipliersText(o *orbit.Orbit, _ string) string {
+	great, small := o.Multipliers()
+	switch {
+	case o.Family != nil:
+		return "1 and 1"
+	case imag(great) != 0:
+		return fmt.Sprintf("circle, ±%.5g°", math.Abs(math.Atan2(imag(great), real(great)))*180/math.Pi)
+	}
+	return signed("%.5g", real(great)) + " and " + signed("%.3g", real(small))
 }
 
 func turnsText(o *orbit.Orbit, _ string) string {

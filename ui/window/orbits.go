@@ -2,10 +2,12 @@ package window
 
 import (
 	"bytes"
+	"cmp"
 	"context"
 	"errors"
 	"fmt"
 	"path/filepath"
+	"slices"
 	"strings"
 	"time"
 
@@ -36,6 +38,7 @@ type orbitSheet struct {
 	leaks   string // empty where nothing can leave
 	table   *widget.Table
 	state   *caption
+	marked  *caption // which orbits are marked
 	words   *widget.Label
 	upTo    *widget.Select
 	run     *widget.Button
@@ -56,6 +59,10 @@ func (s *orbitSheet) Name() string { return "Orbits" }
 func (s *orbitSheet) View() fyne.CanvasObject {
 	s.state, s.words = newCaption(fyne.TextAlignLeading, 120), widget.NewLabel("")
 	s.words.Wrapping = fyne.TextWrapWord
+	s.marked = newCaption(fyne.TextAlignLeading, 120)
+	legend := []*caption{newCaption(fyne.TextAlignLeading, 120), newCaption(fyne.TextAlignLeading, 120)}
+	legend[0].set("Marks: ring elliptic, cross hyperbolic, bar marginal,")
+	legend[1].set("cross in a ring inverse hyperbolic.")
 	s.upTo = widget.NewSelect(nil, nil)
 	for n := orbit.Least; n <= orbit.MostBounces; n++ {
 		s.upTo.Options = append(s.upTo.Options, fmt.Sprintf("%d bounces", n))
@@ -72,7 +79,7 @@ func (s *orbitSheet) View() fyne.CanvasObject {
 	head := container.NewHBox(widget.NewLabel("up to"), container.NewGridWrap(fyne.NewSize(132, 34), s.upTo), s.run, s.stop, layout.NewSpacer(), s.write)
 	top := container.NewVBox(head, container.New(layout.NewCustomPaddedLayout(0, 4, 10, 10), s.state))
 	words := container.New(tall(wordsHeight), container.NewVScroll(s.words))
-	listed := container.NewBorder(top, container.NewVBox(container.NewHBox(layout.NewSpacer(), s.launch), words), nil, nil, s.table)
+	listed := container.NewBorder(top, container.NewVBox(container.NewHBox(layout.NewSpacer(), s.launch), container.New(layout.NewCustomPaddedLayout(0, 4, 10, 10), container.NewVBox(s.marked, legend[0], legend[1])), words), nil, nil, s.table)
 	followed := s.follow.view()
 	followed.Hide()
 	parts := newChoice(nil, []string{"Of this wall", "Followed"}, func(i int) {
@@ -143,7 +150,9 @@ func (s *orbitSheet) Closed() { s.over.Clear() }
 func (s *orbitSheet) forget() {
 	s.list, s.rows, s.chosen = nil, nil, -1
 	s.over.Clear()
+	s.columns = orbitColumns(s.w.session.Table().Design().Unit.String())
 	s.words.SetText("")
+	s.marked.set("")
 	s.launch.Disable()
 	s.write.Disable()
 	s.table.UnselectAll()
@@ -252,7 +261,7 @@ func (s *orbitSheet) choose(row int) {
 }
 
 // mostMarked bounds the orbits that are marked: more would cover the portrait.
-const mostMarked = 400
+const mostMarked = 40
 
 // mark lays the orbits over the panes.
 func (s *orbitSheet) mark() {
@@ -261,8 +270,12 @@ func (s *orbitSheet) mark() {
 		return
 	}
 	var all, chosen []*orbit.Orbit
+	byLength := make([]*orbit.Orbit, len(s.list.Orbits))
 	for i := range s.list.Orbits {
-		o := &s.list.Orbits[i]
+		byLength[i] = &s.list.Orbits[i]
+	}
+	slices.SortStableFunc(byLength, func(a, b *orbit.Orbit) int { return cmp.Compare(a.Length, b.Length) })
+	for _, o := range byLength {
 		switch {
 		case s.chosen >= 0 && o == s.rows[s.chosen]:
 			chosen = append([]*orbit.Orbit{o}, chosen...)
@@ -271,6 +284,14 @@ func (s *orbitSheet) mark() {
 		case len(all) < mostMarked:
 			all = append(all, o)
 		}
+	}
+	s.marked.set("")
+	if n := len(byLength); n > len(all)+len(chosen) {
+		text := fmt.Sprintf("The %d shortest of %d orbits are marked.", len(all), n)
+		if len(chosen) > 0 {
+			text = fmt.Sprintf("The chosen orbit and the %d shortest of %d others are marked.", len(all), n-len(chosen))
+		}
+		s.marked.set(text)
 	}
 	s.over.Show(s.work.on, all, chosen)
 }

@@ -65,6 +65,16 @@ func TestOrbitSheet(t *testing.T) {
 	if !strings.Contains(s.columns[1].name, "µm") || !strings.Contains(s.words.Text, "1 turn and 2 reflections") {
 		t.Errorf("column %q, words %q", s.columns[1].name, s.words.Text)
 	}
+	for i, c := range s.columns {
+		if c.name != "multipliers" {
+			continue
+		}
+		for _, o := range s.rows {
+			if text := c.text(o, ""); o.Kind() == orbit.Elliptic != strings.HasPrefix(text, "circle") {
+				t.Errorf("column %d says of an orbit that is %s: %q", i, o.Kind(), text)
+			}
+		}
+	}
 	s.table.OnSelected(widget.TableCellID{Row: 0})
 	chosen := s.rows[s.chosen]
 	for column := range s.columns {
@@ -101,6 +111,20 @@ func TestOrbitSheet(t *testing.T) {
 	}
 	if s.list != nil || len(s.rows) != 0 || w.orbits.Marked() != 0 || !s.launch.Disabled() || !s.write.Disabled() {
 		t.Error("orbits of another wall are shown")
+	}
+}
+
+// TestOrbitsMarked: of many orbits the shortest are marked, and a line says so;
+// the head follows the unit of a table that is opened.
+func TestOrbitsMarked(t *testing.T) {
+	w, s, wait := orbited(t, "stadium", 1, 1)
+	if name := s.columns[1].name; name != "length (µm)" {
+		t.Errorf("before a search on a table in micrometres the column is called %q", name)
+	}
+	s.search()
+	wait("the list", func() bool { return s.list != nil })
+	if n := len(s.list.Orbits); n <= mostMarked || w.orbits.Marked() != mostMarked || !strings.Contains(s.marked.full, "The 40 shortest of") {
+		t.Errorf("%d of %d orbits are marked, and the sheet says %q", w.orbits.Marked(), n, s.marked.full)
 	}
 }
 

@@ -7,6 +7,7 @@ import (
 	"strings"
 
 	"cavitywright/assets"
+	"cavitywright/render"
 	"cavitywright/render/export"
 	"cavitywright/sim/figure"
 	"cavitywright/sim/measure"
@@ -31,6 +32,7 @@ type outlineSheet struct {
 
 	// What was brought in, and how it is laid.
 	drawing           *intake.Drawing // nil before an outline is read
+	document          int             // the document that was made of it
 	account           intake.Account
 	named             string
 	unit              *widget.Select
@@ -90,14 +92,14 @@ func (s *outlineSheet) View() fyne.CanvasObject {
 
 	s.unit = widget.NewSelect([]string{"as stated", "m", "cm", "mm", "um", "nm"}, nil)
 	s.unit.SetSelectedIndex(0)
-	s.height, s.tolerance = field("as stated", s.layAsAsked), field("0.01 mm", s.layFitted)
+	s.height, s.tolerance = field("as stated", s.layAsAsked), field("", s.layFitted)
 	s.fit, s.plain = quiet("stroke", "Fit", s.layFitted), quiet("chain", "As drawn", s.layPlain)
 	s.found = newReadout()
 	s.told = widget.NewLabel("")
 	s.told.Wrapping = fyne.TextWrapWord
 	in := container.NewVBox(
 		bar("From a drawing or points", nil, quiet("open", "Import an outline…", s.w.askOutline)),
-		entryRow("Height of the wall", s.height, s.unit),
+		entryRow("Height in y", s.height, s.unit),
 		entryRow("Fit within", s.tolerance, s.fit, s.plain), s.found.box, s.told)
 	s.showDrawing()
 	return container.NewVScroll(container.New(layout.NewCustomPaddedLayout(0, 4, 0, 8), container.NewVBox(out, widget.NewSeparator(), in)))
@@ -115,6 +117,10 @@ func (s *outlineSheet) formatChosen() {
 func (s *outlineSheet) Changed() {
 	if !s.work.Fits() {
 		s.trace()
+	}
+	if s.drawing != nil && s.document != s.w.session.Document() {
+		s.drawing, s.account, s.named = nil, intake.Account{}, ""
+		s.showDrawing()
 	}
 }
 
@@ -196,9 +202,9 @@ func achievedRows(t *table.Table, h measure.Handover, a outline.Account) []reado
 	if !t.Open() {
 		rows = append(rows,
 			readoutRow{"Area", fmt.Sprintf("%.7g %s²", a.Area, u), "Area of the wall after the bias."},
-			readoutRow{"Area, outline − wall", fmt.Sprintf("%+.2g %s²", a.AreaOff, u), "What the outline has more of it."})
+			readoutRow{"Area, outline − wall", render.Proper(fmt.Sprintf("%+.2g %s²", a.AreaOff, u)), "What the outline has more of it."})
 	}
-	return append(rows, readoutRow{"Length, outline − wall", fmt.Sprintf("%+.2g %s", a.Longer, u), fmt.Sprintf("What the outline is longer than the wall after the bias, %.7g %s.", a.Perimeter, u)})
+	return append(rows, readoutRow{"Length, outline − wall", render.Proper(fmt.Sprintf("%+.2g %s", a.Longer, u)), fmt.Sprintf("What the outline is longer than the wall after the bias, %.7g %s.", a.Perimeter, u)})
 }
 
 // askWrite asks for the file.

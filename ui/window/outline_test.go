@@ -102,6 +102,27 @@ func TestFitOutline(t *testing.T) {
 	}
 }
 
+// TestOutlineForgotten: what is said of an outline that was brought in goes when
+// another table is opened, and stays while the wall made of it is edited.
+func TestOutlineForgotten(t *testing.T) {
+	w, pump := opened(t, 0, fyne.NewSize(1280, 800))
+	w.OpenPath(outlineFiles + "disc.csv")
+	idle(t, w, pump)
+	s := w.outlines()
+	if within := s.tolerance.PlaceHolder; !strings.HasSuffix(within, " "+w.session.Table().Design().Unit.String()) {
+		t.Errorf("a wall is fitted within %q", within)
+	}
+	s.fit.OnTapped()
+	idle(t, w, pump)
+	if s.drawing == nil || len(s.found.rows) == 0 || s.fit.Disabled() {
+		t.Fatalf("after a fit %d rows are shown", len(s.found.rows))
+	}
+	w.session.Open(shaped(t, "disc", 1), "")
+	if s.drawing != nil || len(s.found.rows) != 0 || !s.fit.Disabled() || s.tolerance.PlaceHolder != "" {
+		t.Errorf("beside another table %d rows are shown", len(s.found.rows))
+	}
+}
+
 // TestWriteWall: the sheet says what is achieved, and what is written opens
 // again.
 func TestWriteWall(t *testing.T) {

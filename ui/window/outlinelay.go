@@ -12,7 +12,7 @@ import (
 
 // take keeps a drawing to be laid anew.
 func (s *outlineSheet) take(d *intake.Drawing, a intake.Account, name string) {
-	s.drawing, s.account, s.named = d, a, name
+	s.drawing, s.account, s.named, s.document = d, a, name, s.w.session.Document()
 	if s.told != nil {
 		s.showDrawing()
 	}
@@ -29,6 +29,7 @@ func (s *outlineSheet) shown() {
 
 // showDrawing writes what is known of the drawing.
 func (s *outlineSheet) showDrawing() {
+	s.tolerance.SetPlaceHolder("")
 	if s.drawing == nil {
 		s.found.Set(nil)
 		s.told.SetText("An SVG drawing becomes a wall with obstacles, its lines, arcs and curves kept. A table of points becomes a polygon, along which a smooth wall can be fitted. Either can be dropped on the window.")

@@ -3,6 +3,7 @@ package window
 import (
 	"fmt"
 
+	"cavitywright/render"
 	"cavitywright/sim/measure/chaos"
 
 	"fyne.io/fyne/v2"
@@ -34,9 +35,9 @@ func (l *islandList) show(s *chaos.Survey) {
 	}
 	var rows []readoutRow
 	for i, is := range s.Islands[:min(len(s.Islands), mostIslands)] {
-		place := fmt.Sprintf("s/L = %.3f, p = %.3f", is.S/s.Table.Length(), is.P)
+		place := render.Proper(fmt.Sprintf("s/L = %.3f, p = %.3f", is.S/s.Table.Length(), is.P))
 		if is.Winds {
-			place = fmt.Sprintf("a band around, p = %.3f", is.P)
+			place = render.Proper(fmt.Sprintf("a band around, p = %.3f", is.P))
 		}
 		about := fmt.Sprintf("A connected region of regular orbits, its middle at %s: %.3f ± %.3f %% of ds dp, on a map of %d × %d cells with %d bounces from each. It belongs to chain %d, of %d islands.",
 			place, 100*is.Share, 100*is.Err, s.Columns, s.Rows, s.Each, is.Chain, is.Members)

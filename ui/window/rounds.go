@@ -10,13 +10,13 @@ import (
 	"cavitywright/sim"
 	"cavitywright/sim/figure"
 	"cavitywright/sim/measure"
-	"cavitywright/sim/run"
 	"cavitywright/table"
 	"cavitywright/ui/pane"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/layout"
+	"fyne.io/fyne/v2/widget"
 )
 
 // rounds measures for a sheet that keeps up with the wall: a short first round
@@ -25,12 +25,20 @@ import (
 type rounds struct {
 	*work
 	state   *caption
+	stop    *widget.Button // shown while a longer round is under way
+	line    fyne.CanvasObject
 	refines bool   // a longer round is under way
 	done    bool   // all rounds are done
 	seen    func() // called when a first round is shown; nil for nobody
 }
 
-func newRounds(w *Window, state *caption) *rounds { return &rounds{work: newWork(w), state: state} }
+func newRounds(w *Window) *rounds {
+	r := &rounds{work: newWork(w), state: newCaption(fyne.TextAlignLeading, 120)}
+	r.stop = quiet("stop", "Stop", r.Stop)
+	r.stop.Hide()
+	r.line = container.New(tall(34), container.NewBorder(nil, nil, nil, r.stop, r.state))
+	return r
+}
 
 // Begin measures anew: do with each of the efforts in turn. It runs beside the
 // window and gives back how its result is shown. A first round under way is let
@@ -39,7 +47,8 @@ func (r *rounds) Begin(do func(d desk, effort float64) (show func(), err error),
 	if r.refines {
 		r.Drop()
 	}
-	r.refines, r.done = false, false
+	r.refining(false)
+	r.done = false
 	r.state.set("Measuring.")
 	var show func()
 	r.Follow(func(d desk) (err error) {
@@ -61,10 +70,16 @@ func (r *rounds) Begin(do func(d desk, effort float64) (show func(), err error),
 
 // refine runs the longer rounds.
 func (r *rounds) refine(do func(d desk, effort float64) (func(), error), efforts []float64) {
-	r.refines = true
+	r.refining(true)
+	all := 0.0
+	for _, e := range efforts {
+		all += e
+	}
 	r.Start(func(d desk) error {
+		before := 0.0
 		for _, e := range efforts {
-			show, err := do(d, e)
+			show, err := do(d.part(before/all, (before+e)/all), e)
+			before += e
 			if err != nil {
 				return err
 			}
@@ -74,12 +89,28 @@ func (r *rounds) refine(do func(d desk, effort float64) (func(), error), efforts
 	}, func(x float64) {
 		r.state.set(fmt.Sprintf("Refining, %.0f %%.", 100*x))
 	}, func(err error) {
-		r.refines = false
+		r.refining(false)
 		if !r.ended(err) {
 			r.done = true
 			r.state.set("")
 		}
 	})
+}
+
+// refining says whether a longer round is under way, which can be stopped.
+func (r *rounds) refining(is bool) {
+	r.refines = is
+	if is {
+		r.stop.Show()
+	} else {
+		r.stop.Hide()
+	}
+}
+
+// Drop ends the work and forgets what it was for.
+func (r *rounds) Drop() {
+	r.work.Drop()
+	r.refining(false)
 }
 
 // ended says how a round failed, if it did.
@@ -88,7 +119,7 @@ func (r *rounds) ended(err error) bool {
 		return false
 	}
 	if errors.Is(err, context.Canceled) {
-		r.state.set("Stopped.")
+		r.state.set("Stopped; what is shown is not refined to the end.")
 	} else {
 		r.state.set(sentence(err.Error()))
 	}
@@ -98,9 +129,7 @@ func (r *rounds) ended(err error) bool {
 // on is a tracer of another table, and what runs on it within the same work.
 func (d desk) on(t *table.Table) (*sim.Tracer, measure.Runner) {
 	tr := sim.Compile(t)
-	return tr, func(m measure.Measurement) (measure.Tally, error) {
-		return run.Run(d.ctx, run.Job{Tracer: tr, Measure: m, Seed: d.seed})
-	}
+	return tr, d.running(tr)
 }
 
 // readoutRows are numbers as a list shows them.

@@ -138,23 +138,37 @@ func (s *studiesSheet) resume() {
 	if r == nil {
 		return
 	}
-	var due []int
-	for i := range r.Tasks() {
-		if _, done := r.Rows[i]; !done {
-			due = append(due, i)
-		}
+	var have []study.Row // they were brought in the order of the tasks
+	for row, done := r.Rows[0]; done; row, done = r.Rows[len(have)] {
+		have = append(have, row)
 	}
 	s.work.Drop()
 	turn := s.work.turn
-	s.pace = newPacing(len(due), time.Now())
+	folder := s.w.recordsFolder()
+	s.pace = newPacing(r.Tasks()-len(have), time.Now())
 	s.work.task = live.Start(s.w.post, func(ctx context.Context, share func(float64)) error {
-		return studyTasks(ctx, r.Study, due, share, func(rows []study.Row) {
+		took := func(rows []study.Row) {
 			s.w.post(func() {
 				if s.work.turn == turn {
 					s.took(rows)
 				}
 			})
-		})
+		}
+		rec, stood := recorded(folder, r.Study)
+		defer rec.close()
+		for _, row := range have[min(len(stood), len(have)):] {
+			rec.add(row)
+		}
+		if len(stood) > len(have) {
+			took(stood)
+			have = stood
+			s.w.post(func() {
+				if s.work.turn == turn {
+					s.pace = newPacing(r.Tasks()-len(r.Rows), time.Now()) // what stood says nothing of the pace
+				}
+			})
+		}
+		return studyTasks(ctx, r.Study, len(have), share, rec.add, took)
 	}, func(x float64) {
 		if s.work.turn == turn {
 			s.pace.within = x
@@ -168,9 +182,10 @@ func (s *studiesSheet) resume() {
 	s.show()
 }
 
-// studyTasks does tasks in turn, each on all processors, and hands out rows in
-// batches. share is told how far the task at hand is.
-func studyTasks(ctx context.Context, st *study.Study, due []int, share func(float64), took func([]study.Row)) error {
+// studyTasks does the tasks from one on in turn, each on all processors, and
+// hands each row to done as it comes and to took in batches. share is told how
+// far the task at hand is.
+func studyTasks(ctx context.Context, st *study.Study, from int, share func(float64), done func(study.Row), took func([]study.Row)) error {
 	kit := study.Kit{Spread: run.Spread(ctx, 0), Watch: ctx.Err, Run: func(tr *sim.Tracer, seed uint64) measure.Runner {
 		return func(m measure.Measurement) (measure.Tally, error) {
 			return run.Run(ctx, run.Job{Tracer: tr, Measure: m, Seed: seed,
@@ -179,7 +194,7 @@ func studyTasks(ctx context.Context, st *study.Study, due []int, share func(floa
 	}}
 	var batch []study.Row
 	last := time.Now()
-	for _, i := range due {
+	for i := from; i < st.Tasks(); i++ {
 		row, err := st.Take(i, kit)
 		if err == nil {
 			err = ctx.Err()
@@ -188,6 +203,7 @@ func studyTasks(ctx context.Context, st *study.Study, due []int, share func(floa
 			took(batch)
 			return err
 		}
+		done(row)
 		batch = append(batch, row)
 		if time.Since(last) > batchEvery {
 			last = time.Now()

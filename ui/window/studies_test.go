@@ -150,7 +150,7 @@ func TestStudyByHand(t *testing.T) {
 // TestStudyStopped: a study that is stopped keeps what it has, goes on from
 // there, and comes to what one run brings, to the byte.
 func TestStudyStopped(t *testing.T) {
-	_, s, wait := studied(t, "limacon", 1, 0.4)
+	w, s, wait := studied(t, "limacon", 1, 0.4)
 	s.form.only("mean-chord")
 	s.form.turns[0].points.SetText("9")
 	s.form.effort.Selected = "0.1"
@@ -182,8 +182,42 @@ func TestStudyStopped(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
+	// Run again, all of it stands in the record; without that, it is done anew.
+	s.run.OnTapped()
+	wait("what stands", s.finished)
+	kept, err := part.Written(s.result, program)
+	if err != nil {
+		t.Fatal(err)
+	}
+	records, err := filepath.Glob(filepath.Join(w.recordsFolder(), "*.jsonl"))
+	if err != nil || len(records) != 1 {
+		t.Fatalf("%d records, %v", len(records), err)
+	}
+	whole, err := os.ReadFile(records[0])
+	if err != nil || !bytes.Equal(kept, first) {
+		t.Errorf("what stands is another result, %v", err)
+	}
+	// As after a crash: half of the record, another wall of the sweep on the
+	// table, and a launch more.
+	if err := os.WriteFile(records[0], whole[:len(whole)*2/3], 0o600); err != nil {
+		t.Fatal(err)
+	}
+	s.plates[0].pane.Picked(0.3, 1.5)
+	if err := w.session.Do(edit.Launch{New: []table.Launch{{S: 0.1, P: 0.2}}}); err != nil {
+		t.Fatal(err)
+	}
 	s.run.OnTapped()
 	wait("the second run", s.finished)
+	if b, err := os.ReadFile(records[0]); err != nil || !bytes.Equal(b, whole) {
+		t.Errorf("the record that was gone on with is another file, %v", err)
+	}
+	if err := os.Remove(records[0]); err != nil {
+		t.Fatal(err)
+	}
+	w.session.Undo()
+	w.session.Undo()
+	s.run.OnTapped()
+	wait("the third run", s.finished)
 	second, err := part.Written(s.result, program)
 	if err != nil {
 		t.Fatal(err)

@@ -26,7 +26,7 @@ type survivalSheet struct {
 }
 
 func newSurvivalSheet(w *Window) *survivalSheet {
-	return &survivalSheet{w: w, rounds: newRounds(w, newCaption(fyne.TextAlignLeading, 120))}
+	return &survivalSheet{w: w, rounds: newRounds(w)}
 }
 
 // Name is "Survival".
@@ -46,12 +46,12 @@ func (s *survivalSheet) View() fyne.CanvasObject {
 	s.verdict.Wrapping = fyne.TextWrapWord
 	s.list = newReadout()
 	head := bar("Survival", nil, widget.NewLabel("start"), s.starts.box)
-	return page(head, s.rounds.state, s.plate.pane.Scrolls, s.plate.box, s.verdict, s.list.box)
+	return page(head, s.rounds.line, s.plate.pane.Scrolls, s.plate.box, s.verdict, s.list.box)
 }
 
 // page is a sheet: its header, a line that says how far the work is, and the
 // rest, which scrolls, also with the wheel over its figure.
-func page(head fyne.CanvasObject, state *caption, scrolls func(interface{ Scrolled(*fyne.ScrollEvent) }), rest ...fyne.CanvasObject) fyne.CanvasObject {
+func page(head fyne.CanvasObject, state fyne.CanvasObject, scrolls func(interface{ Scrolled(*fyne.ScrollEvent) }), rest ...fyne.CanvasObject) fyne.CanvasObject {
 	top := container.NewVBox(head, container.New(layout.NewCustomPaddedLayout(0, 4, 10, 10), state))
 	scroll := container.NewVScroll(container.NewVBox(rest...))
 	scrolls(scroll)

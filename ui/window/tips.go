@@ -20,7 +20,7 @@ var tipSentences = map[string]string{
 	"Table/Freehand": "Draw a wall in one stroke. D",
 	"Table/Coats":    "Pull along the wall to lay what it does to rays. O",
 	"Table/Measure":  "Read off distances, angles and radii. X",
-	"Table/Grid":     "Drags go to the grid, or pass it. G",
+	"Table/Grid":     "Nodes and shapes go to the grid, or pass it. G",
 	"Table/Shapes":   "Place a shape of the catalogue. A",
 	"Table/fit":      "Show the whole table. F",
 	"Table/grow":     "Let the table fill the window, and back. 1",
@@ -48,17 +48,23 @@ var tipSentences = map[string]string{
 	"/Figure":  "Write a figure for a paper. Ctrl+E",
 	"/stop":    "Stop what is being written.",
 
-	"Sheets/Wall":       "What the wall is: joints, radii, symmetry and problems. W",
-	"Sheets/Readings":   "Measured numbers with their errors. R",
-	"Sheets/Orbits":     "Search periodic orbits.",
-	"Sheets/Survival":   "How long rays stay in a table that leaks. T",
-	"Sheets/Far field":  "In which directions rays leave. I",
-	"Sheets/Openings":   "Where to put an opening, and how rays pass between them. Q",
-	"Sheets/Modes":      "How many modes lie below a frequency.",
-	"Sheets/Outline":    "Write the wall for a workshop, or bring in an outline.",
-	"Sheets/Studies":    "Turn a number and read off others at each step.",
-	"Sheets/Tolerances": "What of the readings survives the workshop's errors.",
-	"Sheets/Film":       "Turn a number from one value to another and watch.",
+	"Sheets/Wall":      "What the wall is: joints, radii, symmetry and problems. W",
+	"Sheets/Readings":  "Measured numbers with their errors. R",
+	"Sheets/Orbits":    "Search periodic orbits.",
+	"Sheets/Survival":  "How long rays stay in a table that leaks. T",
+	"Sheets/Far field": "In which directions rays leave. I",
+	"Sheets/Openings":  "Where to put an opening, and how rays pass between them. Q",
+	"Sheets/Modes":     "How many modes lie below a frequency.",
+	"Sheets/Outline":   "Write the wall for a workshop, or bring in an outline.",
+	"Sheets/Studies":   "Turn a number and read off others at each step.",
+	"Sheets/Tolerance": "What of the readings survives the workshop's errors.",
+	"Sheets/Wish":      "Seek the wall whose readings are as wished.",
+	"Sheets/Film":      "Let a number run from one value to another and watch.",
+
+	"Film/Watch":          "Let the number run; the wall is back at the end.",
+	"Film/Stop":           "Stop, and bring the wall back.",
+	"Film/Keep this wall": "Stop, and leave the wall as it stands now.",
+	"Film/Write":          "Write the film as a GIF, or as numbered pictures.",
 
 	"any/run":   "Begin to measure.",
 	"any/stop":  "Stop it; what is known so far stays.",
@@ -165,6 +171,8 @@ const (
 	tipAfter = 500 * time.Millisecond
 	// tipSize is the size of a tip's text, tipInset the room around it.
 	tipSize, tipInset = 12, 6
+	// tipFoot is the height of the last line of the window, which no tip covers.
+	tipFoot = 30
 )
 
 func newTips(post func(func())) *tips {
@@ -230,17 +238,18 @@ func (t *tips) show(s *shade) {
 	t.text.Text = say
 	t.text.Color = theme.Color(theme.ColorNameBackground)
 	t.paper.FillColor = theme.Color(theme.ColorNameForeground)
-	size := fyne.MeasureText(say, tipSize, t.text.TextStyle).AddWidthHeight(2*tipInset, 2*tipInset-4)
+	line := fyne.MeasureText(say, tipSize, t.text.TextStyle)
+	size := line.AddWidthHeight(2*tipInset, 2*tipInset-4)
 	at := d.AbsolutePositionForObject(s).Subtract(d.AbsolutePositionForObject(t))
 	below := at.Y + s.Size().Height + 3
-	if below+size.Height > window.Height {
+	if below+size.Height > window.Height-tipFoot {
 		below = at.Y - size.Height - 3
 	}
 	at = fyne.NewPos(max(2, min(at.X, window.Width-size.Width-2)), below)
 	t.paper.Move(at)
 	t.paper.Resize(size)
 	t.text.Move(at.AddXY(tipInset, tipInset-2))
-	t.text.Resize(size)
+	t.text.Resize(line)
 	t.paper.Show()
 	t.text.Show()
 	t.Refresh()

@@ -21,6 +21,7 @@ import (
 	"cavitywright/table/edit"
 
 	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/widget"
 )
 
@@ -31,14 +32,18 @@ type toleranceSheet struct {
 	work   *work
 	form   *toleranceForm
 	result *tolerance.Result // nil for none
+	drawn  []figure.Figure   // the worst copies for each reading, once all is done
 
-	state *caption
-	run   *widget.Button
-	stop  *widget.Button
-	plate *plate
-	worst *plate
-	list  *readout
-	words *widget.Label
+	state  *caption
+	scroll *container.Scroll
+	run    *widget.Button
+	stop   *widget.Button
+	which  *widget.Select    // the reading that is shown
+	choice fyne.CanvasObject // which, of several
+	plate  *plate
+	worst  *plate
+	list   *readout
+	words  *widget.Label
 }
 
 func newToleranceSheet(w *Window) *toleranceSheet { return &toleranceSheet{w: w, work: newWork(w)} }
@@ -54,7 +59,10 @@ func (s *toleranceSheet) View() fyne.CanvasObject {
 	s.stop.Hide()
 	s.form = newToleranceForm(s.w)
 	on := func() *table.Table { return s.work.on }
-	s.plate = newPlate(s.w, "Copies", studyFigureHeight, on)
+	s.which = widget.NewSelect(nil, func(string) { s.show() })
+	s.choice = boxed(220, s.which)
+	s.choice.Hide()
+	s.plate = newPlate(s.w, "Copies", studyFigureHeight, on, s.choice)
 	s.plate.pane.Hinted = "How the reading lies over the copies."
 	s.worst = newPlate(s.w, "Worst copies", sheetFigure, on)
 	s.worst.pane.Hinted = "The worst copies over the wall as drawn; what they are off is magnified as the words below say."
@@ -63,6 +71,7 @@ func (s *toleranceSheet) View() fyne.CanvasObject {
 	s.words.Wrapping = fyne.TextWrapWord
 	head := bar("Tolerance", []fyne.CanvasObject{s.run, s.stop})
 	return page(head, s.state, func(in interface{ Scrolled(*fyne.ScrollEvent) }) {
+		s.scroll, _ = in.(*container.Scroll)
 		s.plate.pane.Scrolls(in)
 		s.worst.pane.Scrolls(in)
 	}, s.form.box, s.plate.box, s.list.box, s.words, s.worst.box)
@@ -83,7 +92,8 @@ func (s *toleranceSheet) Changed() {
 
 // clear takes away what was measured.
 func (s *toleranceSheet) clear() {
-	s.result = nil
+	s.result, s.drawn = nil, nil
+	s.scroll.ScrollToTop()
 	visible(s.stop, false)
 	visible(s.run, true)
 	s.plate.set(nil)
@@ -118,11 +128,14 @@ func (s *toleranceSheet) begin() {
 	s.clear()
 	visible(s.run, false)
 	visible(s.stop, true)
-	var drawn figure.Figure
+	var drawn []figure.Figure
 	s.work.Start(func(d desk) error {
 		last := time.Now()
-		kit := d.kit()
-		r, err := t.Run(kit, func(done, total int, r *tolerance.Result) {
+		measured := 0
+		r, err := t.Run(d.kit(func(x float64) {
+			s.state.set(fmt.Sprintf("%d of %d walls measured, %.0f %% of the next", measured, t.Total(), 100*x))
+		}), func(done, total int, r *tolerance.Result) {
+			d.show(func() { measured = done })
 			if time.Since(last) < batchEvery {
 				return
 			}
@@ -132,8 +145,12 @@ func (s *toleranceSheet) begin() {
 			d.show(func() { s.took(&now, done, total) })
 		})
 		if len(r.Rows) > 0 {
-			if p, e := r.WorstDrawn(0, d.steady(), program); e == nil {
-				drawn = p
+			for k := range plan.Readings {
+				p, e := r.WorstDrawn(k, d.steady(), program)
+				if e != nil {
+					break
+				}
+				drawn = append(drawn, p)
 			}
 		}
 		d.show(func() { s.took(r, t.Total(), t.Total()) })
@@ -142,13 +159,24 @@ func (s *toleranceSheet) begin() {
 	s.state.set("Measuring the wall as drawn.")
 }
 
-// kit is what copies and walls are made and measured with.
-func (d desk) kit() tolerance.Kit {
+// kit is what copies and walls are made and measured with; within, which may be
+// nil, is told on the window's goroutine, now and then, how far the measurement at
+// hand is.
+func (d desk) kit(within func(share float64)) tolerance.Kit {
+	last := time.Now()
+	progress := func(done, total int, _ measure.Tally) {
+		if within == nil || time.Since(last) < batchEvery {
+			return
+		}
+		last = time.Now()
+		share := float64(done) / float64(total)
+		d.show(func() { within(share) })
+	}
 	return tolerance.Kit{
 		Kit: study.Kit{
 			Run: func(tr *sim.Tracer, seed uint64) measure.Runner {
 				return func(m measure.Measurement) (measure.Tally, error) {
-					return run.Run(d.ctx, run.Job{Tracer: tr, Measure: m, Seed: seed})
+					return run.Run(d.ctx, run.Job{Tracer: tr, Measure: m, Seed: seed, Progress: progress})
 				}
 			},
 			Spread: run.Spread(d.ctx, 0),
@@ -161,7 +189,7 @@ func (d desk) kit() tolerance.Kit {
 // steady is a kit for what is drawn after a stop: it makes walls, and measures
 // nothing.
 func (d desk) steady() tolerance.Kit {
-	k := d.kit()
+	k := d.kit(nil)
 	k.Watch = nil
 	return k
 }
@@ -187,18 +215,45 @@ func (s *toleranceSheet) took(r *tolerance.Result, done, total int) {
 	if len(r.Rows) == 0 {
 		return
 	}
-	visible(s.plate.box, true)
-	s.plate.set(r.Histogram(0, program))
-	s.list.Set(s.numbers(r))
-	s.words.SetText(strings.Join(r.Lines()[1:], "\n"))
+	if !slices.Equal(s.which.Options, r.Plan.Readings) {
+		s.which.SetOptions(r.Plan.Readings)
+		s.which.Selected = r.Plan.Readings[0]
+		s.which.Refresh()
+	}
+	visible(s.choice, len(r.Plan.Readings) > 1)
+	s.show()
 }
 
-// numbers are the rows of the list.
-func (s *toleranceSheet) numbers(r *tolerance.Result) (rows []readoutRow) {
-	d := r.OfReading(0)
+// show shows the reading that is chosen: its distribution, its numbers, its worst
+// copies.
+func (s *toleranceSheet) show() {
+	r := s.result
+	if r == nil || len(r.Rows) == 0 {
+		return
+	}
+	k := max(0, s.which.SelectedIndex())
+	visible(s.plate.box, true)
+	s.plate.set(r.Histogram(k, program))
+	s.list.Set(s.numbers(r, k))
+	words := r.Lines()[1:]
+	if k < len(s.drawn) {
+		if p, is := s.drawn[k].(figure.Paths); is {
+			visible(s.worst.box, true)
+			words = append(words, sentence(p.Caption[0]))
+			s.worst.set(p)
+			p.Caption = nil // it stands in the words
+			s.worst.pane.Set(p)
+		}
+	}
+	s.words.SetText(strings.Join(words, "\n"))
+}
+
+// numbers are the rows of the list, for reading k.
+func (s *toleranceSheet) numbers(r *tolerance.Result, k int) (rows []readoutRow) {
+	d := r.OfReading(k)
 	unit := ""
-	if len(r.Nominal.Taken) > 0 && r.Nominal.Taken[0].Unit != "1" {
-		unit = " " + r.Nominal.Taken[0].Unit
+	if k < len(r.Nominal.Taken) && r.Nominal.Taken[k].Unit != "1" {
+		unit = " " + r.Nominal.Taken[k].Unit
 	}
 	add := func(name, about, format string, args ...any) {
 		rows = append(rows, readoutRow{name, fmt.Sprintf(format, args...) + unit, about})
@@ -209,11 +264,15 @@ func (s *toleranceSheet) numbers(r *tolerance.Result) (rows []readoutRow) {
 	add("5 % below", "The fifth percentile.", "%.5g", d.Quantile(0.05))
 	add("95 % below", "The ninety-fifth percentile.", "%.5g", d.Quantile(0.95))
 	add("Scatter of the walls", fmt.Sprintf("Standard deviation of the copies, %.2g, without the error of each reading, %.2g.", d.Deviation, d.Noise), "%.2g", d.Wall())
-	if len(r.Plan.Limits) > 0 {
-		y := r.Yield(tolerance.All)
-		rows = append(rows, readoutRow{"Yield", fmt.Sprintf("%.1f ± %.1f %%", 100*y.Share, 100*y.Err), fmt.Sprintf("%d of %d copies keep to the limit; with a confidence of 95 %% the yield lies between %.1f and %.1f %%. The error is binomial.", y.Good, y.Of, 100*y.Lo, 100*y.Hi)})
+	for i, l := range r.Plan.Limits {
+		if l.Reading == r.Plan.Readings[k] {
+			rows = append(rows, yieldRow("Yield", r.Yield(i)))
+		}
 	}
-	for i, p := range r.Parts(0) {
+	if len(r.Plan.Limits) > 1 {
+		rows = append(rows, yieldRow("Yield, all limits", r.Yield(tolerance.All)))
+	}
+	for i, p := range r.Parts(k) {
 		value := "not measured yet"
 		switch {
 		case p.Exact == tolerance.Known:
@@ -226,8 +285,17 @@ func (s *toleranceSheet) numbers(r *tolerance.Result) (rows []readoutRow) {
 	return rows
 }
 
+// yieldRow is a yield in a row of the list.
+func yieldRow(name string, y tolerance.Yield) readoutRow {
+	value := fmt.Sprintf("%.1f ± %.1f %%", 100*y.Share, 100*y.Err)
+	if y.Err == 0 { // none or all: the interval says more
+		value = fmt.Sprintf("%.0f %% (%.1f to %.1f %%)", 100*y.Share, 100*y.Lo, 100*y.Hi)
+	}
+	return readoutRow{name, value, fmt.Sprintf("%d of %d copies keep to it; with a confidence of 95 %% the yield lies between %.1f and %.1f %%. The error is binomial.", y.Good, y.Of, 100*y.Lo, 100*y.Hi)}
+}
+
 // ended says how the work ended, and draws the worst copies.
-func (s *toleranceSheet) ended(err error, drawn figure.Figure) {
+func (s *toleranceSheet) ended(err error, drawn []figure.Figure) {
 	visible(s.stop, false)
 	visible(s.run, true)
 	switch {
@@ -238,9 +306,6 @@ func (s *toleranceSheet) ended(err error, drawn figure.Figure) {
 	default:
 		s.state.set(fmt.Sprintf("All done: %d copies.", len(s.result.Rows)))
 	}
-	if p, is := drawn.(figure.Paths); is {
-		visible(s.worst.box, true)
-		s.worst.set(p)
-		s.words.SetText(strings.Join(append(s.result.Lines()[1:], sentence(p.Caption[0])), "\n"))
-	}
+	s.drawn = drawn
+	s.show()
 }

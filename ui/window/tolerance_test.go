@@ -63,16 +63,16 @@ func TestToleranceByHand(t *testing.T) {
 	w, any, wait := glassy(t, 0.43, "Tolerance")
 	s := any.(*toleranceSheet)
 	f := s.form
-	if len(f.rows) != 2 || f.rows[0].which.Selected != "size" || f.rows[1].which.Selected != "roughness" || f.read.Selected != "window-share" {
-		t.Fatalf("offered: %d rows, %q", len(f.rows), f.read.Selected)
+	if len(f.rows) != 2 || f.rows[0].which.Selected != "size" || f.rows[1].which.Selected != "roughness" || f.reads.rows[0].which.Selected != "window-share" {
+		t.Fatalf("offered: %d rows, %q", len(f.rows), f.reads.rows[0].which.Selected)
 	}
 	f.copies.SetText("6")
 	f.effort.SetSelected("0.03")
-	f.least.SetText("0.7")
+	f.reads.rows[0].least.SetText("0.7")
 	f.add().which.SetSelected("eps")
 	f.rows[2].width.SetText("no number")
 	s.run.OnTapped()
-	if !strings.Contains(s.state.full, "Eps") || s.work.Busy() {
+	if !strings.Contains(s.state.full, `"no number"`) || s.work.Busy() {
 		t.Fatalf("a bad number is taken: %q", s.state.full)
 	}
 	f.drop(f.rows[2])
@@ -117,5 +117,59 @@ func TestToleranceStops(t *testing.T) {
 	wait("the stop", s.state, func() bool { return strings.HasPrefix(s.state.full, "Stopped") })
 	if len(s.list.rows) == 0 || !s.run.Visible() {
 		t.Error("what was measured is gone")
+	}
+}
+
+// TestToleranceReadings: several readings are taken of the same copies, each with
+// its own limits, and shown one after the other.
+func TestToleranceReadings(t *testing.T) {
+	w, any, wait := glassy(t, 0.43, "Tolerance")
+	s := any.(*toleranceSheet)
+	f := s.form
+	if f.reads.rows[0].out.Visible() {
+		t.Error("the only reading can be taken out")
+	}
+	second := f.reads.add()
+	if second.which.Selected == f.reads.rows[0].which.Selected || !second.out.Visible() {
+		t.Errorf("the second reading is %q", second.which.Selected)
+	}
+	if wide := f.box.MinSize().Width; wide > 380 {
+		t.Errorf("the form is %g wide", wide)
+	}
+	f.reads.rows[0].which.SetSelected("perimeter")
+	second.which.SetSelected("area")
+	f.drop(f.rows[1])
+	f.copies.SetText("20")
+	f.reads.rows[0].most.SetText("1000")
+	second.least.SetText("no number")
+	s.run.OnTapped()
+	if !strings.Contains(s.state.full, "Area, good from") || s.work.Busy() {
+		t.Fatalf("a bad limit is taken: %q", s.state.full)
+	}
+	second.least.SetText("1000")
+	s.run.OnTapped()
+	wait("the copies", s.state, func() bool { return strings.HasPrefix(s.state.full, "All done: 20") })
+	shown := func() map[string]string {
+		values := map[string]string{}
+		for _, row := range s.list.rows {
+			values[row.Name] = row.Value
+		}
+		return values
+	}
+	label := func() string { return s.plate.full.(figure.Series).X.Label }
+	if v := shown(); !s.choice.Visible() || label() != "perimeter" || !strings.HasPrefix(v["Yield"], "100 %") || !strings.HasPrefix(v["Yield, all limits"], "0 %") {
+		t.Errorf("of %s: %v", label(), v)
+	}
+	first := s.worst.full
+	s.which.SetSelected("area")
+	if v := shown(); label() != "area" || !strings.HasPrefix(v["Yield"], "0 %") || !strings.Contains(v["As drawn"], "µm²") && !strings.Contains(v["As drawn"], "um²") {
+		t.Errorf("of %s: %v", label(), v)
+	}
+	if !s.worst.box.Visible() || strings.Join(s.worst.full.(figure.Paths).Caption, "") == strings.Join(first.(figure.Paths).Caption, "") {
+		t.Error("the worst copies are those of the other reading")
+	}
+	kept := w.session.Table().Design().Study.Tolerances
+	if len(kept) != 1 || len(kept[0].Readings) != 2 || len(kept[0].Limits) != 2 {
+		t.Errorf("the study keeps %+v", kept)
 	}
 }

@@ -8,6 +8,7 @@ import (
 
 	"cavitywright/sim/measure/reading"
 	"cavitywright/sim/study"
+	"cavitywright/sim/study/tolerance"
 	"cavitywright/table"
 	"cavitywright/table/dial"
 	"cavitywright/ui/pane"
@@ -23,13 +24,12 @@ type toleranceForm struct {
 	box        fyne.CanvasObject
 	rows       []*flawRow
 	list       *fyne.Container
-	read       *widget.Select
+	reads      *readList
 	copies     *widget.Entry
 	effort     *widget.Select
-	least      *widget.Entry
-	most       *widget.Entry
 	wavelength *widget.Entry
-	kinds      []flawKind // what a row may be, on the table at hand
+	says       *widget.Label // the errors in words, with their units
+	kinds      []flawKind    // what a row may be, on the table at hand
 	offered    *table.Table
 }
 
@@ -50,19 +50,18 @@ type flawRow struct {
 }
 
 func newToleranceForm(w *Window) *toleranceForm {
-	f := &toleranceForm{w: w, list: container.NewVBox(), read: widget.NewSelect(nil, nil), copies: numberField("100", nil)}
+	f := &toleranceForm{w: w, list: container.NewVBox(), reads: newReadList(), copies: numberField("100", nil)}
 	f.copies.OnSubmitted = nil
 	f.effort = widget.NewSelect([]string{"0.03", "0.1", "0.3", "1", "4"}, nil)
 	f.effort.Selected = "0.1"
-	f.least, f.most, f.wavelength = widget.NewEntry(), widget.NewEntry(), widget.NewEntry()
-	f.least.SetPlaceHolder("none")
-	f.most.SetPlaceHolder("none")
+	f.wavelength = widget.NewEntry()
 	f.wavelength.SetPlaceHolder("not given")
+	f.says = widget.NewLabel("")
+	f.says.Wrapping = fyne.TextWrapWord
 	add := quiet("", "Add an error", func() { f.add() })
-	f.box = container.NewVBox(f.list, container.NewHBox(add),
-		container.NewBorder(nil, nil, wordBox("Read", 72), nil, f.read),
+	f.box = container.NewVBox(f.list, f.says, container.NewHBox(add),
+		f.reads.list, container.NewHBox(quiet("", "Add a reading", func() { f.reads.add() })),
 		container.NewHBox(wordBox("copies", 72), boxed(72, f.copies), widget.NewLabel("effort"), boxed(84, f.effort)),
-		container.NewHBox(wordBox("good from", 72), boxed(84, f.least), widget.NewLabel("to"), boxed(84, f.most)),
 		container.NewHBox(wordBox("wavelength outside", 150), boxed(110, f.wavelength)))
 	return f
 }
@@ -106,16 +105,7 @@ func (f *toleranceForm) offer() {
 			names = append(names, r.Name)
 		}
 	}
-	before := f.read.Selected
-	f.read.SetOptions(names)
-	f.read.ClearSelected()
-	for _, name := range []string{before, "window-share", "escape-rate", "lyapunov-per-length", "area"} {
-		for _, there := range names {
-			if f.read.Selected == "" && name == there {
-				f.read.SetSelected(name)
-			}
-		}
-	}
+	f.reads.offer(names)
 }
 
 // label lists the kinds in a row, and keeps its own where it is among them.
@@ -150,6 +140,8 @@ func (f *toleranceForm) fill() {
 func (f *toleranceForm) add() *flawRow {
 	r := &flawRow{law: widget.NewSelect([]string{"normal", "uniform"}, nil), width: widget.NewEntry(), second: widget.NewEntry()}
 	r.law.Selected = "normal"
+	r.law.OnChanged = func(string) { f.tell() }
+	r.width.OnChanged, r.second.OnChanged = r.law.OnChanged, r.law.OnChanged
 	r.which = widget.NewSelect(nil, func(string) { f.settle(r) })
 	out := quiet("clear", "", func() { f.drop(r) })
 	r.box = container.NewBorder(nil, nil, nil, container.NewHBox(boxed(92, r.law), boxed(64, r.width), boxed(64, r.second), out), r.which)
@@ -171,6 +163,28 @@ func (f *toleranceForm) drop(r *flawRow) {
 		}
 	}
 	f.list.Remove(r.box)
+	f.tell()
+}
+
+// tell says in words what the rows come to, or what is wrong with them.
+func (f *toleranceForm) tell() {
+	if f.offered == nil {
+		return
+	}
+	flaws, _, err := f.flaws()
+	var t *tolerance.Tolerance
+	if err == nil {
+		t, err = tolerance.New(f.offered, table.Tolerance{Name: "the form", Flaws: flaws, Copies: 2, Readings: []string{"perimeter"}, Effort: 1})
+	}
+	if err != nil {
+		f.says.SetText(sentence(err.Error()))
+		return
+	}
+	var words []string
+	for k := range flaws {
+		words = append(words, t.Words(k))
+	}
+	f.says.SetText(sentence(strings.Join(words, "; ")))
 }
 
 // settle says in the fields of a row what its numbers are.
@@ -191,6 +205,7 @@ func (f *toleranceForm) settle(r *flawRow) {
 		r.width.SetPlaceHolder("rms")
 		r.second.SetPlaceHolder("length")
 	}
+	f.tell()
 }
 
 func (f *toleranceForm) kind(r *flawRow) flawKind {
@@ -217,20 +232,17 @@ func typed(e *widget.Entry, unit table.Unit, what string, none float64) (float64
 	return v, nil
 }
 
-// plan is what the form describes.
-func (f *toleranceForm) plan() (table.Tolerance, error) {
-	p := table.Tolerance{Readings: []string{f.read.Selected}, Effort: 0.1}
-	var names []string
+// flaws are the errors of the rows, with their names.
+func (f *toleranceForm) flaws() (all []table.Flaw, names []string, err error) {
 	for _, r := range f.rows {
 		k := f.kind(r)
 		flaw := table.Flaw{Kind: k.kind, Dial: k.dial, Law: table.Spread(max(0, r.law.SelectedIndex()))}
-		var err error
 		if flaw.Width, err = f.entered(r.width, k.label, 0); err != nil {
-			return p, err
+			return nil, nil, err
 		}
 		second, err := f.entered(r.second, k.label, 0)
 		if err != nil {
-			return p, err
+			return nil, nil, err
 		}
 		switch k.kind {
 		case table.RoughFlaw:
@@ -240,13 +252,19 @@ func (f *toleranceForm) plan() (table.Tolerance, error) {
 		default:
 			flaw.Mean = second
 		}
-		p.Flaws, names = append(p.Flaws, flaw), append(names, k.label)
+		all, names = append(all, flaw), append(names, k.label)
 	}
-	p.Name = strings.Join(names, ", ")
-	if f.read.Selected == "" {
-		return p, fmt.Errorf("choose what is to be read")
+	return all, names, nil
+}
+
+// plan is what the form describes.
+func (f *toleranceForm) plan() (table.Tolerance, error) {
+	p := table.Tolerance{Effort: 0.1}
+	flaws, names, err := f.flaws()
+	if err != nil {
+		return p, err
 	}
-	var err error
+	p.Flaws, p.Name = flaws, strings.Join(names, ", ")
 	if p.Copies, err = strconv.Atoi(strings.TrimSpace(f.copies.Text)); err != nil {
 		return p, fmt.Errorf("the number of copies is %q; write a whole number", f.copies.Text)
 	}
@@ -256,15 +274,5 @@ func (f *toleranceForm) plan() (table.Tolerance, error) {
 	if p.Wavelength, err = f.entered(f.wavelength, "wavelength", 0); err != nil {
 		return p, err
 	}
-	l := table.Limit{Reading: f.read.Selected}
-	if l.Lo, err = f.entered(f.least, "good from", math.Inf(-1)); err != nil {
-		return p, err
-	}
-	if l.Hi, err = f.entered(f.most, "good to", math.Inf(1)); err != nil {
-		return p, err
-	}
-	if !math.IsInf(l.Lo, 0) || !math.IsInf(l.Hi, 0) {
-		p.Limits = []table.Limit{l}
-	}
-	return p, nil
+	return p, f.reads.fill(&p, f.w.session.Table().Design().Unit)
 }

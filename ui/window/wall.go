@@ -111,7 +111,7 @@ func (s *wallSheet) show(r *survey.Report) {
 		if !e.Known() {
 			return "none"
 		}
-		return fmt.Sprintf("%.6g %s at s = %.5g", e.Radius, u, e.Place.S)
+		return fmt.Sprintf("%.6g %s, at s = %.5g %s", e.Radius, u, e.Place.S, u)
 	}
 	rows := []readoutRow{{"Perimeter L", length(r.Perimeter), "Length of all walls, those of obstacles included. Exact to 1e-12 of itself."}}
 	if !math.IsNaN(r.Area) {
@@ -126,12 +126,21 @@ func (s *wallSheet) show(r *survey.Report) {
 		readoutRow{"Jumps of curvature", fmt.Sprint(len(r.Jumps)), "Places where the tangent is continuous and the curvature is not."},
 		readoutRow{"Smoothness", r.Class.String(), "The class of the wall at its least smooth place: C0 has corners, C1 a continuous tangent, C2 a continuous curvature; analytic: every loop is one analytic curve."},
 		readoutRow{"Convex", convexity(r), "Whether the outer wall turns one way everywhere; strictly, if its curvature vanishes nowhere."},
-		readoutRow{"Symmetry", r.Symmetry.Name(), "The group of rotations and mirror lines that map the wall onto itself, in Schoenflies' notation; coats are not looked at."})
+		readoutRow{"Symmetry group", symmetry(r), "The group of rotations and mirror lines that map the wall onto itself, in Schoenflies' notation; coats are not looked at."})
 	s.list.Set(rows)
 	f := measure.CurvatureFigure(s.w.session.Table(), r)
 	f.Caption = nil
 	s.bend.Set(f)
 	s.words.SetText("• " + strings.Join(r.Sentences(), "\n• "))
+}
+
+// symmetry is the group in words where its sign might be taken for a class of
+// smoothness.
+func symmetry(r *survey.Report) string {
+	if name := r.Symmetry.Name(); name != "C1" {
+		return name
+	}
+	return "none"
 }
 
 func convexity(r *survey.Report) string {

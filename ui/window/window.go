@@ -58,6 +58,8 @@ type Window struct {
 	last     live.Status // of the work, as it was told last
 	beats    int
 	stalls   []live.Stall
+	sized    *table.Table // whose size the views are for
+	dressed  int          // the pane that filled the window when it got its colours, -1 for none
 }
 
 // Options are what a caller may set.
@@ -73,7 +75,7 @@ type Options struct {
 // New makes the designer's window on a table. path is its file, empty for
 // none.
 func New(a fyne.App, t *table.Table, path string, o Options) *Window {
-	w := &Window{app: a, win: a.NewWindow("Cavitywright"), grown: -1, post: o.Post, watch: o.Watch}
+	w := &Window{app: a, win: a.NewWindow("Cavitywright"), grown: -1, dressed: -1, post: o.Post, watch: o.Watch}
 	if w.post == nil {
 		w.post = fyne.Do
 	}
@@ -126,6 +128,7 @@ func (w *Window) ShowAndRun() {
 		for _, k := range w.works {
 			k.Drop()
 		}
+		w.disk.end()
 		w.engine.Close()
 	})
 	w.win.ShowAndRun()
@@ -137,8 +140,11 @@ func (w *Window) Content() fyne.Window { return w.win }
 // Session is the document at work.
 func (w *Window) Session() *session.Session { return w.session }
 
-// Close ends the engine.
-func (w *Window) Close() { w.engine.Close() }
+// Close ends the engine and the copies.
+func (w *Window) Close() {
+	w.disk.end()
+	w.engine.Close()
+}
 
 // layout puts the panes in their places.
 func (w *Window) layout() {
@@ -163,6 +169,7 @@ func (w *Window) layout() {
 		newStudiesSheet(w),
 		newToleranceSheet(w),
 		newWishSheet(w),
+		newFilmSheet(w),
 	})
 	w.floor = container.NewStack()
 	w.arrange()
@@ -205,6 +212,9 @@ func (w *Window) grow(i int) {
 		w.center.Add(w.columns)
 	}
 	w.center.Refresh()
+	if w.dressed >= 0 && i != w.dressed {
+		w.dressUp() // the other panes were not there
+	}
 	w.changed()
 }
 
@@ -216,6 +226,7 @@ func (w *Window) changed() {
 	w.head.refresh()
 	w.tools.show(int(w.session.Settings.Tool))
 	w.values.Refresh()
+	w.refit()
 	w.editor.Redraw()
 	w.foot.refresh()
 	w.drawer.changed()
@@ -225,6 +236,22 @@ func (w *Window) changed() {
 	for _, s := range []*pane.Surface{w.editor.Surface, w.rays.Surface, w.portrait.Surface} {
 		s.Again()
 	}
+}
+
+// refit lets the panes show the whole table where another one, by undo or a
+// value typed, is not to be seen in the view that was left.
+func (w *Window) refit() {
+	t := w.session.Table()
+	if w.session.InGesture() || t == w.sized {
+		return // the view stands still under the hand
+	}
+	before := w.sized
+	w.sized = t
+	if before == nil || t.Bounds() == before.Bounds() {
+		return
+	}
+	w.session.Editor = w.editor.Fitted(w.session.Editor, before)
+	w.rays.View = w.rays.Fitted(w.rays.View, before)
 }
 
 // pickUp puts frames on the screen that are finished already. While events
@@ -246,6 +273,7 @@ func (w *Window) show() {
 		Revision: w.session.Revision(), Table: w.session.Table(), Section: w.session.Section,
 		Settings: w.session.Settings, Look: w.desk.Look,
 		Portrait: w.portrait.Pixels(), Rays: w.rays.Pixels(), RaysView: w.rays.View,
+		Reference: w.session.Reference,
 	}
 	if r.Portrait.X < 2 || r.Rays.X < 2 {
 		// A pane that is not on the screen has no size yet, or keeps its last.
@@ -288,8 +316,17 @@ func (w *Window) say(format string, args ...any) { w.foot.say(fmt.Sprintf(format
 func (w *Window) toggleVariant() {
 	w.variant = theme.VariantLight + theme.VariantDark - w.variant
 	w.app.Preferences().SetInt("variant", int(w.variant))
-	w.app.Settings().SetTheme(dress{w.variant})
+	w.dressUp()
 	w.changed()
+}
+
+// dressUp gives all that is in the window its colours. The toolkit passes by
+// what is not seen, such as a sheet that is shut: that is called for again
+// when it comes back.
+func (w *Window) dressUp() {
+	w.app.Settings().SetTheme(dress{w.variant})
+	w.drawer.dressed(w.variant)
+	w.dressed = w.grown
 }
 
 // rate is the number of frames of the portrait painted a second.

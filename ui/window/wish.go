@@ -19,6 +19,7 @@ import (
 	"cavitywright/table/edit"
 
 	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/widget"
 )
 
@@ -28,8 +29,10 @@ type wishSheet struct {
 	w      *Window
 	work   *work
 	form   *wishForm
-	found  *wish.Found // nil for none
-	chosen *wish.Try   // the wall that is shown; nil for none
+	found  *wish.Found  // nil for none
+	chosen *wish.Try    // the wall that is shown; nil for none
+	placed *table.Table // the one that was put on the table; nil for none
+	scroll *container.Scroll
 
 	state    *caption
 	run      *widget.Button
@@ -73,16 +76,23 @@ func (s *wishSheet) View() fyne.CanvasObject {
 	s.words.Wrapping = fyne.TextWrapWord
 	head := bar("Wish", []fyne.CanvasObject{s.run, s.stop}, s.put)
 	return page(head, s.state, func(in interface{ Scrolled(*fyne.ScrollEvent) }) {
+		s.scroll, _ = in.(*container.Scroll)
 		for _, p := range []*plate{s.wall, s.portrait, s.course} {
 			p.pane.Scrolls(in)
 		}
 	}, s.form.box, s.wall.box, s.list.box, s.portrait.box, s.course.box, s.words)
 }
 
+// belongs reports whether the wall on the table is the one that the search began
+// from, or one that it brought.
+func (s *wishSheet) belongs() bool {
+	return s.work.Fits() || s.found != nil && s.placed != nil && s.placed.SameWall(s.w.session.Table())
+}
+
 // Changed clears what was sought from another wall.
 func (s *wishSheet) Changed() {
 	s.form.offer()
-	if s.work.Fits() {
+	if s.belongs() {
 		for _, p := range []*plate{s.wall, s.portrait, s.course} {
 			p.pane.Redraw()
 		}
@@ -98,7 +108,8 @@ func (s *wishSheet) Closed() {}
 
 // clear takes away what was found.
 func (s *wishSheet) clear() {
-	s.found, s.chosen = nil, nil
+	s.found, s.chosen, s.placed = nil, nil, nil
+	s.scroll.ScrollToTop()
 	visible(s.stop, false)
 	visible(s.run, true)
 	s.put.Disable()
@@ -141,7 +152,12 @@ func (s *wishSheet) begin() {
 	s.work.Start(func(d desk) error {
 		var last, ghost time.Time
 		var drawn *wish.Try
-		f, err := k.Search(d.kit(), func(f *wish.Found, _ *wish.Try) {
+		tried := 0
+		f, err := k.Search(d.kit(func(x float64) {
+			s.state.set(fmt.Sprintf("%d of %d walls tried, %.0f %% of the next", tried, plan.Tries, 100*x))
+		}), func(f *wish.Found, _ *wish.Try) {
+			n := len(f.Tries)
+			d.show(func() { tried = n })
 			if time.Since(last) < batchEvery {
 				return
 			}
@@ -276,15 +292,22 @@ func (s *wishSheet) pick(x, y float64) {
 // adopt puts the wall that is shown on the table, as one step that undo takes
 // back.
 func (s *wishSheet) adopt() {
-	if s.chosen == nil || s.chosen.Table == nil || !s.work.Fits() {
+	if s.chosen == nil || s.chosen.Table == nil || !s.belongs() {
 		return
 	}
 	f, y := s.found, s.chosen
 	d := y.Table.Design()
 	now := s.w.session.Table().Design()
 	d.Name, d.Notes, d.Study = now.Name, now.Notes, now.Study
-	s.work.Stop()
-	if err := s.w.session.Do(&putWall{Design: d, Name: "wall for " + f.Plan.Name}); err != nil {
+	if s.work.Busy() { // a wall that is taken ends the search
+		s.work.Stop()
+		s.ended(context.Canceled)
+	}
+	before := s.placed
+	// The wall is known for one that was found before the others are told of it.
+	c := &putWall{Design: d, Name: "wall for " + f.Plan.Name, made: func(t *table.Table) { s.placed = t }}
+	if err := s.w.session.Do(c); err != nil {
+		s.placed = before
 		s.w.foot.say(err.Error())
 		return
 	}

@@ -23,7 +23,7 @@ import (
 type wishForm struct {
 	w        *Window
 	box      fyne.CanvasObject
-	goal     *goalRow
+	goals    *goalList
 	against  *goalRow
 	rows     []*freeRow
 	list     *fyne.Container
@@ -44,14 +44,6 @@ type wishForm struct {
 	offered  *table.Table
 }
 
-// goalRow is a goal: an aim, a reading, and for the aim "at" a value.
-type goalRow struct {
-	aim   *widget.Select
-	read  *widget.Select
-	value *widget.Entry
-	box   fyne.CanvasObject
-}
-
 // freeRow is a number that may be turned, with its range.
 type freeRow struct {
 	which    *widget.Select
@@ -69,23 +61,9 @@ const (
 	shortestLength = "orbit-length:2:1"
 )
 
-func newGoalRow(aims []string) *goalRow {
-	g := &goalRow{read: widget.NewSelect(nil, nil), value: widget.NewEntry()}
-	g.aim = widget.NewSelect(aims, func(name string) {
-		visible(g.value, name == "at the value")
-		visible(g.read, name != nothingAgainst)
-	})
-	g.value.Hide()
-	g.value.SetPlaceHolder("value")
-	g.box = container.NewBorder(nil, nil, boxed(128, g.aim), boxed(72, g.value), g.read)
-	g.aim.SetSelectedIndex(0)
-	return g
-}
-
 func newWishForm(w *Window) *wishForm {
 	f := &wishForm{w: w, list: container.NewVBox()}
-	aims := []string{"the greatest", "the least", "at the value"}
-	f.goal, f.against = newGoalRow(aims), newGoalRow(append([]string{nothingAgainst}, aims...))
+	f.goals, f.against = newGoalList("window-share", "lyapunov-per-length", "area"), newGoalRow(append([]string{nothingAgainst}, aims...), nil)
 	f.bend = widget.NewSelect([]string{"any bend", "convex", "strictly convex"}, nil)
 	f.same = widget.NewSelect([]string{"any size", "same perimeter", "same area"}, nil)
 	f.bend.SetSelectedIndex(0)
@@ -120,12 +98,12 @@ func newWishForm(w *Window) *wishForm {
 	)
 	f.more.Hide()
 	more := quiet("", "More demands  ▾", func() { visible(f.more, !f.more.Visible()) })
-	f.box = container.NewVBox(f.goal.box,
+	f.box = container.NewVBox(f.goals.list, container.NewHBox(quiet("", "Add a goal", func() { f.goals.add() })),
 		container.NewBorder(nil, nil, wordBox("against", 72), nil, f.against.box),
 		f.list, container.NewHBox(quiet("", "Free another number", func() { f.add() })),
 		container.NewGridWithColumns(2, f.bend, f.same),
-		container.NewHBox(wordBox("walls", 72), boxed(64, f.tries), widget.NewLabel("effort"), boxed(84, f.effort), more),
-		f.more)
+		container.NewHBox(wordBox("walls", 72), boxed(64, f.tries), widget.NewLabel("effort"), boxed(84, f.effort)),
+		container.NewHBox(more), f.more)
 	return f
 }
 
@@ -169,18 +147,8 @@ func (f *wishForm) offer() {
 		}
 	}
 	names = append(names, shortestTrace, shortestLength)
-	for i, g := range []*goalRow{f.goal, f.against} {
-		before := g.read.Selected
-		g.read.SetOptions(names)
-		g.read.ClearSelected()
-		for _, name := range append([]string{before}, [][]string{{"window-share", "lyapunov-per-length", "area"}, {"lobe-width", "area", "perimeter"}}[i]...) {
-			for _, there := range names {
-				if g.read.Selected == "" && name == there {
-					g.read.SetSelected(name)
-				}
-			}
-		}
-	}
+	f.goals.offer(names)
+	f.against.offer(names, []string{"lobe-width", "area", "perimeter"})
 }
 
 // add adds a row for a number.
@@ -230,31 +198,21 @@ func (f *wishForm) suggest(r *freeRow) {
 	r.to.SetText(write(spec.Clamp(v + half)))
 }
 
-// goal is what a row says; aims before skip stand for no goal.
-func (g *goalRow) goal(skip int) (table.Goal, error) {
-	out := table.Goal{Reading: g.read.Selected, Aim: table.Aim(g.aim.SelectedIndex() - skip), Weight: 1}
-	if out.Reading == "" {
-		return out, errors.New("choose what is wished for")
-	}
-	if out.Aim == table.Hold {
-		v, err := pane.Evaluate(g.value.Text, "")
-		if err != nil {
-			return out, fmt.Errorf("%s: %w", out.Reading, err)
-		}
-		out.Value = v
-	}
-	return out, nil
-}
-
 // plan is what the form describes.
 func (f *wishForm) plan() (table.Wish, error) {
 	unit := f.w.session.Table().Design().Unit
 	p := table.Wish{Effort: 0.1, Method: table.Method(max(0, f.method.SelectedIndex()))}
-	g, err := f.goal.goal(0)
+	goals, err := f.goals.goals()
 	if err != nil {
 		return p, err
 	}
-	p.Goals, p.Name = []table.Goal{g}, g.Reading
+	p.Goals = goals
+	for i, g := range goals {
+		if i > 0 {
+			p.Name += " and "
+		}
+		p.Name += g.Reading
+	}
 	if f.against.aim.SelectedIndex() > 0 {
 		g, err := f.against.goal(1)
 		if err != nil {

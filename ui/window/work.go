@@ -66,9 +66,27 @@ type desk struct {
 	tracer *sim.Tracer
 	runner measure.Runner
 	seed   uint64
+	share  func(float64) // says how far the work is
 	// show runs a function on the window's goroutine, unless the wall has
 	// changed since or other work was begun.
 	show func(func())
+}
+
+// running runs measurements on a tracer within the work, and says how far they
+// are.
+func (d desk) running(tr *sim.Tracer) measure.Runner {
+	return func(m measure.Measurement) (measure.Tally, error) {
+		return run.Run(d.ctx, run.Job{Tracer: tr, Measure: m, Seed: d.seed,
+			Progress: func(done, total int, _ measure.Tally) { d.share(float64(done) / float64(total)) }})
+	}
+}
+
+// part is the desk of a part of the work, from one share of it to another.
+func (d desk) part(from, to float64) desk {
+	whole := d.share
+	d.share = func(x float64) { whole(from + x*(to-from)) }
+	d.runner = d.running(d.tracer)
+	return d
 }
 
 // Start begins work on the table as it is now; work that is under way is
@@ -81,11 +99,8 @@ func (k *work) Start(do func(d desk) error, progress func(share float64), done f
 	turn := k.turn
 	fits := func() bool { return k.turn == turn && t.SameWall(k.w.session.Table()) }
 	k.task = live.Start(k.w.post, func(ctx context.Context, share func(float64)) error {
-		d := desk{ctx: ctx, tracer: sim.Compile(t), seed: t.Design().Study.Seed}
-		d.runner = func(m measure.Measurement) (measure.Tally, error) {
-			return run.Run(ctx, run.Job{Tracer: d.tracer, Measure: m, Seed: d.seed,
-				Progress: func(done, total int, _ measure.Tally) { share(float64(done) / float64(total)) }})
-		}
+		d := desk{ctx: ctx, tracer: sim.Compile(t), seed: t.Design().Study.Seed, share: share}
+		d.runner = d.running(d.tracer)
 		d.show = func(f func()) {
 			k.w.post(func() {
 				if fits() {

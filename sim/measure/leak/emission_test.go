@@ -3,6 +3,7 @@ package leak_test
 import (
 	"errors"
 	"math"
+	"slices"
 	"testing"
 
 	"cavitywright/sim"
@@ -61,6 +62,9 @@ func TestLimacon(t *testing.T) {
 		if math.Abs(l.Direction) > 3*l.DirectionErr+0.5*deg {
 			t.Errorf("eps %g: the lobe points to %g ± %g deg, want 0", c.eps, l.Direction/deg, l.DirectionErr/deg)
 		}
+		if len(l.Twins) != 0 {
+			t.Errorf("eps %g: the only lobe has the twins %+v", c.eps, l.Twins)
+		}
 		if back > share/3 || chi2 > 1+5*math.Sqrt(2/float64(n)) {
 			t.Errorf("eps %g: back share %g, mirror image off by %g", c.eps, back, chi2)
 		}
@@ -71,6 +75,31 @@ func TestLimacon(t *testing.T) {
 				t.Errorf("shares add up to 1 %+g", a+b-want)
 			}
 		}
+	}
+}
+
+// TestTwins: of a wall that is its own mirror image about both axes every lobe
+// is listed with its mirror images, each with an error of its own.
+func TestTwins(t *testing.T) {
+	const deg = math.Pi / 180
+	tr := trial.Traced(t, "quadrupole", []float64{1, 0.12}, glass(1.5, wall.TM))
+	l := farOf(t, tr, leak.NaturalSeeding(tr.Table()), leak.EmissionPlan{}).Lobe()
+	all := append([]leak.Lobe{l}, l.Twins...)
+	for _, one := range all {
+		t.Logf("%.2f ± %.2f deg, %.1f ± %.1f deg wide", one.Direction/deg, one.DirectionErr/deg, one.Width/deg, one.WidthErr/deg)
+		if !(one.DirectionErr < 3*deg) {
+			t.Errorf("the error of the direction is %g deg", one.DirectionErr/deg)
+		}
+		for _, image := range []float64{-one.Direction, math.Pi - one.Direction} {
+			if !slices.ContainsFunc(all, func(o leak.Lobe) bool {
+				return math.Abs(math.Remainder(o.Direction-image, 2*math.Pi)) < 4*math.Hypot(o.DirectionErr, one.DirectionErr)+0.5*deg
+			}) {
+				t.Errorf("the lobe at %g deg has no image at %g deg", one.Direction/deg, image/deg)
+			}
+		}
+	}
+	if len(all) < 2 {
+		t.Error("a lobe of a wall with two mirrors has no twin")
 	}
 }
 

@@ -136,7 +136,7 @@ func (f *Fall) lines(s *figure.Series) {
 		exponential(s, naiveName, 6, 0, 1, f.Naive, s.X.Lo, s.X.Hi)
 	}
 	if f.Tail != nil {
-		c := figure.Curve{Name: fmt.Sprintf("t^−%.3g", f.Tail.Exponent), Hue: 4, Form: figure.Guide}
+		c := figure.Curve{Name: "t to the power " + figure.Sentence(-f.Tail.Exponent, f.Tail.Err), Hue: 4, Form: figure.Guide}
 		share, _ := f.Left(f.Tail.To)
 		for i := range drawnMarks + 1 {
 			t := f.Tail.From * math.Pow(f.Tail.To/f.Tail.From, float64(i)/drawnMarks)
@@ -151,26 +151,26 @@ func (f *Fall) Verdict() string {
 	unit := f.Starts.tracer.Table().Design().Unit.String()
 	text := "No stretch of path has one rate."
 	if w := f.Window; f.HasWindow {
-		text = fmt.Sprintf("From path %.4g to %.4g %s what is left falls exponentially, at %.4g ± %.1g per %s.", w.From, w.To, unit, w.Rate, w.Err, unit)
+		text = fmt.Sprintf("From path %.4g to %.4g %s what is left falls exponentially, at %s per %s.", w.From, w.To, unit, figure.Sentence(w.Rate, w.Err), unit)
 		if w.Short {
-			text = fmt.Sprintf("From path %.4g to %.4g %s what is left falls at %.4g ± %.1g per %s; the curve is too short to show whether the rate stays.", w.From, w.To, unit, w.Rate, w.Err, unit)
+			text = fmt.Sprintf("From path %.4g to %.4g %s what is left falls at %s per %s; the curve is too short to show whether the rate stays.", w.From, w.To, unit, figure.Sentence(w.Rate, w.Err), unit)
 		}
 	}
 	if w := f.PerBounce; f.HasPerBounce {
-		text += fmt.Sprintf(" Per bounce it is %.4g ± %.1g, from bounce %.0f to %.0f.", w.Rate, w.Err, w.From, w.To)
+		text += fmt.Sprintf(" Per bounce it is %s, from bounce %.0f to %.0f.", figure.Sentence(w.Rate, w.Err), w.From, w.To)
 	}
 	if f.Naive > 0 {
 		text += fmt.Sprintf(" A small opening in a mixing table would give W/(πA) = %.4g per %s.", f.Naive, unit)
 	}
 	if t := f.Tail; t != nil && t.Exponent < flatExponent {
 		share, err := f.Left(t.To)
-		text += fmt.Sprintf(" Later it goes flat: %.2g ± %.1g of what started is still inside at path %.4g %s.", share, err, t.To, unit)
+		text += fmt.Sprintf(" Later it goes flat: %s of what started is still inside at path %.4g %s.", figure.Sentence(share, err), t.To, unit)
 	} else if t != nil {
 		word := "Later it slows"
 		if !f.HasWindow {
 			word = "It falls"
 		}
-		text += fmt.Sprintf(" %s: from %.4g to %.4g %s as t to the power −%.3g ± %.1g.", word, t.From, t.To, unit, t.Exponent, t.Err)
+		text += fmt.Sprintf(" %s: from %.4g to %.4g %s as t to the power %s.", word, t.From, t.To, unit, figure.Sentence(-t.Exponent, t.Err))
 	}
 	return text
 }

@@ -66,18 +66,76 @@ func (f *FarField) Entropy() (entropy, stderr float64) {
 // read from: 4.5 degrees, nine bins of half a degree.
 const lobeSmoothing = 4.5 * math.Pi / 180
 
+// lobeReach is how far (bins) the top of a lobe is sought at a step: ripples of
+// chance that are narrower do not hold it.
+const lobeReach = 9
+
 // Lobe is the greatest lobe of the smoothed far field: its direction and its
-// full width at half of its height (radians), with their standard errors.
-type Lobe struct{ Direction, DirectionErr, Width, WidthErr float64 }
+// full width at half of its height (radians), with their standard errors. Twins
+// are the other lobes that are as high within three standard errors of the
+// difference, as the mirror image of a lobe is.
+type Lobe struct {
+	Direction, DirectionErr, Width, WidthErr float64
+	Twins                                    []Lobe
+}
 
 // Lobe reads the greatest lobe.
 func (f *FarField) Lobe() Lobe {
-	var l Lobe
-	at, _ := f.of(func(s *sent) float64 { d, _ := lobe(s.byAngle); return d })
-	_, l.DirectionErr = f.of(func(s *sent) float64 { d, _ := lobe(s.byAngle); return math.Remainder(d-at, 2*math.Pi) })
-	l.Direction = at
-	l.Width, l.WidthErr = f.of(func(s *sent) float64 { _, w := lobe(s.byAngle); return w })
+	whole := sum(f.rows)
+	tops := lobes(smoothed(whole.byAngle, lobeSmoothing))
+	l := f.lobeAt(tops[0])
+	for _, top := range tops[1:] {
+		less, err := f.of(func(s *sent) float64 {
+			c := smoothed(s.byAngle, lobeSmoothing)
+			return (c[tops[0]] - c[top]) / s.counted()
+		})
+		if less <= 3*err {
+			l.Twins = append(l.Twins, f.lobeAt(top))
+		}
+	}
 	return l
+}
+
+// lobeAt is the lobe whose top is a bin. Its errors are those of this lobe,
+// also where chance makes a twin of it the greater one.
+func (f *FarField) lobeAt(top int) Lobe {
+	var l Lobe
+	l.Direction, _ = f.of(func(s *sent) float64 { d, _ := lobe(s.byAngle, top); return d })
+	_, l.DirectionErr = f.of(func(s *sent) float64 {
+		d, _ := lobe(s.byAngle, top)
+		return math.Remainder(d-l.Direction, 2*math.Pi)
+	})
+	l.Width, l.WidthErr = f.of(func(s *sent) float64 { _, w := lobe(s.byAngle, top); return w })
+	return l
+}
+
+// lobes are the tops of the lobes of a smoothed far field, the greatest first:
+// of each stretch above half of the greatest height the highest bin.
+func lobes(c []float64) (tops []int) {
+	n := len(c)
+	first := 0
+	for i, w := range c {
+		if w > c[first] {
+			first = i
+		}
+	}
+	in := true // the greatest lobe itself, until it has fallen
+	for k := range n {
+		i := (first + k) % n
+		switch high := c[i] >= c[first]/2; {
+		case !high:
+			in = false
+		case !in:
+			in = true
+			tops = append(tops, i)
+		case len(tops) > 0 && c[i] > c[tops[len(tops)-1]]:
+			tops[len(tops)-1] = i
+		}
+	}
+	if in && len(tops) > 0 { // the near side of the greatest lobe
+		tops = tops[:len(tops)-1]
+	}
+	return append([]int{first}, tops...)
 }
 
 // smoothed is a histogram over the full turn under a running mean of a width
@@ -95,15 +153,18 @@ func smoothed(bins []float64, width float64) []float64 {
 	return out
 }
 
-// lobe is the direction of the greatest lobe, the middle between the places
+// lobe is the direction of the lobe about a bin, the middle between the places
 // where it falls to half of its height, and their distance.
-func lobe(bins []float64) (direction, width float64) {
+func lobe(bins []float64, near int) (direction, width float64) {
 	n := len(bins)
 	c := smoothed(bins, lobeSmoothing)
-	top := 0
-	for i, w := range c {
-		if w > c[top] {
-			top = i
+	top := near
+	for moved := true; moved; { // up the slope
+		moved = false
+		for k := -lobeReach; k <= lobeReach; k++ {
+			if i := ((top+k)%n + n) % n; c[i] > c[top] {
+				top, moved = i, true
+			}
 		}
 	}
 	half := c[top] / 2

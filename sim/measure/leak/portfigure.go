@@ -68,8 +68,8 @@ func (s *Scattering) Dwells(program string) figure.Series {
 	for _, p := range s.Ports {
 		width += p.Width
 	}
-	head := fmt.Sprintf("path from entering through an opening by the cosine law to leaving; %d rays through each of %d openings; mean %.5g ± %.1g %s, πA/W = %.5g %s.",
-		s.Rays, len(s.Ports), mean, err, unit, math.Pi*tab.Area()/width, unit)
+	head := fmt.Sprintf("path from entering through an opening by the cosine law to leaving; %d rays through each of %d openings; mean %s %s, πA/W = %.5g %s.",
+		s.Rays, len(s.Ports), figure.Sentence(mean, err), unit, math.Pi*tab.Area()/width, unit)
 	head = measure.Head(tab) + head
 	f.Caption = []string{head, measure.Foot(tab, program)}
 	return f

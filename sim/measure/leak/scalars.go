@@ -33,11 +33,14 @@ func (f *Fall) Scalars(seed uint64) []figure.Scalar {
 		rows = append(rows, figure.Scalar{Name: "rate of a small opening", Value: f.Naive, Unit: "1/" + unit, Note: "exact, W / (pi A): leading order in a mixing table (Bauer and Bertsch 1990)"})
 	}
 	mean, err := f.Dwell()
-	add("mean dwell", mean, err, unit, fmt.Sprintf("path of what was gone by path %.4g %s, %s", f.Times[len(f.Times)-1], unit, f.Starts.Words()))
+	add("mean path until gone", mean, err, unit, fmt.Sprintf("of these starts, what was gone by path %.4g %s, %s", f.Times[len(f.Times)-1], unit, f.Starts.Words()))
 	left, err := f.ByPath.At(len(f.Times) - 1)
 	add("left at the end", left, err, "1", fmt.Sprintf("share at path %.4g %s", f.Times[len(f.Times)-1], unit))
 	return rows
 }
+
+// mostTwins bounds the lobes that are listed beside the greatest.
+const mostTwins = 5
 
 // Scalars are the numbers of a far field. name is the polarisation, empty
 // where the table says it; the window looks towards a direction and has a half
@@ -60,6 +63,9 @@ func (f *FarField) Scalars(name string, seed uint64, towards, half float64) []fi
 	l := f.Lobe()
 	add("lobe width", l.Width/deg, l.WidthErr/deg, "°", fmt.Sprintf("full width at half of the greatest lobe's height, under a running mean of %.3g°", lobeSmoothing/deg))
 	add("lobe direction", l.Direction/deg, l.DirectionErr/deg, "°", "middle of the greatest lobe, counter-clockwise from +x")
+	for i, twin := range l.Twins[:min(len(l.Twins), mostTwins)] {
+		add(fmt.Sprintf("twin lobe %d", i+1), twin.Direction/deg, twin.DirectionErr/deg, "°", "direction of another lobe that is as high within its error, as the mirror image of a lobe is")
+	}
 	value, err := f.MeanCosine()
 	add("mean cosine", value, err, "1", "of the direction from +x")
 	value, err = f.Entropy()

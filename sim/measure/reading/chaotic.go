@@ -32,7 +32,7 @@ func (b bench) chaotic(name string, share func(*chaos.SharingTally, chaos.Method
 		return s, &measure.NotMeasured{Name: name, Why: noneFollowed}
 	}
 	other, otherErr := share(t, chaos.ByAverages)
-	s.Note = fmt.Sprintf("%s; by growth over %d bounces an orbit, %.5f ± %.5f by weighted Birkhoff averages", starts, chaos.ShareBounces, other, otherErr)
+	s.Note = fmt.Sprintf("%s; by growth over %d bounces an orbit, %s by weighted Birkhoff averages", starts, chaos.ShareBounces, figure.Sentence(other, otherErr))
 	if t.Drifts(chaos.ByGrowth) {
 		before, _ := t.SectionAt(chaos.ByGrowth, 1)
 		s.Note += fmt.Sprintf("; still drifting: %.5f of the section over %d bounces", before, chaos.ShareBounces/2)

@@ -78,7 +78,7 @@ func freePathVariance(b bench) (figure.Scalar, error) {
 		return s, &measure.NotMeasured{Name: "free-path-variance", Why: noneFollowed}
 	}
 	m, me := t.Mean()
-	s.Note = fmt.Sprintf("starts even in ds dp; the mean is %.6g ± %.1g %s", m, me, b.unit()) + b.asMirrors() + t.Stops.Remark()
+	s.Note = fmt.Sprintf("starts even in ds dp; the mean is %s %s", figure.Sentence(m, me), b.unit()) + b.asMirrors() + t.Stops.Remark()
 	return s, nil
 }
 
@@ -95,6 +95,6 @@ func flightCorrelation(b bench) (figure.Scalar, error) {
 		return s, &measure.NotMeasured{Name: "flight-correlation", Why: "no orbit could be followed, or all flights are alike"}
 	}
 	two, twoErr := t.At(2)
-	s.Note = fmt.Sprintf("one bounce later; two bounces later %.4f ± %.1g; starts even in ds dp", two, twoErr) + b.asMirrors() + t.Stops.Remark()
+	s.Note = fmt.Sprintf("one bounce later; two bounces later %s; starts even in ds dp", figure.Sentence(two, twoErr)) + b.asMirrors() + t.Stops.Remark()
 	return s, nil
 }

@@ -12,6 +12,7 @@ import (
 	"cavitywright/sim"
 	"cavitywright/sim/figure"
 	"cavitywright/sim/measure"
+	"cavitywright/sim/measure/leak"
 	"cavitywright/sim/measure/reading"
 	"cavitywright/table"
 	"cavitywright/table/survey"
@@ -25,8 +26,6 @@ type Job struct {
 	Effort float64 // of the readings
 	// Program is the name and version that the page ends with.
 	Program string
-	// Extra are figures of the open cavity: far field, survival.
-	Extra []figure.Block
 }
 
 // Of composes the sheet. The error is the runner's.
@@ -48,7 +47,12 @@ func Of(j Job) (figure.Sheet, error) {
 	}
 	bend := measure.CurvatureFigure(t, report)
 	bend.Caption = nil
-	last := append([]figure.Block{{Heading: "Curvature along the wall", Width: 1, Show: bend}}, j.Extra...)
+	last := []figure.Block{{Heading: "Curvature along the wall", Width: 1, Show: bend}}
+	if leaves, err := leaving(j); err != nil {
+		return s, err
+	} else if leaves.Show != nil {
+		last = append(last, leaves)
+	}
 	s.Rows = []figure.SheetRow{
 		{Height: 1.15, Blocks: []figure.Block{
 			{Heading: "Outline", Width: 1.1, Show: measure.Dimensioned(t)},
@@ -70,7 +74,7 @@ func head(t *table.Table, r *survey.Report) []string {
 		}
 		kinds += it.Shape.Kind()
 	}
-	lines := []string{fmt.Sprintf("%s; lengths in %s; wall %s, symmetry %s.", kinds, d.Unit, r.Class, r.Symmetry.Name())}
+	lines := []string{fmt.Sprintf("%s; lengths in %s; smoothness of the wall %s, symmetry group %s.", kinds, d.Unit, r.Class, r.Symmetry.Name())}
 	if d.Notes != "" {
 		lines = append(lines, d.Notes)
 	}
@@ -98,6 +102,38 @@ func readings(j Job) (figure.Scalars, error) {
 		list.Rows = append(list.Rows, row)
 	}
 	return list, nil
+}
+
+// leaving is the figure of what leaves: the far field of what shines, else what
+// is left against path; none of a closed table.
+func leaving(j Job) (figure.Block, error) {
+	t := j.Tracer.Table()
+	none := (*measure.NotMeasured)(nil)
+	switch {
+	case leak.Emits(t) == "":
+		f, err := leak.MeasureEmission(j.Tracer, j.Runner, leak.NaturalSeeding(t), leak.EmissionPlan{})
+		if errors.As(err, &none) {
+			return figure.Block{}, nil
+		}
+		if err != nil {
+			return figure.Block{}, err
+		}
+		s := f.Cartesian(leak.ToPeak, "", j.Program)
+		s.Caption = nil
+		return figure.Block{Heading: "Far field", Width: 1, Show: s}, nil
+	case leak.Leaks(t) == "":
+		f, err := leak.MeasureFall(j.Tracer, j.Runner, leak.NaturalSeeding(t), 0, j.Effort)
+		if errors.As(err, &none) {
+			return figure.Block{}, nil
+		}
+		if err != nil {
+			return figure.Block{}, err
+		}
+		s := f.Figure(leak.ByPath, figure.Linear, j.Program)
+		s.Caption = nil
+		return figure.Block{Heading: "What is left against path", Width: 1, Show: s}, nil
+	}
+	return figure.Block{}, nil
 }
 
 // mostBounces bounds the bounces of an orbit of a sheet's portrait: more would

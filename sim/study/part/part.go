@@ -2,9 +2,9 @@
 // back: line by line, each with a checksum, so that a run that was killed goes on
 // where it was, and so that a study can be shared out among machines.
 //
-// A part is JSON, one record a line. The first line says to which table, sweep
-// and part of how many it belongs, and carries the table file; each line after
-// it is one row, in the order of the tasks. Part k of n has the tasks k-1,
+// A part is JSON, one record a line. The first line says to which table, sweep or
+// tolerance and part of how many it belongs, and carries the table file; each line
+// after it is one row, in the order of the tasks. Part k of n has the tasks k-1,
 // k-1+n, k-1+2n and so on. The bytes depend on the study alone.
 package part
 
@@ -40,21 +40,36 @@ type Head struct {
 	Program string `json:"program"` // whose numbers these are
 	Hash    string `json:"sha256"`  // of the table file, in hexadecimal
 	Sweep   string `json:"sweep"`
-	Part    int    `json:"part"` // from 1
-	Of      int    `json:"of"`
-	Tasks   int    `json:"tasks"` // of all parts together
-	Table   string `json:"table"` // the table file with the sweep in it
+	// Tolerance is that of a run of copies, which has no sweep.
+	Tolerance string `json:"tolerance,omitzero"`
+	Part      int    `json:"part"` // from 1
+	Of        int    `json:"of"`
+	Tasks     int    `json:"tasks"` // of all parts together
+	Table     string `json:"table"` // the table file with the sweep in it
 }
 
 // NewHead is the head of part k of n of a study whose design holds the sweep.
 func NewHead(st *study.Study, program string, k, n int) (Head, error) {
+	h, err := headOf(st.Base, program, k, n)
+	h.Sweep, h.Tasks = st.Sweep.Name, st.Tasks()
+	return h, err
+}
+
+// headOf is a head that carries a table.
+func headOf(t *table.Table, program string, k, n int) (Head, error) {
 	var file bytes.Buffer
-	if err := tablefile.Write(&file, st.Base.Design()); err != nil {
+	if err := tablefile.Write(&file, t.Design()); err != nil {
 		return Head{}, err
 	}
 	sum := sha256.Sum256(file.Bytes())
-	return Head{Format: Format, Version: Version, Program: program, Hash: hex.EncodeToString(sum[:]), Sweep: st.Sweep.Name,
-		Part: k, Of: n, Tasks: st.Tasks(), Table: file.String()}, nil
+	return Head{Format: Format, Version: Version, Program: program, Hash: hex.EncodeToString(sum[:]),
+		Part: k, Of: n, Table: file.String()}, nil
+}
+
+// Name is a name for the part's file that no other study has.
+func (h Head) Name() string {
+	sum := sha256.Sum256([]byte(h.Program + "\n" + h.Sweep + h.Tolerance + "\n" + h.Table))
+	return fmt.Sprintf("%s-%d-of-%d.jsonl", hex.EncodeToString(sum[:12]), h.Part, h.Of)
 }
 
 // Due are the tasks of the part, in order.
@@ -67,20 +82,25 @@ func (h Head) Due() (all []int) {
 
 // Study is the study that the head carries. The error is a sentence.
 func (h Head) Study() (*study.Study, error) {
-	d, err := tablefile.Read(strings.NewReader(h.Table))
+	t, err := h.table()
 	if err != nil {
 		return nil, err
 	}
-	t, err := table.New(d)
-	if err != nil {
-		return nil, err
-	}
-	for _, s := range d.Study.Sweeps {
+	for _, s := range t.Design().Study.Sweeps {
 		if s.Name == h.Sweep {
 			return study.New(t, s)
 		}
 	}
 	return nil, fmt.Errorf("the table in it has no sweep called %q", h.Sweep)
+}
+
+// table is the table that the head carries.
+func (h Head) table() (*table.Table, error) {
+	d, err := tablefile.Read(strings.NewReader(h.Table))
+	if err != nil {
+		return nil, err
+	}
+	return table.New(d)
 }
 
 // same reports whether two heads differ in the number of the part alone.

@@ -62,19 +62,25 @@ func rows(t testing.TB, st *study.Study) []study.Row {
 func written(t testing.TB, st *study.Study, k, n int) []byte {
 	t.Helper()
 	h, err := part.NewHead(st, program, k, n)
-	if err != nil {
-		t.Fatal(err)
-	}
-	b, err := h.Line()
-	if err != nil {
-		t.Fatal(err)
-	}
-	for _, i := range h.Due() {
-		line, err := part.Line(rows(t, st)[i])
+	return file(t, h, err, func(task int) ([]byte, error) { return part.Line(rows(t, st)[task]) })
+}
+
+// file is a whole part: its head, which came with an error, and its lines.
+func file(t testing.TB, h part.Head, err error, line func(task int) ([]byte, error)) []byte {
+	t.Helper()
+	var b []byte
+	add := func(line []byte, err error) {
 		if err != nil {
 			t.Fatal(err)
 		}
 		b = append(b, line...)
+	}
+	if err != nil {
+		t.Fatal(err)
+	}
+	add(h.Line())
+	for _, task := range h.Due() {
+		add(line(task))
 	}
 	return b
 }

@@ -6,15 +6,18 @@ import (
 	"fmt"
 
 	"cavitywright/sim/study"
+	"cavitywright/sim/study/tolerance"
 )
 
 // File is a part as it was read: its head, the rows that stand whole and in
 // order, and how many bytes these take. What follows them is damaged or was
-// being written when the run ended.
+// being written when the run ended. A part of a sweep has Rows, one of a
+// tolerance run Copies.
 type File struct {
-	Head Head
-	Rows []study.Row
-	Good int
+	Head   Head
+	Rows   []study.Row
+	Copies []tolerance.Row
+	Good   int
 	// Damage is what is wrong with the line after the last good one, nil where
 	// nothing follows; Line is its number.
 	Damage error
@@ -22,7 +25,7 @@ type File struct {
 }
 
 // ErrNoPart says that a file is no part of a study.
-var ErrNoPart = errors.New("this is no part of a study; name a file that cavitybatch study wrote")
+var ErrNoPart = errors.New("this is no part of a study; name a file that cavitybatch study or tolerance wrote")
 
 // ErrBegun says that a file ends within its first line, which was being written
 // when the run ended.
@@ -56,15 +59,9 @@ func Read(b []byte) (*File, error) {
 			f.Damage = errors.New("it breaks off")
 			break
 		}
-		var row study.Row
-		if f.Damage = opened(rest[:end], "row", &row); f.Damage != nil {
+		if f.Damage = f.add(rest[:end], due); f.Damage != nil {
 			break
 		}
-		if n := len(f.Rows); n >= len(due) || row.Task != due[n] {
-			f.Damage = errors.New("it belongs elsewhere")
-			break
-		}
-		f.Rows = append(f.Rows, row)
 		f.Good += end + 1
 		f.Line++
 	}
@@ -74,56 +71,69 @@ func Read(b []byte) (*File, error) {
 // opening is how every part begins.
 const opening = `{"head":{"format":"` + Format + `"`
 
-// Missing are the tasks that are still to be done.
-func (f *File) Missing() []int { return f.Head.Due()[len(f.Rows):] }
-
-// Named is a part with the name that sentences give it.
-type Named struct {
-	Name string
-	File *File
+// add reads a row; the error says what is wrong with its line.
+func (f *File) add(line []byte, due []int) error {
+	var row study.Row
+	var one copyRow
+	task := &row.Task
+	into := any(&row)
+	if f.Head.Tolerance != "" {
+		task, into = &one.Task, &one
+	}
+	if err := opened(line, "row", into); err != nil {
+		return err
+	}
+	if n := f.Done(); n >= len(due) || *task != due[n] {
+		return errors.New("it belongs elsewhere")
+	}
+	if f.Head.Tolerance != "" {
+		f.Copies = append(f.Copies, one.Row)
+	} else {
+		f.Rows = append(f.Rows, row)
+	}
+	return nil
 }
 
-// Gather joins the parts of one study. The error is a sentence that names parts
-// that are missing, damaged, not finished, or of another study.
-func Gather(parts []Named) (*study.Result, error) {
-	if len(parts) == 0 {
-		return nil, errors.New("there is nothing to gather; name the parts")
+// Done is the number of rows that stand.
+func (f *File) Done() int { return max(len(f.Rows), len(f.Copies)) }
+
+// Missing are the tasks that are still to be done.
+func (f *File) Missing() []int { return f.Head.Due()[f.Done():] }
+
+// Resume is what a run of the part h goes on from, where its file holds text so
+// far: the rows that stand whole, the bytes that they take, and in a few words
+// what is damaged and done again, "" for nothing. Of a file that ends within the
+// first line nothing stands. The error says why the file is not gone on with.
+func Resume(text []byte, h Head) (rows []study.Row, good int, damage string, err error) {
+	f, damage, err := Reopened(text, h)
+	return f.Rows, f.Good, damage, err
+}
+
+// Reopened is Resume for parts of any kind: the file as far as it stands.
+func Reopened(text []byte, h Head) (f File, damage string, err error) {
+	nothing := File{Head: h}
+	head, err := h.Line()
+	if err != nil || bytes.HasPrefix(head, text) && len(text) < len(head) {
+		return nothing, "", err
 	}
-	first := parts[0].File.Head
-	have := map[int]string{}
-	for _, p := range parts {
-		h := p.File.Head
-		if !h.same(first) {
-			return nil, fmt.Errorf("%s is of another study than %s: %s; gather parts of one study only", p.Name, parts[0].Name, difference(h, first))
-		}
-		if other, twice := have[h.Part]; twice {
-			return nil, fmt.Errorf("part %d of %d stands twice, in %s and %s; leave one out", h.Part, h.Of, other, p.Name)
-		}
-		have[h.Part] = p.Name
-		if p.File.Damage != nil {
-			return nil, fmt.Errorf("part %d of %d is damaged: in %s, line %d, %v; run that part again, and it goes on from there", h.Part, h.Of, p.Name, p.File.Line, p.File.Damage)
-		}
-		if n := len(p.File.Missing()); n > 0 {
-			return nil, fmt.Errorf("part %d of %d is not finished: %s lacks %d of %d rows; run it again, and it goes on from there", h.Part, h.Of, p.Name, n, len(h.Due()))
-		}
-	}
-	if len(have) < first.Of {
-		return nil, fmt.Errorf("of %d parts %s missing; run %s, or name the files", first.Of, missing(have, first.Of), them(first.Of-len(have)))
-	}
-	st, err := first.Study()
+	read, err := Read(text)
 	if err != nil {
-		return nil, fmt.Errorf("%s holds no study: %w", parts[0].Name, err)
+		return nothing, "", err
 	}
-	if st.Tasks() != first.Tasks {
-		return nil, fmt.Errorf("%s holds a study of %d tasks, but says %d; run it again with this program", parts[0].Name, st.Tasks(), first.Tasks)
+	if why := read.Head.Differs(h); why != "" {
+		return nothing, "", &Other{why}
 	}
-	r := study.NewResult(st)
-	for _, p := range parts {
-		for _, row := range p.File.Rows {
-			r.Add(row)
-		}
+	if read.Damage != nil {
+		damage = fmt.Sprintf("line %d is damaged (%v)", read.Line, read.Damage)
 	}
-	return r, nil
+	return *read, damage, nil
+}
+
+// Other says that a file holds a part of another run, and in what it differs.
+type Other struct{ Why string }
+
+func (e *Other) Error() string {
+	return "it holds a part of another run: " + e.Why + "; name another file, or take this one away"
 }
 
 // Differs says in what a part is not the one that o heads, "" where it is.
@@ -142,42 +152,19 @@ func difference(a, b Head) string {
 	switch {
 	case a.Program != b.Program:
 		return fmt.Sprintf("made by %s, not %s", a.Program, b.Program)
+	case (a.Tolerance == "") != (b.Tolerance == ""):
+		return "one is of a sweep, the other of a tolerance run"
+	case a.Tolerance != b.Tolerance:
+		return fmt.Sprintf("tolerance %q, not %q", a.Tolerance, b.Tolerance)
 	case a.Sweep != b.Sweep:
 		return fmt.Sprintf("sweep %q, not %q", a.Sweep, b.Sweep)
 	case a.Of != b.Of:
 		return fmt.Sprintf("one of %d parts, not of %d", a.Of, b.Of)
 	}
+	if a.Tolerance != "" {
+		return "its table, or the tolerance in it, is another one"
+	}
 	return "its table, or the sweep in it, is another one"
-}
-
-// mostNamed bounds the numbers in a sentence.
-const mostNamed = 20
-
-// missing names the parts that are not there.
-func missing(have map[int]string, of int) string {
-	text, n := "", 0
-	for k := 1; k <= of; k++ {
-		if _, ok := have[k]; ok {
-			continue
-		}
-		if n++; n <= mostNamed {
-			text += fmt.Sprintf(", %d", k)
-		}
-	}
-	if n > mostNamed {
-		text += fmt.Sprintf(" and %d more", n-mostNamed)
-	}
-	if n == 1 {
-		return text[2:] + " is"
-	}
-	return text[2:] + " are"
-}
-
-func them(n int) string {
-	if n == 1 {
-		return "it"
-	}
-	return "them"
 }
 
 // Written is a result as a part 1 of 1, to the byte what a single run writes; of

@@ -3,6 +3,7 @@ package tolerance
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"cavitywright/sim/figure"
 	"cavitywright/sim/measure"
@@ -32,17 +33,18 @@ func (r *Result) Histogram(k int, program string) figure.Series {
 	}
 	n := classes(d, lo, hi)
 	width := (hi - lo) / float64(n)
-	c := figure.Curve{Form: figure.Steps, X: make([]float64, n), Y: make([]float64, n)}
+	// An empty class at either end closes the steps.
+	c := figure.Curve{Form: figure.Steps, X: make([]float64, n+2), Y: make([]float64, n+2)}
 	for i := range c.X {
-		c.X[i] = lo + (float64(i)+0.5)*width
+		c.X[i] = lo + (float64(i)-0.5)*width
 	}
 	for _, v := range d.Values {
-		i := min(n-1, int((v-lo)/width))
+		i := 1 + min(n-1, int((v-lo)/width))
 		c.Y[i]++
 		s.Y.Hi = math.Max(s.Y.Hi, 1.1*c.Y[i])
 	}
 	s.Curves = []figure.Curve{c}
-	s.X.Lo, s.X.Hi = lo-0.5*width, hi+0.5*width
+	s.X.Lo, s.X.Hi = lo-width, hi+width
 	mark := func(at float64, word string) {
 		if math.IsNaN(at) || math.IsInf(at, 0) {
 			return
@@ -82,7 +84,8 @@ const (
 )
 
 // WorstDrawn are the worst copies of reading k over the wall as drawn, their
-// distance from it magnified so that it is seen.
+// distance from it magnified so that it is seen. Where size cannot matter to the
+// reading it is left out.
 func (r *Result) WorstDrawn(k int, kit Kit, program string) (figure.Paths, error) {
 	t := r.Base
 	size := plane.Diagonal(t.Bounds())
@@ -100,6 +103,9 @@ func (r *Result) WorstDrawn(k int, kit Kit, program string) (figure.Paths, error
 		if err != nil {
 			return p, err
 		}
+		if lengthless(r.Plan.Readings[k]) {
+			c.Scale = 1
+		}
 		s := compared(t, c)
 		for _, l := range s {
 			greatest = math.Max(greatest, l.greatest)
@@ -114,12 +120,19 @@ func (r *Result) WorstDrawn(k int, kit Kit, program string) (figure.Paths, error
 				to := r2.Add(q, r2.Scale(by, l.by[i]))
 				line.X, line.Y = append(line.X, to.X), append(line.Y, to.Y)
 			}
+			// A drawing makes room for points of this role, not for rays.
+			for _, far := range []func(...float64) float64{least, most} {
+				p.Lines = append(p.Lines, figure.Line{Role: figure.Extension, X: []float64{far(line.X...)}, Y: []float64{far(line.Y...)}})
+			}
 			p.Lines = append(p.Lines, line)
 		}
 	}
 	text := fmt.Sprintf("%sthe worst copies for %s over the wall as drawn", measure.Head(t), r.Plan.Readings[k])
 	if by > 1 {
 		text += fmt.Sprintf(", what they are off magnified %g times", by)
+		if lengthless(r.Plan.Readings[k]) {
+			text += " (size left out)"
+		}
 	}
 	text += ": "
 	for n, i := range at {
@@ -132,6 +145,9 @@ func (r *Result) WorstDrawn(k int, kit Kit, program string) (figure.Paths, error
 	p.Caption = []string{text + ".", measure.Foot(t, program)}
 	return p, nil
 }
+
+func least(v ...float64) float64 { return slices.Min(v) }
+func most(v ...float64) float64  { return slices.Max(v) }
 
 // magnified is a round number by which shifts are drawn larger.
 func magnified(greatest, size float64) float64 {

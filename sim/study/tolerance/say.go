@@ -163,21 +163,31 @@ func (r *Result) blame(k int) (lines []string) {
 	if len(r.flaws) < 2 || len(r.Alone[len(r.flaws)-1]) == 0 {
 		return nil
 	}
-	best, sum := -1, 0.0
+	best, sum, square := -1, 0.0, 0.0
 	for i, p := range parts {
 		if math.IsNaN(p.Share) {
 			return []string{"Which error the scatter comes from cannot be told from it."}
 		}
-		sum += p.Share
+		sum, square = sum+p.Share, square+p.Err*p.Err
 		if best < 0 || p.Share > parts[best].Share {
 			best = i
 		}
 	}
-	if parts[best].Share > 0 {
-		lines = append(lines, fmt.Sprintf("Most of it comes from the %s: %.0f %% of the variance by itself.", r.Name(best), 100*parts[best].Share))
+	name := r.Name(best)
+	if r.flaws[best].Kind != table.DialFlaw {
+		name = "the " + name
 	}
-	if math.Abs(sum-1) > 0.3 {
-		lines = append(lines, fmt.Sprintf("The shares add up to %.0f %%: the errors are too large, or the copies too few, for a first order to say all.", 100*sum))
+	switch share := 100 * parts[best].Share; {
+	case share > 100*(1+parts[best].Err):
+		lines = append(lines, fmt.Sprintf("%s alone scatters the copies more than all errors together: %.0f ± %.0f %% of their variance.", sentence(name), share, 100*parts[best].Err))
+	case share > 0:
+		lines = append(lines, fmt.Sprintf("Most of it comes from %s: %.0f ± %.0f %% of the variance by itself.", name, share, 100*parts[best].Err))
+	}
+	switch err := math.Sqrt(square); {
+	case err > 0.3:
+		lines = append(lines, fmt.Sprintf("The shares add up to %.0f ± %.0f %%: more copies tell them apart better.", 100*sum, 100*err))
+	case math.Abs(sum-1) > math.Max(0.2, 2*err):
+		lines = append(lines, fmt.Sprintf("The shares add up to %.0f ± %.0f %%, not 100 %%: the errors are too large for a first order to say all.", 100*sum, 100*err))
 	}
 	return lines
 }

@@ -314,7 +314,7 @@ func TestShares(t *testing.T) {
 	if y := r.Yield(All); math.Abs(y.Share-0.5) > 4*y.Err || y.Lo >= y.Share || y.Hi <= y.Share {
 		t.Errorf("yield %+v", y)
 	}
-	if text := strings.Join(r.Lines(), " "); !strings.Contains(text, "Most of it comes from the b") {
+	if text := strings.Join(r.Lines(), " "); !strings.Contains(text, "Most of it comes from b") {
 		t.Error(text)
 	}
 }

@@ -61,12 +61,18 @@ func (f *Found) Lines() []string {
 		}
 		return lines
 	case f.Fronted():
-		lines = append(lines, fmt.Sprintf("%d walls make the front: none of them is beaten in both wishes by another.", len(f.Front)))
+		if len(f.Front) == 1 {
+			lines = append(lines, "The two wishes do not work against each other here: one wall is the best for both.")
+		} else {
+			lines = append(lines, fmt.Sprintf("%d walls make the front: none of them is beaten in both wishes by another.", len(f.Front)))
+		}
 		return append(lines, fmt.Sprintf("Nearest to the best of both: %s, at %s.", f.Best.words(), f.Place(f.Best.At)))
 	}
 	lines = append(lines, fmt.Sprintf("Best: %s, at %s.", f.Best.words(), f.known()))
 	for k, x := range f.Plan.Free {
-		if d := x.Hi - x.Lo; f.Best.At[k]-x.Lo < 1e-3*d || x.Hi-f.Best.At[k] < 1e-3*d {
+		d := x.Hi - x.Lo
+		lo, hi := f.Best.At[k]-x.Lo < 1e-3*d, x.Hi-f.Best.At[k] < 1e-3*d
+		if lo && x.Lo > f.Specs[k].Lo || hi && x.Hi < f.Specs[k].Hi { // a number may go no farther than its own range
 			lines = append(lines, fmt.Sprintf("%s lies at an end of its range: a wider range may bring a better wall.", capital(f.Label(k))[:len(f.Label(k))]))
 		}
 	}

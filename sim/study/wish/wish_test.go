@@ -102,7 +102,7 @@ func greatest(reading string) []table.Goal {
 // and falls as the square of the harmonics.
 func TestLargestArea(t *testing.T) {
 	base := one(t, nil, "harmonics", map[string]float64{"radius": 1, "a1": 0, "b1": 0, "a2": 0.12, "b2": -0.05, "a3": 0.06, "b3": 0, "a4": 0.03, "b4": 0, "a5": -0.03, "b5": 0})
-	p := table.Wish{Name: "round", Goals: greatest("area"), Effort: 1, Tries: 400, Demand: table.Demand{Scaled: table.SamePerimeter}}
+	p := table.Wish{Name: "round", Goals: greatest("area"), Effort: 1, Tries: 300, Demand: table.Demand{Scaled: table.SamePerimeter}}
 	for _, name := range []string{"a2", "b2", "a3", "a4", "a5"}[:4] {
 		p.Free = append(p.Free, table.Freedom{Dial: name, Lo: -0.2, Hi: 0.2})
 	}
@@ -138,7 +138,7 @@ func TestLargestArea(t *testing.T) {
 // 1/a² (Kogelnik and Li 1966; check values).
 func TestMinorOrbit(t *testing.T) {
 	base := one(t, nil, "ellipse", map[string]float64{"a": 1.7, "b": 1})
-	p := table.Wish{Name: "two to one", Goals: []table.Goal{{Reading: "orbit-trace:2:1", Aim: table.Hold, Value: -1, Weight: 1}}, Effort: 1, Tries: 60,
+	p := table.Wish{Name: "two to one", Goals: []table.Goal{{Reading: "orbit-trace:2:1", Aim: table.Hold, Value: -1, Weight: 1}}, Effort: 1, Tries: 40,
 		Free: []table.Freedom{{Dial: "a", Lo: 1.5, Hi: 3}}}
 	b := sought(t, base, p, 2).Best
 	if math.Abs(b.At[0]-2) > 1e-5 {
@@ -231,13 +231,13 @@ func TestDemands(t *testing.T) {
 		{"area", table.Demand{AreaHi: 5}, 5},
 		{"box", table.Demand{BoxX: 3, BoxY: 5}, math.Pi * 1.5},
 	} {
-		p := table.Wish{Name: x.name, Goals: greatest("area"), Effort: 1, Tries: 120, Demand: x.demand, Free: []table.Freedom{{Dial: "a", Lo: 0.8, Hi: 4}}}
+		p := table.Wish{Name: x.name, Goals: greatest("area"), Effort: 1, Tries: 70, Demand: x.demand, Free: []table.Freedom{{Dial: "a", Lo: 0.8, Hi: 4}}}
 		if b := sought(t, base, p, 1).Best; b.Table.Area() > x.want || b.Table.Area() < x.want*(1-1e-4) {
 			t.Errorf("%s: area %.7g, not %.7g", x.name, b.Table.Area(), x.want)
 		}
 	}
 	limacon := one(t, nil, "limacon", map[string]float64{"radius": 1, "eps": 0.3})
-	p := table.Wish{Name: "convex", Goals: greatest("area"), Effort: 1, Tries: 100, Demand: table.Demand{Bend: table.Convex, Symmetry: "D1"}, Free: []table.Freedom{{Dial: "eps", Lo: 0, Hi: 0.9}}}
+	p := table.Wish{Name: "convex", Goals: greatest("area"), Effort: 1, Tries: 60, Demand: table.Demand{Bend: table.Convex, Symmetry: "D1"}, Free: []table.Freedom{{Dial: "eps", Lo: 0, Hi: 0.9}}}
 	if b := sought(t, limacon, p, 1).Best; b.At[0] > 0.5 || b.At[0] < 0.4999 { // convex to eps = 1/2 (check values)
 		t.Errorf("the limaçon is convex to %g", b.At[0])
 	}
