@@ -109,8 +109,8 @@ func (s *studiesSheet) tellPoint() {
 	rows := s.pointRows()
 	s.point.SetText("At " + s.result.Place(s.picked) + ":")
 	s.list.Set(rows)
-	if s.work.Busy() || len(rows) == 0 {
-		return
+	if s.work.Busy() || len(rows) == 0 || !s.result.Whole() {
+		return // how far it is matters more
 	}
 	text := s.result.Place(s.picked) + ": "
 	for i, r := range rows {
