@@ -35,7 +35,7 @@ func startXvfb(ctx context.Context) (*screen, error) {
 	defer numbers.Close()
 	live, cancel := context.WithCancel(ctx)
 	// The first of ExtraFiles is file 3 in the child.
-	cmd := exec.CommandContext(live, "Xvfb", "-displayfd", "3", "-screen", "0", screenSize, "-nolisten", "tcp")
+	cmd := exec.CommandContext(live, "Xvfb", "-displayfd", "3", "-screen", "0", screenSize, "-nolisten", "tcp", "-noreset") // a screen that starts anew when the last program goes turns the next away
 	cmd.ExtraFiles = []*os.File{report}
 	cmd.Cancel = func() error { return cmd.Process.Signal(syscall.SIGTERM) }
 	cmd.WaitDelay = screenGrace
