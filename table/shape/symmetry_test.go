@@ -61,6 +61,12 @@ func TestSymmetryIsKept(t *testing.T) {
 		if f.symmetry != s {
 			t.Skip("edited away")
 		}
+		for k := range f.nodes {
+			n := len(f.nodes)
+			if r2.Norm(r2.Sub(f.nodes[(k+1)%n].At, f.nodes[(k+n-1)%n].At)) < 1e-9 {
+				t.Skip("a node between two that coincide has no direction of its own, and such a wall is no table")
+			}
+		}
 		points := pointsOf(f.nodes.curves(), 61)
 		for _, m := range s.motions() {
 			moved := make([]r2.Vec, len(points))
